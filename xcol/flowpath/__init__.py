@@ -1,0 +1,1 @@
+"""From a path file to the described instrument."""

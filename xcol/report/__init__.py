@@ -1,0 +1,1 @@
+"""Records of numbers as text, JSON, CSV and Markdown."""
