@@ -1,0 +1,55 @@
+"""What can be wrong with an input, with its place."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+
+
+@dataclass(frozen=True)
+class Place:
+    """Where in the user's input something stands; empty fields are not known or do not apply."""
+
+    file: str = ""
+    line: int | None = None
+    part: str = ""
+    key: str = ""
+
+    def __str__(self) -> str:
+        """Return 'file, line 8, part 2 (tube "to column"), key "tube"', as far as known."""
+        pieces = [
+            self.file,
+            f"line {self.line}" if self.line is not None else "",
+            self.part,
+            f'key "{self.key}"' if self.key else "",
+        ]
+        return ", ".join(piece for piece in pieces if piece)
+
+
+@dataclass(frozen=True)
+class Fault:
+    """One thing that is wrong: its place, what was read, what was expected, and a suggestion."""
+
+    place: Place
+    read: str
+    expected: str
+    suggestion: str
+
+    def __str__(self) -> str:
+        """Return the message in four lines."""
+        return (
+            f"{self.place}\n"
+            f"  read:      {self.read}\n"
+            f"  expected:  {self.expected}\n"
+            f"  try:       {self.suggestion}"
+        )
+
+
+@dataclass
+class InputError(Exception):
+    """The input cannot be used; ``faults`` lists everything that was found wrong with it."""
+
+    faults: tuple[Fault, ...] = field(default_factory=tuple)
+
+    def __str__(self) -> str:
+        """Return all messages, in the order of the input."""
+        return "\n\n".join(str(fault) for fault in self.faults)

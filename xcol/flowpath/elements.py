@@ -1,0 +1,190 @@
+"""What a part consists of, as the band meets it: sizes only, no flow and no solute yet.
+
+A part is one element or a few (a detector: cell, filter, data rate). Each makes its linear filter
+for a given stream; tubes and columns have a pressure drop as well.
+"""
+
+from __future__ import annotations
+
+import math
+from dataclasses import dataclass
+from typing import TYPE_CHECKING, Protocol
+
+from xcol.filters.block import MeasuredBlock
+from xcol.filters.column import Column
+from xcol.filters.tube import Tube
+from xcol.filters.volumes import Plug, TanksInSeries
+from xcol.flowpath.hydraulics import Drop, bed_drop, exactly, tube_drop
+
+if TYPE_CHECKING:
+    from xcol.filters.interface import Filter, Real
+
+
+@dataclass(frozen=True)
+class Stream:
+    """What flows through an element: ``flow`` [m³/s] and the solute's ``diffusion`` [m²/s]."""
+
+    flow: Real
+    diffusion: Real
+
+
+class Element(Protocol):
+    """One thing that delays or broadens the band; ``contribution`` is its name in the report."""
+
+    @property
+    def contribution(self) -> str:
+        """Name of the contribution in the report, 'cell' for instance."""
+        ...
+
+    @property
+    def volume(self) -> float:
+        """Swept volume [m³]."""
+        ...
+
+    @property
+    def of_signal(self) -> bool:
+        """Whether it acts on the recorded signal of its own detector only, not on the stream."""
+        ...
+
+    def filter(self, stream: Stream, *, read_here: bool) -> Filter:
+        """Return the filter it is for this stream; ``read_here`` in the detector that records."""
+        ...
+
+
+@dataclass(frozen=True)
+class Injected:
+    """The injected ``volume`` [m³], as a plug."""
+
+    volume: float
+    contribution: str = "injection"
+    of_signal: bool = False
+
+    def filter(self, stream: Stream, *, read_here: bool) -> Filter:
+        """Return the plug."""
+        return Plug(self.volume, stream.flow)
+
+
+@dataclass(frozen=True)
+class Bore:
+    """A straight tube or bore, ``length`` and ``bore`` [m].
+
+    ``layered``: its stream runs on into a neighbouring tube; otherwise it is remixed at both ends.
+    """
+
+    length: float
+    bore: float
+    layered: bool = True
+    contribution: str = "tube"
+    of_signal: bool = False
+
+    @property
+    def volume(self) -> float:
+        """Volume [m³]."""
+        return math.pi / 4 * self.bore**2 * self.length
+
+    def filter(self, stream: Stream, *, read_here: bool) -> Tube:
+        """Return the tube."""
+        return Tube(self.length, self.bore, stream.flow, stream.diffusion)
+
+    def drop(self, flow: float, viscosity: float) -> Drop:
+        """Pressure drop [Pa]."""
+        return exactly(float(tube_drop(flow, self.length, self.bore, viscosity)))
+
+
+@dataclass(frozen=True)
+class Mixed:
+    """A mixing ``volume`` [m³] of this many ``tanks`` in series: a fitting, a mixer."""
+
+    volume: float
+    tanks: float
+    contribution: str
+    of_signal: bool = False
+
+    def filter(self, stream: Stream, *, read_here: bool) -> Filter:
+        """Return the tanks."""
+        return TanksInSeries(self.volume, stream.flow, self.tanks)
+
+
+@dataclass(frozen=True)
+class Cell:
+    """A detector cell of this ``volume`` [m³]: a plug, or ``tanks`` in series where given."""
+
+    volume: float
+    tanks: float | None = None
+    contribution: str = "cell"
+    of_signal: bool = False
+
+    def filter(self, stream: Stream, *, read_here: bool) -> Filter:
+        """Return the plug (its whole volume is passed on the way to a later detector) or tanks."""
+        if self.tanks is not None:
+            return TanksInSeries(self.volume, stream.flow, self.tanks)
+        return Plug(self.volume, stream.flow, passed_through=not read_here)
+
+
+@dataclass(frozen=True)
+class Electronics:
+    """A filter of the recorded signal: ``made`` needs no stream."""
+
+    made: Filter
+    contribution: str
+    volume: float = 0.0
+    of_signal: bool = True
+
+    def filter(self, stream: Stream, *, read_here: bool) -> Filter:
+        """Return the filter."""
+        return self.made
+
+
+@dataclass(frozen=True)
+class Block:
+    """A module of measured variance ``spread`` [m⁶] and held ``volume`` [m³]."""
+
+    spread: float
+    volume: float
+    contribution: str = "block"
+    of_signal: bool = False
+
+    def filter(self, stream: Stream, *, read_here: bool) -> Filter:
+        """Return the block."""
+        return MeasuredBlock(self.spread, self.volume, stream.flow)
+
+
+@dataclass(frozen=True)
+class Bed:
+    """A column: ``bore``, ``length``, ``particle`` diameter [m], ``void_volume`` [m³], plates.
+
+    ``porosity`` is the interstitial one for the pressure drop, with its range; ``particle`` None
+    where it was not entered.
+    """
+
+    bore: float
+    length: float
+    particle: float | None
+    plates: float
+    void_volume: float
+    porosity: tuple[float, float, float]  # value, smallest, largest
+    contribution: str = "column"
+    of_signal: bool = False
+
+    @property
+    def volume(self) -> float:
+        """Void volume [m³]."""
+        return self.void_volume
+
+    def filter(self, stream: Stream, *, read_here: bool) -> Filter:
+        """Return the column for an unretained band; ``retained`` gives it for the others."""
+        return self.retained(stream, 0.0, self.plates)
+
+    def retained(self, stream: Stream, retention_factor: Real, plates: Real) -> Column:
+        """Return the column's filter for a band of this retention factor and plate number."""
+        return Column(self.void_volume / stream.flow, retention_factor, plates)
+
+    def drop(self, flow: float, viscosity: float) -> Drop | None:
+        """Pressure drop [Pa]; None without a particle size."""
+        if self.particle is None:
+            return None
+        at, tightest, loosest = (
+            float(bed_drop(flow, self.length, self.bore, viscosity, self.particle, porosity))
+            for porosity in self.porosity
+        )
+        return Drop(at, loosest, tightest)

@@ -1,0 +1,100 @@
+"""What is found while a file is read: faults, warnings and assumptions, collected in one place."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+from typing import TYPE_CHECKING
+
+from xcol.errors import Fault, InputError, Place
+
+if TYPE_CHECKING:
+    from xcol.flowpath.keys import Value
+    from xcol.units import UnitError
+
+from xcol.flowpath.model import Assumption
+
+
+@dataclass
+class Findings:
+    """Collects what is found in a file, so that all of it is reported together."""
+
+    faults: list[Fault] = field(default_factory=list)
+    warnings: list[str] = field(default_factory=list)
+    assumed: list[Assumption] = field(default_factory=list)
+
+    def fault(self, place: Place, read: str, expected: str, suggestion: str) -> None:
+        """Add a fault, unless it has been reported already."""
+        fault = Fault(place, read, expected, suggestion)
+        if fault not in self.faults:
+            self.faults.append(fault)
+
+    def fault_of(self, place: Place, error: UnitError) -> None:
+        """Add the fault of a value that could not be read."""
+        self.fault(place, error.read, error.expected, error.suggestion)
+
+    def warn(self, text: str) -> None:
+        """Add a warning, once."""
+        if text not in self.warnings:
+            self.warnings.append(text)
+
+    def assume(self, short: str, text: str) -> None:
+        """Add an assumption, once."""
+        assumption = Assumption(short, text)
+        if assumption not in self.assumed:
+            self.assumed.append(assumption)
+
+    def raise_faults(self) -> None:
+        """Raise ``InputError`` with all faults in the order of the file, if there are any."""
+        if self.faults:
+            ordered = sorted(self.faults, key=lambda fault: fault.place.line or 0)
+            raise InputError(tuple(ordered))
+
+
+@dataclass
+class Draft:
+    """One part or peak while it is read: its values in SI units, and where each stands."""
+
+    kind: str
+    name: str
+    position: int
+    file: str
+    lines: dict[str, int]  # of each key; "" of the part itself
+    findings: Findings
+    values: dict[str, Value] = field(default_factory=dict)
+    written: dict[str, str] = field(default_factory=dict)  # values as typed, for messages
+
+    def number(self, key: str) -> float | None:
+        """Return a number in SI units, None where the key was not given."""
+        value = self.values.get(key)
+        return float(value) if isinstance(value, int | float) else None
+
+    def text(self, key: str) -> str | None:
+        """Return a text, None where the key was not given."""
+        value = self.values.get(key)
+        return value if isinstance(value, str) else None
+
+    @property
+    def label(self) -> str:
+        """Say which part it is: 'part 2 (tube "valve to column")'."""
+        name = f' "{self.name}"' if self.name else ""
+        return f"part {self.position} ({self.kind}{name})" if self.kind != "peak" else (
+            f"peak {self.position}{name}"
+        )
+
+    def place(self, key: str = "") -> Place:
+        """Return the place of a key, or of the part."""
+        line = self.lines.get(key) or self.lines.get("")
+        return Place(self.file, line, self.label, key)
+
+    def fault(self, key: str, expected: str, suggestion: str, read: str = "") -> None:
+        """Add a fault at a key; ``read`` defaults to what was typed there."""
+        shown = read or (f'"{self.written[key]}"' if key in self.written else "nothing")
+        self.findings.fault(self.place(key), shown, expected, suggestion)
+
+    def warn(self, text: str) -> None:
+        """Add a warning that names the part."""
+        self.findings.warn(f"{self.label}: {text}")
+
+    def assume(self, short: str, text: str) -> None:
+        """Add an assumption that names the part."""
+        self.findings.assume(short, f"{self.label}: {text}")

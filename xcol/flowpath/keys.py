@@ -1,0 +1,199 @@
+"""How the value of one key is read: its type, its unit, what is absurd."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Callable
+from dataclasses import dataclass
+from typing import Protocol
+
+from xcol.units import RATIO, Quantity, UnitError, missing_unit, parse, quote, split, write
+
+Value = float | str | bool
+
+
+class Reader(Protocol):
+    """Reads a TOML value, or raises ``UnitError`` with what was read, expected, and a suggestion."""
+
+    def __call__(self, raw: object) -> Value:
+        """Return the value in SI units."""
+        ...
+
+
+@dataclass(frozen=True)
+class Key:
+    """One key of a part, of a peak or of the file: how it is read, and what it means."""
+
+    name: str
+    read: Reader
+    meaning: str
+
+    @property
+    def quantity(self) -> Quantity | None:
+        """The quantity, where the key has one."""
+        return self.read.quantity if isinstance(self.read, Measure) else None
+
+
+@dataclass(frozen=True)
+class Measure:
+    """A quantity with its unit, from ``low`` to ``high`` [SI]; outside is absurd. 0 by ``zero``."""
+
+    quantity: Quantity
+    low: float
+    high: float
+    zero: bool = False
+    fraction: bool = False  # inch fractions, for port diameters
+
+    def __call__(self, raw: object) -> float:
+        """Return the value in SI units."""
+        if isinstance(raw, int | float) and not isinstance(raw, bool) and self.quantity is not RATIO:
+            raise missing_unit(raw, self.quantity)
+        value = parse(_text_or_number(raw, self.quantity), self.quantity, fraction=self.fraction)
+        self.check(value, raw)
+        return value
+
+    def check(self, value: float, raw: object) -> None:
+        """Raise ``UnitError`` if the value [SI] is absurd; ``raw`` is what was typed."""
+        if self.low <= value <= self.high or (self.zero and value == 0):
+            return
+        unit = self.quantity.likely[0]
+        span = f"{write(self.low, unit, self.quantity)} to {write(self.high, unit, self.quantity)}"
+        raise UnitError(
+            f"{described(raw)}, which is {write(value, unit, self.quantity)}",
+            f"{self.quantity.name} of {span}" + (", or 0" if self.zero else ""),
+            self._other_unit(raw),
+        )
+
+    def _other_unit(self, raw: object) -> str:
+        """Propose the units in which the same number would make sense."""
+        try:
+            number, _ = split(str(raw))
+        except UnitError:
+            return "a size within that range"
+        options = [
+            f'"{number:g} {unit}"'.replace(' "', '"')
+            for unit in self.quantity.likely
+            if self.low <= parse(f"{number:.17g} {unit}", self.quantity) <= self.high
+        ]
+        if number < 0:
+            return "a size above zero"
+        return f"did you mean {' or '.join(options)}?" if options else "a size within that range"
+
+
+@dataclass(frozen=True)
+class Number:
+    """A plain number from ``low`` to ``high``."""
+
+    low: float
+    high: float
+    what: str
+    whole: bool = False
+
+    def __call__(self, raw: object) -> float:
+        """Return the number."""
+        value = raw
+        if isinstance(raw, str):
+            value, unit = split(raw)
+            if unit:
+                raise UnitError(
+                    f"{quote(raw)}, with the unit {quote(unit)}", self.what, f"{value:g} alone"
+                )
+        if isinstance(value, bool) or not isinstance(value, int | float):
+            raise UnitError(described(raw), self.what, "a number, without quotes")
+        if not math.isfinite(value) or not self.low <= value <= self.high:
+            raise UnitError(
+                described(raw), f"{self.what}, from {self.low:g} to {self.high:g}", "check the number"
+            )
+        if self.whole and value != int(value):
+            raise UnitError(described(raw), f"{self.what}, a whole number", f"{round(value)}")
+        return float(value)
+
+
+@dataclass(frozen=True)
+class Text:
+    """A text; ``longest`` characters at most."""
+
+    longest: int = 200
+
+    def __call__(self, raw: object) -> str:
+        """Return the text, on one line and without control characters."""
+        if not isinstance(raw, str):
+            raise UnitError(described(raw), "a text in quotes", f'"{raw}"')
+        text = " ".join("".join(c if c.isprintable() else " " for c in raw).split())
+        if len(text) > self.longest:
+            raise UnitError(quote(raw), f"at most {self.longest} characters", "a shorter text")
+        return text
+
+
+@dataclass(frozen=True)
+class Choice:
+    """One of a few words."""
+
+    options: tuple[str, ...]
+
+    def __call__(self, raw: object) -> str:
+        """Return the word."""
+        word = str(raw).strip().lower().replace("_", "-")
+        if word in self.options:
+            return word
+        listed = ", ".join(f'"{option}"' for option in self.options)
+        near = nearest(word, self.options)
+        raise UnitError(described(raw), f"one of {listed}", f'"{near or self.options[0]}"')
+
+
+@dataclass(frozen=True)
+class Later:
+    """A key that the format has and that this version does not compute yet."""
+
+    instead: str = "leave the key out"
+
+    def __call__(self, raw: object) -> Value:
+        """Raise ``UnitError``: silence would be a wrong answer."""
+        raise UnitError(
+            described(raw), "a key that this version of xcol can compute: not yet this one", self.instead
+        )
+
+
+@dataclass(frozen=True)
+class Only:
+    """A value of which only some forms are computed yet; ``refuses`` says which are not."""
+
+    inner: Reader
+    refuses: Callable[[object], bool]
+    instead: str
+
+    def __call__(self, raw: object) -> Value:
+        """Return what ``inner`` reads."""
+        if self.refuses(raw):
+            return Later(self.instead)(raw)
+        return self.inner(raw)
+
+
+def described(raw: object) -> str:
+    """Say what a TOML value is, for a message."""
+    if isinstance(raw, str):
+        return quote(raw) if raw.strip() else "an empty text"
+    if isinstance(raw, bool):
+        return str(raw).lower()
+    if isinstance(raw, list):
+        return "a list"
+    if isinstance(raw, dict):
+        return "a table"
+    return str(raw)[:60]
+
+
+def nearest(word: str, known: tuple[str, ...]) -> str:
+    """Return the known word that is closest to this one, or ''."""
+    import difflib  # noqa: PLC0415  (only on the way to an error)
+
+    found = difflib.get_close_matches(word, known, n=1, cutoff=0.6)
+    return found[0] if found else ""
+
+
+def _text_or_number(raw: object, quantity: Quantity) -> str:
+    if isinstance(raw, str) and raw.strip():
+        return raw
+    if isinstance(raw, int | float) and not isinstance(raw, bool):
+        return repr(raw)
+    example = f'"1 {quantity.likely[0]}"' if quantity is not RATIO else '0.65 or "65 %"'
+    raise UnitError(described(raw), f"{quantity.name}, in quotes with its unit", example)

@@ -1,0 +1,87 @@
+"""The described instrument: what a path file says, in SI units, with what was assumed."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import TYPE_CHECKING
+
+if TYPE_CHECKING:
+    from xcol.errors import Place
+    from xcol.flowpath.elements import Element
+    from xcol.units import Quantity
+
+
+@dataclass(frozen=True)
+class Reading:
+    """One value as it was understood: SI float with its quantity, a plain number, or text."""
+
+    key: str
+    value: float | str | bool
+    quantity: Quantity | None = None
+
+
+@dataclass(frozen=True)
+class Assumption:
+    """Something that the file does not say: ``short`` for a line of several, ``text`` in full."""
+
+    short: str
+    text: str
+
+
+@dataclass(frozen=True)
+class Part:
+    """One part of the path; pressures [Pa]; ``drop`` is a measured one."""
+
+    kind: str
+    name: str
+    position: int  # 1-based, in the file
+    place: Place
+    elements: tuple[Element, ...]
+    readings: tuple[Reading, ...] = ()
+    drop: float | None = None
+    max_pressure: float | None = None
+    max_drop: float | None = None
+
+    @property
+    def label(self) -> str:
+        """Name for messages: 'tube "valve to column"', or 'tube (part 2)' without a name."""
+        return f'{self.kind} "{self.name}"' if self.name else f"{self.kind} (part {self.position})"
+
+
+@dataclass(frozen=True)
+class Peak:
+    """One peak: retention factor ``k`` at elution (None where the path has no column)."""
+
+    name: str
+    k: float | None
+    diffusion: float  # m²/s
+    place: Place
+    plates: float | None = None
+    retention: float | None = None  # s, as recorded at the first detector, where the file gives it
+
+
+@dataclass(frozen=True)
+class Instrument:
+    """A flow path with what flows through it; everything in SI units."""
+
+    title: str
+    flow: float  # m³/s
+    viscosity: float | None  # Pa s
+    density: float  # kg/m³
+    temperature: float | None  # K
+    pump_pressure: float | None  # Pa
+    parts: tuple[Part, ...]
+    peaks: tuple[Peak, ...]
+    place: Place
+    assumed: tuple[Assumption, ...] = ()
+    warnings: tuple[str, ...] = ()
+
+    @property
+    def detectors(self) -> tuple[Part, ...]:
+        """The detectors, in the order of flow."""
+        return tuple(part for part in self.parts if part.kind == "detector")
+
+    @property
+    def injection(self) -> int:
+        """Position of the injection."""
+        return next(part.position for part in self.parts if part.kind == "inject")

@@ -1,0 +1,97 @@
+"""The short way to write sizes: "40 cm x 0.010 in", "4.6 x 150 mm, 5 um"."""
+
+from __future__ import annotations
+
+import re
+
+from xcol.units import LENGTH, UnitError, missing_unit, parse, quote, split
+
+# "x" separates sizes only before a number, so that no unit is ever cut; a comma separates unless
+# it is a decimal comma, which has a digit on either side.
+_BY = re.compile(r"\s*[xX×*]\s*(?=[\d.,+\-])")
+_THEN = re.compile(r"\s*(?:;|,(?!\d)|(?<!\d),)\s*")
+_INSIDE = re.compile(r"\s*(?:\bi\.?d\.?|\binside diameter|\bbore|\blong|\bparticles?)\s*$", re.I)
+_OUTSIDE = re.compile(r"(?:\bo\.?d\.?(?![a-z])|\boutside diameter|\bouter diameter)", re.I)
+_RADIUS = re.compile(r"\bradius\b", re.I)
+
+
+def tube_size(text: str) -> dict[str, float]:
+    """Read length and bore [m] of a tube, in either order: the smaller of the two is the bore.
+
+    >>> tube_size("40 cm x 0.25 mm")
+    {'length': 0.4, 'bore': 0.00025}
+    """
+    expected = 'length and bore, as in "40 cm x 0.25 mm" or "40 cm x 0.010 in"'
+    sizes = _sizes(text, expected)
+    if len(sizes) != 2 or len(_THEN.split(text.strip())) != 1:
+        raise UnitError(quote(text), expected, _tube_advice(sizes))
+    bare = [size for size in sizes if not split(size)[1]]
+    if bare:
+        kept = [size for size in sizes if split(size)[1]]
+        other = kept[0] if kept else "0.25 mm"
+        readings = " or ".join(f'"{bare[0]} {unit} x {other}"' for unit in ("cm", "mm"))
+        raise UnitError(f"{quote(text)}: {bare[0]} without a unit", expected, readings)
+    small, large = sorted(parse(size, LENGTH) for size in sizes)
+    return {"length": large, "bore": small}
+
+
+def column_size(text: str) -> dict[str, float]:
+    """Read bore, length and, where given, particle diameter [m] of a column.
+
+    The trade writes the unit of bore and length once; the smaller of the two is the bore.
+
+    >>> {key: round(value * 1e3, 6) for key, value in column_size("2,1 x 50 mm, 1,8 µm").items()}
+    {'bore': 2.1, 'length': 50.0, 'particle': 0.0018}
+    """
+    expected = 'bore x length and particle, as in "4.6 x 150 mm, 5 um"'
+    pieces = [piece for piece in _THEN.split(text.strip()) if piece]
+    sizes = _sizes(pieces[0], expected) if pieces else []
+    if len(sizes) == 3 and len(pieces) == 1:  # "4.6 x 150 mm x 5 um" reads one way only
+        pieces.append(sizes.pop())
+    if len(sizes) != 2 or len(pieces) > 2:
+        raise UnitError(quote(text), expected, '"4.6 x 150 mm, 5 um"')
+    (first, first_unit), (second, second_unit) = (split(size) for size in sizes)
+    if not second_unit:
+        rest = f", {pieces[1]}" if len(pieces) == 2 else ""
+        raise UnitError(
+            f"{quote(text)}: {second:g} without a unit", expected, f'"{first:g} x {second:g} mm{rest}"'
+        )
+    if not first_unit:
+        sizes[0] = f"{sizes[0]} {second_unit}"
+    small, large = sorted(parse(size, LENGTH) for size in sizes)
+    result = {"bore": small, "length": large}
+    if len(pieces) == 2:
+        particle = _INSIDE.sub("", pieces[1])
+        if not split(particle)[1]:
+            raise missing_unit(particle, LENGTH)
+        result["particle"] = parse(particle, LENGTH)
+    return result
+
+
+def length_first(text: str) -> bool:
+    """Whether a column's length was written before its bore.
+
+    >>> length_first("150 x 4.6 mm, 5 um"), length_first("4.6 x 150 mm, 5 um")
+    (True, False)
+    """
+    first, second = (split(size) for size in _sizes(_THEN.split(text.strip())[0], "")[:2])
+    unit = second[1] or first[1]
+    return parse(f"{first[0]} {first[1] or unit}", LENGTH) > parse(f"{second[0]} {unit}", LENGTH)
+
+
+def _sizes(text: str, expected: str) -> list[str]:
+    if _OUTSIDE.search(text):
+        raise UnitError(
+            f"{quote(text)}, with an outside diameter",
+            expected,
+            "the bore (inside diameter) alone; the outside diameter can go into note",
+        )
+    if _RADIUS.search(text):
+        raise UnitError(f"{quote(text)}, with a radius", expected, "the bore, which is a diameter")
+    return [_INSIDE.sub("", size).strip() for size in _BY.split(text.strip())]
+
+
+def _tube_advice(sizes: list[str]) -> str:
+    if len(sizes) == 1:
+        return f'"{sizes[0]} x 0.25 mm", with the tube\'s own bore'
+    return "two sizes only; an outside diameter can go into note"
