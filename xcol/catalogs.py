@@ -68,7 +68,9 @@ def packings() -> dict[str, Packing]:
 def tubing() -> tuple[Tubing, ...]:
     """Return the stock bores, narrowest first."""
     rows = (_Row(*row) for row in _rows("tubing.toml", "tubing"))
-    records = [Tubing(r.positive("bore_mm") * 1e-3, r.text("label"), r.text("source")) for r in rows]
+    records = [
+        Tubing(r.positive("bore_mm") * 1e-3, r.text("label"), r.text("source")) for r in rows
+    ]
     return tuple(sorted(records, key=lambda record: record.bore))
 
 

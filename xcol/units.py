@@ -164,7 +164,9 @@ def spell(unit: str) -> str:
     """
     text = unit.strip().replace("µ", "u").replace("μ", "u").replace("℃", "degC")
     text = re.sub(r"°\s*([CFK])\b", r"deg\1", text).replace("″", "in").replace('"', "in")
-    text = re.sub(r"(?<=[A-Za-z])[⁻⁺]?[⁰¹²³⁴-⁹]+", lambda m: "^" + m[0].translate(_SUPERSCRIPTS), text)
+    text = re.sub(
+        r"(?<=[A-Za-z])[⁻⁺]?[⁰¹²³⁴-⁹]+", lambda m: "^" + m[0].translate(_SUPERSCRIPTS), text
+    )
     text = re.sub(r"[·⋅∙*]|(?<=[A-Za-z])\.(?=[A-Za-z])", " ", text.replace("**", "^"))
     text = re.sub(r"(?<=[A-Za-z])(-?\d)", r"^\1", text.rstrip(". "))
     text = re.sub(r"\s*([/^])\s*", r"\1", text)
@@ -274,7 +276,9 @@ def significant(value: float, digits: int = 3) -> str:
         return "0" if value == 0 else str(value)
     rounded = float(f"{value:.{digits - 1}e}")
     if not 1e-4 <= abs(rounded) < 1e6:
-        return f"{rounded:.{digits - 1}e}"
+        mantissa, exponent = f"{rounded:.{digits - 1}e}".split("e")
+        mantissa = mantissa.rstrip("0").rstrip(".") if "." in mantissa else mantissa
+        return f"{mantissa}e{int(exponent)}"
     decimals = max(digits - 1 - math.floor(math.log10(abs(rounded))), 0)
     text = f"{rounded:.{decimals}f}"
     return text.rstrip("0").rstrip(".") if "." in text else text
@@ -336,7 +340,9 @@ def _unknown(text: str, unit: str, quantity: Quantity, near: str = "") -> UnitEr
     if not near:
         import difflib  # noqa: PLC0415
 
-        close = difflib.get_close_matches(unit, [u for u in quantity.everyday if u], n=1, cutoff=0.4)
+        close = difflib.get_close_matches(
+            unit, [u for u in quantity.everyday if u], n=1, cutoff=0.4
+        )
         near = close[0] if close else ""
     options = ", ".join(option or "no unit" for option in quantity.likely)
     return UnitError(

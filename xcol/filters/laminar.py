@@ -48,7 +48,9 @@ def solve_modes(polynomials: int) -> tuple[Matrix, Matrix]:
     slopes = np.zeros_like(values)
     for i in range(1, polynomials):  # P'_i = P'_{i−2} + (2i−1) P_{i−1}
         slopes[:, i] = (2 * i - 1) * values[:, i - 1] + (slopes[:, i - 2] if i > 1 else 0)
-    scale = np.sqrt(2 * np.arange(polynomials) + 1)  # makes the area mass ∫P_iP_j ds the unit matrix
+    scale = np.sqrt(
+        2 * np.arange(polynomials) + 1
+    )  # makes the area mass ∫P_iP_j ds the unit matrix
     values, slopes = values * scale, 2 * slopes * scale
     stiffness = 4 * (slopes * (weights * s)[:, None]).T @ slopes
     flow_mass = 2 * (values * (weights * (1 - s))[:, None]).T @ values

@@ -6,12 +6,11 @@ from dataclasses import dataclass, field
 from typing import TYPE_CHECKING
 
 from xcol.errors import Fault, InputError, Place
+from xcol.flowpath.model import Assumption
 
 if TYPE_CHECKING:
     from xcol.flowpath.keys import Value
     from xcol.units import UnitError
-
-from xcol.flowpath.model import Assumption
 
 
 @dataclass
@@ -75,11 +74,13 @@ class Draft:
 
     @property
     def label(self) -> str:
-        """Say which part it is: 'part 2 (tube "valve to column")'."""
+        """Say which part or peak it is: 'part 2 (tube "valve to column")'; "" for the file."""
         name = f' "{self.name}"' if self.name else ""
-        return f"part {self.position} ({self.kind}{name})" if self.kind != "peak" else (
-            f"peak {self.position}{name}"
-        )
+        if self.kind == "file":
+            return ""
+        if self.kind == "peak":
+            return f"peak {self.position}{name}"
+        return f"part {self.position} ({self.kind}{name})"
 
     def place(self, key: str = "") -> Place:
         """Return the place of a key, or of the part."""

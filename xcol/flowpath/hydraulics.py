@@ -53,7 +53,9 @@ def bed_drop(
     71.6
     """
     superficial = flow / (math.pi / 4 * bore**2)
-    return 180 * viscosity * superficial * length * (1 - porosity) ** 2 / (porosity**3 * particle**2)
+    return (
+        180 * viscosity * superficial * length * (1 - porosity) ** 2 / (porosity**3 * particle**2)
+    )
 
 
 def reynolds_number(flow: Real, bore: Real, viscosity: Real, density: Real) -> Real:

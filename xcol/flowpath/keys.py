@@ -46,7 +46,11 @@ class Measure:
 
     def __call__(self, raw: object) -> float:
         """Return the value in SI units."""
-        if isinstance(raw, int | float) and not isinstance(raw, bool) and self.quantity is not RATIO:
+        if (
+            isinstance(raw, int | float)
+            and not isinstance(raw, bool)
+            and self.quantity is not RATIO
+        ):
             raise missing_unit(raw, self.quantity)
         value = parse(_text_or_number(raw, self.quantity), self.quantity, fraction=self.fraction)
         self.check(value, raw)
@@ -102,7 +106,9 @@ class Number:
             raise UnitError(described(raw), self.what, "a number, without quotes")
         if not math.isfinite(value) or not self.low <= value <= self.high:
             raise UnitError(
-                described(raw), f"{self.what}, from {self.low:g} to {self.high:g}", "check the number"
+                described(raw),
+                f"{self.what}, from {self.low:g} to {self.high:g}",
+                "check the number",
             )
         if self.whole and value != int(value):
             raise UnitError(described(raw), f"{self.what}, a whole number", f"{round(value)}")
@@ -150,7 +156,9 @@ class Later:
     def __call__(self, raw: object) -> Value:
         """Raise ``UnitError``: silence would be a wrong answer."""
         raise UnitError(
-            described(raw), "a key that this version of xcol can compute: not yet this one", self.instead
+            described(raw),
+            "a key that this version of xcol can compute: not yet this one",
+            self.instead,
         )
 
 

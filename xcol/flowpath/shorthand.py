@@ -54,7 +54,9 @@ def column_size(text: str) -> dict[str, float]:
     if not second_unit:
         rest = f", {pieces[1]}" if len(pieces) == 2 else ""
         raise UnitError(
-            f"{quote(text)}: {second:g} without a unit", expected, f'"{first:g} x {second:g} mm{rest}"'
+            f"{quote(text)}: {second:g} without a unit",
+            expected,
+            f'"{first:g} x {second:g} mm{rest}"',
         )
     if not first_unit:
         sizes[0] = f"{sizes[0]} {second_unit}"

@@ -1,0 +1,103 @@
+"""The chain of filters between the injection and what one detector records."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import TYPE_CHECKING
+
+from xcol.filters.tube import Tube, TubeRun
+from xcol.flowpath.elements import Bed, Bore, Element, Stream
+
+if TYPE_CHECKING:
+    from collections.abc import Sequence
+
+    from xcol.filters.interface import Filter, Real
+    from xcol.flowpath.model import Instrument, Part
+
+
+@dataclass(frozen=True)
+class Link:
+    """One element of the chain: whose it is, and on which side of the columns it stands.
+
+    ``side`` is "before", "between" (two columns), "after", or "signal" (electronics).
+    """
+
+    part: Part
+    element: Element
+    side: str
+    read_here: bool  # in the detector whose record this is
+
+
+def links(instrument: Instrument, detector: Part) -> tuple[Link, ...]:
+    """Return what the band meets from the injection to this detector's record, columns included.
+
+    Another detector's electronics never count, nor does what stands behind the detector.
+    """
+    first, last = instrument.injection, detector.position
+    columns = [p.position for p in instrument.parts if p.kind == "column" and first < p.position < last]
+    chain = []
+    for part in instrument.parts[first - 1 : last]:
+        read_here = part.position == last
+        if not columns or part.position < columns[0]:
+            side = "before"
+        elif part.position > columns[-1]:
+            side = "after"
+        else:
+            side = "between"
+        for element in part.elements:
+            if element.of_signal and not read_here:
+                continue
+            chain.append(Link(part, element, "signal" if element.of_signal else side, read_here))
+    return tuple(chain)
+
+
+def segments(chain: Sequence[Link]) -> list[tuple[int, ...]]:
+    """Group the chain, as indices into it: tubes with nothing between them are one segment.
+
+    Everything else but electronics mixes the stream anew, and is a segment of its own. What holds
+    no volume mixes nothing, so it does not end a run.
+    """
+    groups: list[tuple[int, ...]] = []
+    run: list[int] = []
+
+    def end_run() -> None:
+        if run:
+            groups.append(tuple(run))
+            run.clear()
+
+    for index, link in enumerate(chain):
+        if isinstance(link.element, Bore) and link.element.layered:
+            run.append(index)
+            continue
+        if not link.element.of_signal and link.element.volume > 0:
+            end_run()
+        groups.append((index,))
+    end_run()
+    return groups
+
+
+def filter_of(link: Link, flow: float, diffusion: Real) -> Filter:
+    """Return the link's own filter for a solute of this diffusion coefficient [m²/s]."""
+    return link.element.filter(Stream(flow, diffusion), read_here=link.read_here)
+
+
+def run_of(chain: Sequence[Link], group: Sequence[int], flow: float, diffusion: Real) -> TubeRun:
+    """Return the tubes of a segment as one run."""
+    tubes = [filter_of(chain[index], flow, diffusion) for index in group]
+    return TubeRun(tuple(tube for tube in tubes if isinstance(tube, Tube)))
+
+
+def transit(instrument: Instrument, detector: Part) -> float:
+    """Mean delay [s] of everything outside the columns, from the valve's turn to the record."""
+    total = 0.0
+    for link in links(instrument, detector):
+        if not isinstance(link.element, Bed):
+            # no part's mean delay depends on diffusion
+            total += float(filter_of(link, instrument.flow, 1e-9).delay())
+    return total
+
+
+def dead_time(instrument: Instrument) -> float:
+    """Hold-up time of all columns together [s]; 0 without a column."""
+    beds = (e for part in instrument.parts for e in part.elements if isinstance(e, Bed))
+    return sum(bed.void_volume for bed in beds) / instrument.flow

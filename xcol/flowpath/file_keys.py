@@ -1,0 +1,78 @@
+"""The keys of the file itself and of a peak, and the words that people use for them."""
+
+from __future__ import annotations
+
+from xcol.flowpath.keys import Key, Later, Measure, Number, Text
+from xcol.units import DENSITY, DIFFUSION, FLOW, PRESSURE, TEMPERATURE, TIME, VISCOSITY, VOLUME
+
+# 3e-8 m²/s: a coefficient in cm²/s with the unit m²/s is above, everything liquid below.
+DIFFUSIONS = Measure(DIFFUSION, 1e-14, 3e-8)
+FLOWS = Measure(FLOW, 1e-14, 1e-5)
+
+_BY_HAND = 'viscosity = "0.9 mPa s", and diffusion = "1.0e-9 m^2/s" of the solutes'
+
+FILE_KEYS = {
+    key.name: key
+    for key in (
+        Key("title", Text(120), "what the report is headed with"),
+        Key("flow", FLOWS, "flow rate through the column"),
+        Key("viscosity", Measure(VISCOSITY, 1e-5, 1.0), "viscosity of the mobile phase"),
+        Key("density", Measure(DENSITY, 400.0, 3000.0), "density of the mobile phase"),
+        Key("temperature", Measure(TEMPERATURE, 233.15, 523.15), "temperature of everything"),
+        Key("diffusion", DIFFUSIONS, "diffusion coefficient of peaks that give none"),
+        Key("pump_pressure", Measure(PRESSURE, 1e4, 3e8), "measured pressure at the pump"),
+        Key("note", Text(2000), "anything"),
+        Key("mobile_phase", Later(_BY_HAND), "composition of the mobile phase"),
+        Key("ambient", Later("temperature"), "temperature outside the oven"),
+        Key("gradient", Later(), "gradient elution"),
+        Key("sample_solvent", Later(), "solvent of the sample"),
+        Key("require", Later(), "requirement to be met"),
+        Key("catalogs", Later(), "catalogs of your own"),
+        Key("runs", Later("one file for each run"), "several runs"),
+        Key("bend_radius", Later(), "radius of the tubes' bends"),
+        Key("coil_diameter", Later(), "diameter of the tubes' coils"),
+    )
+}
+
+PEAK_KEYS = {
+    key.name: key
+    for key in (
+        Key("name", Text(60), "name in the report"),
+        Key("k", Number(0.0, 1000.0, "a retention factor"), "retention factor"),
+        Key("retention", Measure(TIME, 1e-2, 1e6), "retention time at the first detector"),
+        Key("elution_volume", Measure(VOLUME, 1e-13, 1.0), "elution volume at the first detector"),
+        Key("diffusion", DIFFUSIONS, "diffusion coefficient in the mobile phase"),
+        Key("plates", Number(1, 1e8, "a plate number"), "the columns' plates for this peak"),
+        Key("note", Text(2000), "anything"),
+        Key("solute", Later('diffusion = "1.0e-9 m^2/s"'), "name of the solute"),
+        Key("molar_mass", Later('diffusion = "1.0e-9 m^2/s"'), "molar mass of the solute"),
+        Key("molecule", Later('diffusion = "1.0e-9 m^2/s"'), "small, globular or chain"),
+        Key("at", Later("diffusion in this mobile phase"), "conditions of the diffusion"),
+        Key("k_start", Later("k"), "retention factor at the start of the gradient"),
+        Key("S", Later("k"), "slope of log k with composition"),
+        Key("k_in_sample", Later(), "retention factor in the sample's solvent"),
+    )
+}
+
+# What people write in place of a key or a kind.
+OTHER_WORDS = {
+    "injection": "inject", "injector": "inject", "injection_volume": "inject", "sample": "inject",
+    "tubing": "tube", "capillary": "tube", "line": "tube", "pipe": "tube",
+    "union": "fitting", "connector": "fitting", "valve": "fitting", "frit": "fitting",
+    "tee": "fitting", "connection": "fitting", "fittings": "fitting",
+    "guard": "column", "precolumn": "column", "waste": "outlet", "collector": "outlet",
+    "flow_cell": "cell", "cell_volume": "cell", "flowcell": "cell",
+    "id": "bore", "i_d": "bore", "inner_diameter": "bore", "inside_diameter": "bore",
+    "diameter": "bore", "radius": "bore", "od": "note", "outer_diameter": "note",
+    "outside_diameter": "note", "color": "note", "colour": "note", "comment": "note",
+    "n": "plates", "N": "plates", "plate_number": "plates", "efficiency": "plates",
+    "porosity": "total_porosity", "particle_size": "particle", "dp": "particle",
+    "dead_volume": "void_volume", "v0": "void_volume", "hold_up_volume": "void_volume",
+    "tau": "time_constant", "response_time": "response", "sampling_rate": "rate",
+    "data_rate": "rate", "frequency": "rate", "path_len": "path_length",
+    "flow_rate": "flow", "flowrate": "flow", "eluent": "mobile_phase", "solvent": "mobile_phase",
+    "temp": "temperature", "pressure": "pump_pressure", "parts": "path", "peak": "peaks",
+    "retention_time": "retention", "rt": "retention", "tr": "retention", "k_prime": "k",
+    "retention_factor": "k", "D": "diffusion", "dm": "diffusion", "pressure_limit": "max_pressure",
+    "limit": "max_pressure", "pmax": "max_pressure", "label": "name",
+}  # fmt: skip

@@ -1,0 +1,185 @@
+"""One entry of the path -> a part of the instrument."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+
+from xcol.flowpath import slips
+from xcol.flowpath.file_keys import OTHER_WORDS
+from xcol.flowpath.findings import Draft, Findings
+from xcol.flowpath.keys import Key, Later, described, nearest
+from xcol.flowpath.kinds import KINDS, KINDS_LATER, Kind
+from xcol.flowpath.model import Part, Reading
+from xcol.units import UnitError
+
+ANY_KIND = (*KINDS, *KINDS_LATER)
+
+
+def read_part(
+    raw: object, position: int, file: str, lines: dict[str, int], findings: Findings
+) -> tuple[str, Part | None]:
+    """Return the entry's kind ("" if unknown) and the part, None where faults were found in it."""
+    draft = Draft("part", "", position, file, lines, findings)
+    if not isinstance(raw, dict):
+        draft.fault(
+            "", 'a part in braces, { tube = "40 cm x 0.25 mm" }', "put the part in { }", described(raw)
+        )
+        return "", None
+    kind = _kind_of(raw, draft)
+    if kind is None:
+        return next((word for word in raw if word in KINDS_LATER), ""), None
+    draft.kind = kind.name
+    if isinstance(name := raw.get("name"), str):
+        draft.name = " ".join(name.split())
+    before = len(findings.faults)
+    _read_keys(raw, kind, draft)
+    _read_size(raw[kind.name], kind, draft)
+    if len(findings.faults) == before:
+        slips.of_part(draft)
+    if len(findings.faults) > before:
+        return kind.name, None
+    elements = kind.elements(draft)
+    if len(findings.faults) > before:
+        return kind.name, None
+    return kind.name, Part(
+        kind=kind.name,
+        name=draft.name,
+        position=position,
+        place=draft.place(),
+        elements=elements,
+        readings=tuple(_readings(kind, draft)),
+        drop=draft.number("drop"),
+        max_pressure=draft.number("max_pressure"),
+        max_drop=draft.number("max_drop"),
+    )
+
+
+def read_keys(raw: dict[str, object], keys: Iterable[Key], draft: Draft) -> None:
+    """Read the values of these keys into the draft; faults go to its findings."""
+    for key in keys:
+        if key.name not in raw:
+            continue
+        draft.written[key.name] = str(raw[key.name])
+        try:
+            draft.values[key.name] = key.read(raw[key.name])
+        except UnitError as error:
+            draft.findings.fault_of(draft.place(key.name), error)
+
+
+def refuse_unknown(raw: dict[str, object], known: tuple[str, ...], draft: Draft) -> None:
+    """Report the keys that are not among the known ones, each with the nearest that is."""
+    for word in raw:
+        if word not in known:
+            plain = OTHER_WORDS.get(word) or OTHER_WORDS.get(word.lower(), "")
+            near = plain if plain in known else nearest(word.lower(), known)
+            listed = ", ".join(known)
+            draft.fault(
+                word,
+                f"one of its keys: {listed}",
+                near or "leave it out, or put it into note",
+                f'the key "{word[:40]}", which is not known here',
+            )
+
+
+def _kind_of(raw: dict[str, object], draft: Draft) -> Kind | None:
+    """Return the part's kind, None with a fault where there is not exactly one that is known."""
+    found = [word for word in raw if word in ANY_KIND]
+    if len(found) == 1 and found[0] in KINDS:
+        return KINDS[found[0]]
+    if len(found) == 1:
+        draft.kind = found[0]
+        try:
+            Later()(raw[found[0]])
+        except UnitError as error:
+            draft.findings.fault_of(draft.place(found[0]), error)
+        return None
+    if found:
+        words = " and ".join(f'"{word}"' for word in found)
+        draft.fault(
+            found[1],
+            "one kind of part in each pair of braces",
+            "one part a line: " + ", ".join(f"{{ {word} = ... }}" for word in found),
+            f"{words} in one part",
+        )
+        return None
+    known = ", ".join(ANY_KIND)
+    words = [(word, OTHER_WORDS.get(word.lower(), "")) for word in raw]
+    guess = next(
+        (f'"{kind}" for "{word}"' for word, kind in words if kind in ANY_KIND),
+        next((f'"{near}" for "{word}"' for word in raw if (near := nearest(word.lower(), ANY_KIND))), ""),
+    )
+    shown = ", ".join(f'"{word[:30]}"' for word in raw) or "an empty part"
+    draft.fault("", f"a part with its kind: {known}", guess or KINDS["tube"].example, shown)
+    return None
+
+
+def _read_keys(raw: dict[str, object], kind: Kind, draft: Draft) -> None:
+    read_keys(raw, (key for name in kind.key_names if (key := kind.key(name))), draft)
+    refuse_unknown(raw, kind.key_names, draft)
+
+
+def _read_size(raw: object, kind: Kind, draft: Draft) -> None:
+    """Read the kind key's value: a size when it reads as one, otherwise the part's name."""
+    given = [way for way in kind.ways if all(key in draft.written for key in way)]
+    started = {key for way in kind.ways for key in way if key in draft.written}
+    draft.written[kind.name] = str(raw)
+    if not isinstance(raw, str | int | float) or isinstance(raw, bool) or not str(raw).strip():
+        draft.fault(kind.name, f"a size or a name, as in {kind.example}", kind.example, described(raw))
+        return
+    text = str(raw)
+    error = None
+    if kind.size is not None:
+        try:
+            sizes = kind.size(text)
+        except UnitError as problem:
+            error = problem
+        else:
+            _take_sizes(sizes, started, kind, draft)
+            return
+    begins_with_number = text.lstrip(" +-−≈~<>.,")[:1].isdigit()
+    if isinstance(raw, str) and (given or not begins_with_number or kind.size is None):
+        draft.name = draft.name or " ".join(text.split())[:60]
+        if kind.ways and not given:
+            _size_is_missing(started, kind, draft)
+        if len(given) > 1:
+            ways = " or ".join(" and ".join(way) for way in kind.ways)
+            draft.fault("", f"its size once: {ways}", "leave the others out", "more than one size")
+        return
+    if error is not None:
+        draft.findings.fault_of(draft.place(kind.name), error)
+
+
+def _take_sizes(sizes: dict[str, float], started: set[str], kind: Kind, draft: Draft) -> None:
+    place = draft.place(kind.name)
+    text = draft.written[kind.name]
+    for name, value in sizes.items():
+        if name in draft.written or started:
+            other = name if name in draft.written else min(started)
+            draft.fault(other, f"the size once: {kind.name} = {text!r} has it already", "leave it out")
+            continue
+        key = kind.key(name)
+        check = getattr(key.read, "check", None) if key else None
+        try:
+            if check:
+                check(value, text)
+        except UnitError as error:
+            draft.findings.fault(place, f"{name} in {error.read}", error.expected, error.suggestion)
+        draft.values[name] = value
+
+
+def _size_is_missing(started: set[str], kind: Kind, draft: Draft) -> None:
+    ways = ", or ".join(" and ".join(way) for way in kind.ways)
+    if started:
+        missing = sorted({key for way in kind.ways for key in way if way[0] in started} - started)
+        read = f"{' and '.join(sorted(started))} alone"
+        draft.fault("", f"its size: {ways}", f"add {' and '.join(missing) or ways}", read)
+        return
+    shown = draft.written[kind.name]
+    draft.fault(kind.name, f"its size: {ways}", kind.example, f'"{shown}", a name, and no size')
+
+
+def _readings(kind: Kind, draft: Draft) -> Iterable[Reading]:
+    for name in kind.key_names:
+        key = kind.key(name)
+        if key and name in draft.values and name != "name":
+            yield Reading(name, draft.values[name], key.quantity)

@@ -1,0 +1,149 @@
+"""The peaks of a path file: retention factor and diffusion coefficient of each."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+from typing import TYPE_CHECKING
+
+from xcol.flowpath import slips
+from xcol.flowpath.chain import dead_time, transit
+from xcol.flowpath.elements import Bed
+from xcol.flowpath.file_keys import PEAK_KEYS
+from xcol.flowpath.findings import Draft, Findings
+from xcol.flowpath.keys import described
+from xcol.flowpath.model import Instrument, Peak
+from xcol.flowpath.part_reader import read_keys, refuse_unknown
+from xcol.units import TIME, write
+
+if TYPE_CHECKING:
+    from collections.abc import Mapping
+
+DEFAULT_K = (1.0, 2.0, 5.0, 10.0)
+_POSITIONS = ("k", "retention", "elution_volume")
+
+
+def read_peaks(raw: object, file: str, lines: Mapping[int, dict[str, int]], findings: Findings) -> list[Draft]:
+    """Read the entries of ``peaks`` (None: there are none) as drafts; faults go to the findings."""
+    if raw is None:
+        return []
+    if not isinstance(raw, list):
+        draft = Draft("peak", "", 1, file, lines.get(-1, {}), findings)
+        draft.fault("peaks", "a list, peaks = [ { k = 2 }, ... ]", "peaks = [ { k = 2 } ]", described(raw))
+        return []
+    drafts = []
+    for index, entry in enumerate(raw):
+        draft = Draft("peak", "", index + 1, file, lines.get(index, {}), findings)
+        if not isinstance(entry, dict):
+            draft.fault("", "a peak in braces, { k = 2 }", "put the peak in { }", described(entry))
+            continue
+        if isinstance(name := entry.get("name"), str):
+            draft.name = " ".join(name.split())
+        read_keys(entry, PEAK_KEYS.values(), draft)
+        refuse_unknown(entry, tuple(PEAK_KEYS), draft)
+        drafts.append(draft)
+    return drafts
+
+
+def check_positions(drafts: list[Draft], has_column: bool) -> None:
+    """Report peaks without exactly one of k, retention and elution_volume."""
+    for draft in drafts:
+        given = [key for key in _POSITIONS if key in draft.written]
+        if not has_column and given:
+            draft.fault(
+                given[0],
+                "a column in the path, since a peak's place is asked for",
+                'add { column = "4.6 x 150 mm, 5 um", plates = 11000 }, or leave the key out '
+                "(a union in place of the column)",
+            )
+        elif has_column and len(given) != 1:
+            read = " and ".join(given) if given else "none of them"
+            draft.fault(
+                given[-1] if given else "",
+                "one of k, retention and elution_volume",
+                "k = 2" if not given else "leave the others out",
+                read,
+            )
+
+
+def peaks_of(
+    drafts: list[Draft], instrument: Instrument, diffusion: float | None, findings: Findings
+) -> tuple[Peak, ...]:
+    """Return the peaks, those given by their recorded place with the transit taken off.
+
+    ``diffusion`` [m²/s] serves the peaks that have none. Without drafts the peaks are k = 1, 2, 5,
+    10, or one unnamed band where there is no column.
+    """
+    has_column = dead_time(instrument) > 0
+    if not drafts:
+        if diffusion is None:
+            findings.fault(
+                replace(instrument.place, key="diffusion"),
+                "neither peaks nor a diffusion coefficient",
+                "the solutes' diffusion coefficient",
+                'diffusion = "1.0e-9 m^2/s" at the top (small molecules in water: 0.5 to 1.5e-9)',
+            )
+            return ()
+        if not has_column:
+            return (Peak("band", None, diffusion, instrument.place),)
+        findings.assume("peaks k 1, 2, 5, 10", "no peaks entered: k = 1, 2, 5 and 10 are shown")
+        return tuple(Peak(f"k = {k:g}", k, diffusion, instrument.place) for k in DEFAULT_K)
+    peaks = (_peak(draft, instrument, diffusion) for draft in drafts)
+    return tuple(peak for peak in peaks if peak is not None)
+
+
+def _peak(draft: Draft, instrument: Instrument, default: float | None) -> Peak | None:
+    diffusion = draft.number("diffusion")
+    if diffusion is None:
+        diffusion = default
+    if diffusion is None:
+        draft.fault(
+            "diffusion",
+            "the solute's diffusion coefficient, here or once at the top of the file",
+            'diffusion = "1.0e-9 m^2/s" (small molecules in water: 0.5 to 1.5e-9)',
+        )
+        return None
+    if diffusion < 1e-12:
+        draft.warn(f"diffusion {diffusion:g} m²/s is very slow: m^2/s or cm^2/s?")
+    plates = draft.number("plates")
+    if plates is not None and _too_many(draft, plates, instrument):
+        return None
+    retention = draft.number("retention")
+    volume = draft.number("elution_volume")
+    if volume is not None:
+        retention = volume / instrument.flow
+    k = draft.number("k")
+    if retention is not None:
+        k = _k_from(retention, draft, instrument)
+        if k is None:
+            return None
+    name = draft.name or (f"k = {k:.3g}" if k is not None else f"peak {draft.position}")
+    return Peak(name, k, diffusion, draft.place(), plates, retention)
+
+
+def _k_from(retention: float, draft: Draft, instrument: Instrument) -> float | None:
+    """Return k from the recorded retention time: the mean delay outside the columns comes off."""
+    delay, hold_up = transit(instrument, instrument.detectors[0]), dead_time(instrument)
+    k = (retention - delay) / hold_up - 1
+    if k >= -1e-9:
+        return max(k, 0.0)
+    key = "retention" if "retention" in draft.values else "elution_volume"
+    least = delay + hold_up
+    expected = f"at least {write(least, 's', TIME, 4)} ({write(least, 'min', TIME, 4)})"
+    if key == "elution_volume":
+        expected = f"at least {least * instrument.flow * 1e6:.4g} mL"
+    draft.fault(
+        key,
+        f"{expected}: the transit outside the column, {write(delay, 's', TIME)}, and its hold-up, "
+        f"{write(hold_up, 's', TIME)}",
+        "check retention, void volume and flow (an excluded peak needs its own void_volume)",
+    )
+    return None
+
+
+def _too_many(draft: Draft, plates: float, instrument: Instrument) -> bool:
+    beds = [e for part in instrument.parts for e in part.elements if isinstance(e, Bed)]
+    if not beds or any(bed.particle is None for bed in beds):
+        return False
+    most = sum(bed.length / bed.particle for bed in beds if bed.particle)
+    length = sum(bed.length for bed in beds)
+    return slips.plates_fault(draft, "plates", plates, length, length / most)

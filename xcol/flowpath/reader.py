@@ -1,0 +1,194 @@
+"""A path file -> the described instrument, or everything that is wrong with the file at once."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+from typing import Any
+
+from xcol.errors import Place
+from xcol.flowpath import slips
+from xcol.flowpath.file_keys import FILE_KEYS
+from xcol.flowpath.findings import Draft, Findings
+from xcol.flowpath.keys import described
+from xcol.flowpath.locate import Path, key_lines
+from xcol.flowpath.model import Instrument, Part
+from xcol.flowpath.part_reader import read_keys, read_part, refuse_unknown
+from xcol.flowpath.peak_reader import check_positions, peaks_of, read_peaks
+from xcol.flowpath.source import read_text
+from xcol.flowpath.toml_text import load
+
+MOST_PARTS = 500
+_DENSITY = 1000.0  # kg/m³, for the Reynolds number only
+
+
+def read(name: str) -> Instrument:
+    """Read a path file ("-": standard input).
+
+    Raises ``InputError`` with every fault that was found, each with its place.
+    """
+    return parse(read_text(name), "standard input" if name == "-" else name)
+
+
+def parse(text: str, file: str) -> Instrument:
+    """Read the text of a path file; ``file`` is its name in messages."""
+    findings = Findings()
+    data, mended, faults = load(text, file)
+    findings.faults += faults
+    if data is None:
+        findings.raise_faults()
+        data = {}
+    lines = _Lines(key_lines(mended))
+
+    top = Draft("file", "", 0, file, lines.of(), findings)
+    read_keys(data, FILE_KEYS.values(), top)
+    refuse_unknown(data, (*FILE_KEYS, "path", "peaks"), top)
+    if "flow" not in data:
+        place = Place(file, None, "", "flow")
+        findings.fault(place, "nothing", "the flow rate", 'flow = "1.0 mL/min"')
+
+    kinds, parts = _read_path(data, file, lines, findings)
+    drafts = read_peaks(
+        data.get("peaks"), file, lines.peaks(len(data.get("peaks") or ())), findings
+    )
+    check_positions(drafts, "column" in kinds or not kinds)
+    findings.raise_faults()
+    return _instrument(top, tuple(parts), drafts, findings)
+
+
+def _instrument(
+    top: Draft, parts: tuple[Part, ...], drafts: list[Draft], findings: Findings
+) -> Instrument:
+    density = top.number("density")
+    if density is None:
+        density = _DENSITY
+        findings.assume("density 1000 kg/m3", "density 1000 kg/m³, for the Reynolds number only")
+    instrument = Instrument(
+        title=top.text("title") or "",
+        flow=top.number("flow") or 0.0,
+        viscosity=top.number("viscosity"),
+        density=density,
+        temperature=top.number("temperature"),
+        pump_pressure=top.number("pump_pressure"),
+        parts=parts,
+        peaks=(),
+        place=Place(top.file),
+    )
+    slips.of_path(instrument, Place(top.file, top.lines.get("flow"), "", "flow"), findings)
+    _assume_best_and_worst(instrument, findings)
+    peaks = peaks_of(drafts, instrument, top.number("diffusion"), findings)
+    if "diffusion" in top.values or any("diffusion" in draft.values for draft in drafts):
+        findings.assume("D as entered", "diffusion coefficients are taken as entered")
+    findings.raise_faults()
+    return replace(
+        instrument,
+        peaks=peaks,
+        assumed=tuple(findings.assumed),
+        warnings=tuple(findings.warnings),
+    )
+
+
+def _assume_best_and_worst(instrument: Instrument, findings: Findings) -> None:
+    """Say which end of their range injection and tubes are computed at."""
+    findings.assume(
+        "injection a plug", "the injection is a plug, the best case: a real loop can be 5 times worse"
+    )
+    if any(part.kind == "tube" for part in instrument.parts):
+        findings.assume(
+            "tubes straight",
+            "tubes are straight, the worst case: bends mix the stream, and can lower a tube's "
+            "variance up to 4 times",
+        )
+
+
+def _read_path(
+    data: dict[str, Any], file: str, lines: _Lines, findings: Findings
+) -> tuple[list[str], list[Part]]:
+    """Return the kinds of all entries, in order, and the parts that could be read."""
+    entries = data.get("path")
+    place = Place(file, lines.line(("path",)), "", "path")
+    if entries is None:
+        under = next((k for k, v in data.items() if isinstance(v, dict) and "path" in v), None)
+        if under:
+            findings.fault(
+                Place(file, lines.line((under, "path")), "", "path"),
+                f"path under the header [{under}], which takes all keys below it",
+                "path above the first [header]",
+                f"move path above [{under}], or write {under} = {{ ... }} on one line",
+            )
+        else:
+            example = 'path = [ { inject = "20 uL" }, { column = ... }, { detector = "UV" } ]'
+            findings.fault(place, "nothing", "the parts in order of flow", example)
+        return [], []
+    if not isinstance(entries, list):
+        findings.fault(place, described(entries), "a list of parts", "path = [ { ... }, { ... } ]")
+        return [], []
+    if len(entries) > MOST_PARTS:
+        findings.fault(place, f"{len(entries)} parts", f"at most {MOST_PARTS}", "fewer parts")
+        return [], []
+    found = [
+        read_part(entry, index + 1, file, lines.of("path", index), findings)
+        for index, entry in enumerate(entries)
+    ]
+    kinds = [kind for kind, _ in found]
+    _check_kinds(kinds, entries, place, lines, findings)
+    return kinds, [part for _, part in found if part is not None]
+
+
+def _check_kinds(
+    kinds: list[str], entries: list[Any], place: Place, lines: _Lines, findings: Findings
+) -> None:
+    """Report a path without injection or detector, and a second injection.
+
+    An entry whose kind is not known might be the one that is missed, so nothing is said then.
+    """
+    if "" not in kinds:
+        for kind, example in (
+            ("inject", 'begin with { inject = "20 uL" }'),
+            ("detector", 'add { detector = "UV", cell = "10 uL", time_constant = "0.1 s" }'),
+        ):
+            if kind not in kinds:
+                what = "an injection" if kind == "inject" else "a detector"
+                read = f"{len(entries)} parts, and no {kind}" if entries else "an empty list"
+                findings.fault(place, read, f"{what} in the path", example)
+    for index, kind in enumerate(kinds):
+        if kind == "inject" and "inject" in kinds[:index]:
+            where = Place(place.file, lines.line(("path", index)), f"part {index + 1} (inject)", "inject")
+            findings.fault(where, "a second injection", "one injection", "leave one of them out")
+    if "inject" in kinds and "detector" in kinds:
+        last = len(kinds) - 1 - kinds[::-1].index("detector")
+        first = kinds.index("inject")
+        if last < first:
+            findings.fault(place, "all detectors before the injection", "parts in order of flow",
+                           "begin with the injection")  # fmt: skip
+        for index, kind in enumerate(kinds):
+            if kind == "column" and not first < index < last:
+                where = Place(place.file, lines.line(("path", index)), f"part {index + 1} (column)")
+                findings.fault(where, "a column that is not between injection and last detector",
+                               "parts in order of flow", "move it between them")  # fmt: skip
+
+
+class _Lines:
+    """The lines of a file's keys, by path."""
+
+    def __init__(self, lines: dict[Path, int]) -> None:
+        self._lines = lines
+
+    def line(self, path: Path) -> int | None:
+        return self._lines.get(path)
+
+    def of(self, *path: str | int) -> dict[str, int]:
+        """Return the lines of the keys below a path, and its own as ""."""
+        depth = len(path)
+        found = {
+            str(key[depth]): line
+            for key, line in self._lines.items()
+            if len(key) == depth + 1 and key[:depth] == path
+        }
+        if path in self._lines:
+            found[""] = self._lines[path]
+        return found
+
+    def peaks(self, count: int) -> dict[int, dict[str, int]]:
+        return {index: self.of("peaks", index) for index in range(count)} | {-1: self.of()}
+
+

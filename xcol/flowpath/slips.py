@@ -1,0 +1,263 @@
+"""Slips: what reads well and is probably not meant.
+
+What is certainly wrong is a fault, what is only odd a warning.
+"""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Callable
+from typing import TYPE_CHECKING
+
+from xcol.catalogs import tubing
+from xcol.flowpath.elements import Bed, Bore
+from xcol.flowpath.hydraulics import LAMINAR_LIMIT, reynolds_number
+from xcol.units import FLOW, LENGTH, PRESSURE, VOLUME, significant, write
+
+if TYPE_CHECKING:
+    from xcol.errors import Place
+    from xcol.flowpath.findings import Draft, Findings
+    from xcol.flowpath.model import Instrument
+
+_OUTSIDE_DIAMETERS = {"1/32 in": 0.0254 / 32, "1/16 in": 0.0254 / 16, "1/8 in": 0.0254 / 8}
+_REEL_NUMBERS = (0.0025, 0.004, 0.005, 0.007, 0.010, 0.020, 0.030, 0.040)  # in, as printed on reels
+_COLUMN_RADII = {1.05e-3: 2.1e-3, 1.6e-3: 3.2e-3, 2.3e-3: 4.6e-3}
+
+WIDEST_USUAL_BORE = 1.2e-3
+FASTEST, SLOWEST = 0.3, 2e-6  # m/s of the mobile phase in a column: beyond is certainly wrong
+FAST, SLOW = 0.03, 1e-5  # beyond is odd
+
+
+def of_part(draft: Draft) -> None:
+    """Look for slips in one part, once its values have been read."""
+    if check := _CHECKS.get(draft.kind):
+        check(draft)
+    for key in ("max_pressure", "max_drop"):
+        limit = draft.number(key)
+        if limit is not None and not 0.5e5 <= limit <= 2000e5:
+            draft.warn(f"{key} of {write(limit, 'bar', PRESSURE)} is unusual: is the unit meant?")
+
+
+def of_path(instrument: Instrument, flow_place: Place, findings: Findings) -> None:
+    """Look for slips between parts."""
+    _flow_and_columns(instrument, flow_place, findings)
+    _injection_and_columns(instrument, findings)
+    _order(instrument, findings)
+    if instrument.viscosity is None:
+        findings.warn("no viscosity entered: pressures and Reynolds numbers are not computed")
+        return
+    for part in instrument.parts:
+        for element in part.elements:
+            if isinstance(element, Bore):
+                _reynolds(instrument, part.label, element, findings)
+
+
+def plates_fault(draft: Draft, key: str, plates: float, length: float, particle: float) -> bool:
+    """Report a plate number above length over particle diameter (h < 1); return whether it is."""
+    most = length / particle
+    if plates <= most:
+        return False
+    total = plates * length
+    draft.fault(
+        key,
+        f"at most {most:.0f} plates, length over particle diameter (h = 1)",
+        f"plates = {total:.0f}, if {plates:.0f} was per metre" if total <= most else "check N",
+        f"{plates:.0f} plates in {write(length, 'mm', LENGTH)} of {write(particle, 'um', LENGTH)}",
+    )
+    return True
+
+
+def _inject(draft: Draft) -> None:
+    volume, loop = draft.number("volume"), draft.number("loop")
+    if volume is not None and loop is not None and volume > loop * (1 + 1e-9):
+        draft.fault(
+            "loop",
+            "a loop that holds at least what is injected",
+            "inject no more than the loop, or correct the loop",
+            f"{write(volume, 'uL', VOLUME)} injected from a loop of {write(loop, 'uL', VOLUME)}",
+        )
+    _odd_volume(draft, volume, 1e-6)
+
+
+def _tube(draft: Draft) -> None:
+    bore, length = draft.number("bore"), draft.number("length")
+    if bore is None:
+        return
+    shown = f"bore {write(bore, 'mm', LENGTH)} ({write(bore, 'in', LENGTH)})"
+    outside = next(
+        (name for name, d in _OUTSIDE_DIAMETERS.items() if math.isclose(bore, d, rel_tol=0.012)), ""
+    )
+    millimetres = bore * 1e3
+    if outside:
+        draft.warn(f"{shown} is the outside diameter of {outside} tubing: is the bore meant?")
+    elif bore > WIDEST_USUAL_BORE:
+        draft.warn(f"{shown} is wide for a connecting tube: o.d. for bore, or another unit?")
+    elif any(math.isclose(millimetres, number, rel_tol=1e-6) for number in _REEL_NUMBERS):
+        draft.warn(f"{shown}: reels show this number in inches; did you mean {millimetres:g} in?")
+    else:
+        stock = [row.bore for row in tubing()]
+        if not any(math.isclose(bore, known, rel_tol=0.06) for known in stock):
+            for known in stock:
+                if math.isclose(2 * bore, known, rel_tol=0.06):
+                    draft.warn(f"{shown} is half of the stock bore {write(known, 'mm', LENGTH)}: "
+                               "is it a radius?")  # fmt: skip
+    if length is not None and length > 10:
+        draft.warn(f"length {write(length, 'm', LENGTH)} is long for a connecting tube")
+    if length is not None and 0 < length < 5 * bore:
+        draft.warn(f"length {write(length, 'mm', LENGTH)} is less than 5 bores: no tube formula holds")
+
+
+def _fitting(draft: Draft) -> None:
+    _odd_volume(draft, draft.number("volume"), 2e-7)
+
+
+def _column(draft: Draft) -> None:
+    bore, length = draft.number("bore"), draft.number("length")
+    if bore is None or length is None:
+        return
+    plates, particle = draft.number("plates"), draft.number("particle")
+    if plates is not None and particle is not None:
+        if plates_fault(draft, "plates", plates, length, particle):
+            return
+        if length / plates > 50 * particle:
+            reduced = length / plates / particle
+            draft.warn(f"{plates:g} plates are few: a reduced plate height of {significant(reduced)}")
+    elif plates is not None and plates / length > 6e5:
+        draft.warn(f"{plates:g} plates in {write(length, 'mm', LENGTH)}: are they per metre?")
+    if particle is not None and particle > 60e-6:
+        draft.warn(f"particle diameter {write(particle, 'um', LENGTH)} is unusual: um or nm?")
+    for radius, known in _COLUMN_RADII.items():
+        if math.isclose(bore, radius, rel_tol=0.01):
+            draft.warn(f"bore {write(bore, 'mm', LENGTH)} is half of {write(known, 'mm', LENGTH)}: "
+                       "is it a radius?")  # fmt: skip
+    _porosities(draft, bore, length)
+
+
+def _porosities(draft: Draft, bore: float, length: float) -> None:
+    total, void = draft.number("total_porosity"), draft.number("void_volume")
+    if void is not None:
+        empty = math.pi / 4 * bore**2 * length
+        total = void / empty
+        if not 0.2 <= total < 1:
+            draft.fault(
+                "void_volume",
+                f"0.2 to 1 times the empty column, {write(empty, 'uL', VOLUME)}",
+                f"near {write(0.65 * empty, 'uL', VOLUME)}, the usual 0.65 of it",
+            )
+            return
+    if total is not None and total < 0.48:
+        draft.warn(
+            f"total porosity {total:.2g} is low: is the interstitial one (0.36 to 0.42) meant? "
+            "The total one is 0.5 (core-shell) to 0.85 (size exclusion)"
+        )
+    if total is not None and total > 0.9:
+        draft.warn(f"total porosity {total:.2g} is high: 0.5 to 0.85 is usual")
+    bed = draft.number("interstitial_porosity")
+    if bed is not None and not 0.33 <= bed <= 0.45:
+        draft.warn(f"interstitial porosity {bed:g} is unusual: 0.36 to 0.42 is usual")
+
+
+def _block(draft: Draft) -> None:
+    variance = draft.number("variance")
+    if variance is not None and variance > 1e-14:
+        draft.warn("a variance above 10000 µL² is unusual: is the unit meant?")
+
+
+def _detector(draft: Draft) -> None:
+    cell, path = draft.number("cell"), draft.number("path_length")
+    if cell and path:
+        bore = math.sqrt(4 * cell / (math.pi * path))
+        shown = f"{write(cell, 'uL', VOLUME)} over {write(path, 'mm', LENGTH)} is a bore of "
+        shown += write(bore, "mm", LENGTH)
+        if not 0.01e-3 <= bore <= 20e-3:
+            draft.fault(
+                "path_length",
+                "a cell bore of 0.01 to 20 mm from cell and path_length",
+                "check the units: uL and mm are usual",
+                shown,
+            )
+        elif not 0.1e-3 <= bore <= 3e-3:
+            draft.warn(f"{shown}, which is unusual: is the cell volume or the path length off?")
+    _odd_volume(draft, cell, 1e-7)
+    if draft.number("time_constant") is None and draft.number("rise_time") is None:
+        draft.warn("no filter setting (time_constant or rise_time): its filter is not counted")
+    for key in ("time_constant", "rise_time"):
+        seconds = draft.number(key)
+        if seconds is not None and seconds > 10:
+            draft.warn(f"{key} of {seconds:g} s is unusual: s or ms?")
+
+
+def _odd_volume(draft: Draft, volume: float | None, most: float) -> None:
+    if volume is not None and volume > most:
+        draft.warn(f"a volume of {write(volume, 'uL', VOLUME)} is unusual here: uL or mL?")
+
+
+_CHECKS: dict[str, Callable[[Draft], None]] = {
+    "inject": _inject,
+    "tube": _tube,
+    "fitting": _fitting,
+    "column": _column,
+    "block": _block,
+    "detector": _detector,
+}
+
+
+def _flow_and_columns(instrument: Instrument, flow_place: Place, findings: Findings) -> None:
+    for part in instrument.parts:
+        for bed in part.elements:
+            if not isinstance(bed, Bed):
+                continue
+            velocity = bed.length * instrument.flow / bed.void_volume
+            shown = f"{significant(velocity * 1e3)} mm/s"
+            size = f"{bed.bore * 1e3:g} mm column"
+            if not SLOWEST <= velocity <= FASTEST:
+                factor = 1e-3 if velocity > FASTEST else 1e3
+                unit = "uL/min" if velocity > FASTEST else "mL/min"
+                other = write(instrument.flow * factor, unit, FLOW)
+                findings.fault(
+                    flow_place,
+                    f"{write(instrument.flow, 'mL/min', FLOW)}, which is {shown} in the {size}",
+                    "a flow that gives 0.01 to 30 mm/s in the column",
+                    f'flow = "{other}"',
+                )
+            elif not SLOW <= velocity <= FAST:
+                findings.warn(
+                    f"flow {write(instrument.flow, 'mL/min', FLOW)} is {shown} in the {size}, which "
+                    "is unusual: mL/min or uL/min?"
+                )
+
+
+def _injection_and_columns(instrument: Instrument, findings: Findings) -> None:
+    injected = instrument.parts[instrument.injection - 1].elements[0].volume
+    void = sum(e.void_volume for part in instrument.parts for e in part.elements if isinstance(e, Bed))
+    if void and injected > void:
+        findings.warn(
+            f"{write(injected, 'uL', VOLUME)} injected is more than the column's void volume, "
+            f"{write(void, 'uL', VOLUME)}: uL or mL?"
+        )
+
+
+def _order(instrument: Instrument, findings: Findings) -> None:
+    first, last = instrument.injection, instrument.detectors[-1].position
+    for part in instrument.parts:
+        if part.position < first:
+            findings.warn(f"{part.label} stands before the injection: the band never meets it")
+        elif part.position > last:
+            findings.warn(
+                f"{part.label} stands behind the last detector: it broadens nothing that is recorded; "
+                "its pressure drop loads what is upstream"
+            )
+        if part.kind == "outlet" and part.position < len(instrument.parts):
+            findings.warn(f"{part.label} is not the end of the path: other parts follow it")
+
+
+def _reynolds(instrument: Instrument, label: str, element: Bore, findings: Findings) -> None:
+    viscosity = instrument.viscosity
+    if viscosity is None:
+        return
+    number = float(reynolds_number(instrument.flow, element.bore, viscosity, instrument.density))
+    if number > LAMINAR_LIMIT:
+        findings.warn(
+            f"{label}: Reynolds number {number:.0f} is above {LAMINAR_LIMIT:.0f}: the flow is not "
+            "laminar, and neither its variance nor its pressure drop can be trusted"
+        )

@@ -1,0 +1,84 @@
+"""The text of a path file, or a clear word on why there is none."""
+
+from __future__ import annotations
+
+import sys
+from pathlib import Path
+
+from xcol.errors import Fault, InputError, Place
+
+MOST_BYTES = 1_000_000  # a path file has a few thousand
+
+_UTF16 = (b"\xff\xfe", b"\xfe\xff")
+
+
+def read_text(name: str) -> str:
+    """Return the text of a file ("-": standard input), line ends as \\n, without a byte order mark.
+
+    Raises ``InputError`` for what cannot be a path file: missing, a directory, unreadable, empty,
+    larger than 1 MB, binary, or not UTF-8.
+    """
+    place = Place(file="standard input" if name == "-" else name)
+    data = _bytes(name, place)
+    if len(data) > MOST_BYTES:
+        raise _refusal(place, "more than 1 MB", "a path file of a few kB", "the name of a path file")
+    if data.startswith(_UTF16):
+        raise _refusal(
+            place, "text in UTF-16", "text in UTF-8", "save it again, with the encoding UTF-8"
+        )
+    if b"\x00" in data:
+        raise _refusal(place, "a binary file", "a path file: text in TOML", "xcol budget FILE.toml")
+    try:
+        text = data.decode("utf-8-sig")
+    except UnicodeDecodeError as error:
+        line = data.count(b"\n", 0, error.start) + 1
+        raise _refusal(
+            Place(place.file, line),
+            f"the byte {data[error.start]:#04x}, which is not UTF-8",
+            "text in UTF-8",
+            "save it again, with the encoding UTF-8 (a µ or ° is the usual cause)",
+        ) from None
+    if not text.strip():
+        raise _refusal(
+            place, "an empty file", "a flow, a path and peaks", 'begin with flow = "1.0 mL/min"'
+        )
+    return text.replace("\r\n", "\n").replace("\r", "\n")
+
+
+def _bytes(name: str, place: Place) -> bytes:
+    if name == "-":
+        return sys.stdin.buffer.read(MOST_BYTES + 1)
+    path = Path(name)
+    try:
+        if path.is_dir():
+            raise _refusal(
+                place, "a directory", "a path file", _files_in(path) or "the name of a path file"
+            )
+        with path.open("rb") as stream:
+            return stream.read(MOST_BYTES + 1)
+    except FileNotFoundError:
+        near = _near(path)
+        raise _refusal(place, "no such file", "a path file", near or "check the name") from None
+    except (OSError, ValueError) as error:
+        words = error.strerror if isinstance(error, OSError) and error.strerror else str(error)
+        raise _refusal(place, words.lower(), "a file that can be read", "check name and rights") from None
+
+
+def _files_in(folder: Path) -> str:
+    found = sorted(path.name for path in folder.glob("*.toml"))[:3]
+    return "one of its files: " + ", ".join(found) if found else ""
+
+
+def _near(path: Path) -> str:
+    from xcol.flowpath.keys import nearest  # noqa: PLC0415  (only on the way to an error)
+
+    try:
+        names = tuple(entry.name for entry in path.parent.iterdir())
+    except OSError:
+        return ""
+    near = nearest(path.name, names)
+    return str(path.with_name(near)) if near else ""
+
+
+def _refusal(place: Place, read: str, expected: str, suggestion: str) -> InputError:
+    return InputError((Fault(place, read, expected, suggestion),))

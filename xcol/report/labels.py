@@ -1,0 +1,103 @@
+"""How parts, contributions and values are called in reports; units as people read them."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING
+
+from xcol.units import (
+    DENSITY,
+    DIFFUSION,
+    FLOW,
+    FREQUENCY,
+    LENGTH,
+    PRESSURE,
+    RATIO,
+    TEMPERATURE,
+    TIME,
+    VARIANCE,
+    VISCOSITY,
+    VOLUME,
+    Quantity,
+    convert,
+    significant,
+)
+
+if TYPE_CHECKING:
+    from xcol.flowpath.model import Part, Reading
+
+# For each quantity the units to show it in, each with the SI value from which it is used.
+_UNITS: dict[str, tuple[tuple[float, str], ...]] = {
+    LENGTH.name: ((1.0, "m"), (1e-4, "mm"), (0.0, "um")),
+    VOLUME.name: ((1e-6, "mL"), (1e-10, "uL"), (0.0, "nL")),
+    FLOW.name: ((1e-7 / 60, "mL/min"), (1e-9 / 60, "uL/min"), (0.0, "nL/min")),
+    TIME.name: ((120.0, "min"), (1e-2, "s"), (0.0, "ms")),
+    FREQUENCY.name: ((0.0, "Hz"),),
+    PRESSURE.name: ((0.0, "bar"),),
+    TEMPERATURE.name: ((0.0, "degC"),),
+    VISCOSITY.name: ((0.0, "mPa s"),),
+    DIFFUSION.name: ((0.0, "m^2/s"),),
+    DENSITY.name: ((0.0, "kg/m^3"),),
+    VARIANCE.name: ((0.0, "uL^2"),),
+}
+# The keys that say how large a contribution is, for its line in the table.
+_SIZES = {
+    "injection": ("volume",),
+    "cell": ("cell",),
+    "filter": ("time_constant", "rise_time"),
+    "rate": ("rate", "cycle"),
+    "fitting": ("volume", "gap", "length"),
+    "mixer": ("volume",),
+}
+
+
+def pretty(unit: str) -> str:
+    """Return a unit as it is printed.
+
+    >>> pretty("uL^2"), pretty("degC")
+    ('µL²', '°C')
+    """
+    for plain, printed in (("uL", "µL"), ("um", "µm"), ("^2", "²"), ("^3", "³"), ("degC", "°C")):
+        unit = unit.replace(plain, printed)
+    return unit
+
+
+def show(value: float, quantity: Quantity | None, digits: int = 3) -> str:
+    """Return an SI value with a unit that suits its size.
+
+    >>> show(20e-9, VOLUME), show(0.254e-3, LENGTH)
+    ('20 µL', '0.254 mm')
+    """
+    if quantity is None or quantity is RATIO:
+        return significant(value, max(digits, 6))
+    unit = next(unit for least, unit in _UNITS[quantity.name] if abs(value) >= least)
+    return f"{significant(convert(value, unit, quantity), digits)} {pretty(unit)}"
+
+
+def show_reading(reading: Reading) -> str:
+    """Return what was read, with its unit."""
+    if isinstance(reading.value, float):
+        return show(reading.value, reading.quantity, 4)
+    return str(reading.value)
+
+
+def name_of(part: Part) -> str:
+    """Return the part's name, or what it is: 'tube 400 mm x 0.254 mm'."""
+    if part.name:
+        return part.name
+    values = {reading.key: reading for reading in part.readings}
+    if "bore" in values and "length" in values:
+        pair = ("bore", "length") if part.kind == "column" else ("length", "bore")
+        return f"{part.kind} " + " x ".join(show_reading(values[key]) for key in pair)
+    return part.kind
+
+
+def contribution_label(part: Part, contribution: str) -> str:
+    """Return the line's label: 'injected 20 µL', 'UV filter 0.5 s', 'valve to column'."""
+    values = {reading.key: reading for reading in part.readings}
+    size = next((show_reading(values[k]) for k in _SIZES.get(contribution, ()) if k in values), "")
+    if contribution == "injection":
+        return f"injected {size}" + (f", {part.name}" if part.name else "")
+    name = name_of(part)
+    if part.kind == "detector":
+        return f"{name} {contribution} {size}".strip()
+    return f"{name} {size}".strip()
