@@ -266,8 +266,10 @@ def write(value: float, unit: str, quantity: Quantity, digits: int = 3) -> str:
     return f"{significant(convert(value, unit, quantity), digits)} {unit}".rstrip()
 
 
-def significant(value: float, digits: int = 3) -> str:
+def significant(value: float, digits: int = 3, *, zeros: bool = False) -> str:
     """Return a number with this many significant digits, without exponent from 1e-4 to 1e6.
+
+    ``zeros`` keeps those at the end, as a computed figure wants them and an entered one does not.
 
     >>> significant(8331.2), significant(0.00925926), significant(0.5)
     ('8330', '0.00926', '0.5')
@@ -277,11 +279,12 @@ def significant(value: float, digits: int = 3) -> str:
     rounded = float(f"{value:.{digits - 1}e}")
     if not 1e-4 <= abs(rounded) < 1e6:
         mantissa, exponent = f"{rounded:.{digits - 1}e}".split("e")
-        mantissa = mantissa.rstrip("0").rstrip(".") if "." in mantissa else mantissa
+        if "." in mantissa and not zeros:
+            mantissa = mantissa.rstrip("0").rstrip(".")
         return f"{mantissa}e{int(exponent)}"
     decimals = max(digits - 1 - math.floor(math.log10(abs(rounded))), 0)
     text = f"{rounded:.{decimals}f}"
-    return text.rstrip("0").rstrip(".") if "." in text else text
+    return text.rstrip("0").rstrip(".") if "." in text and not zeros else text
 
 
 def _factor(unit: str, quantity: Quantity, text: str) -> tuple[float, float]:

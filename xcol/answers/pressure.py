@@ -6,7 +6,7 @@ from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
 from xcol.flowpath.elements import Bed, Bore
-from xcol.flowpath.hydraulics import Drop, exactly
+from xcol.flowpath.hydraulics import Drop, exactly, reynolds_number
 from xcol.units import PRESSURE, significant, write
 
 if TYPE_CHECKING:
@@ -23,6 +23,7 @@ class PressureRow:
     flow: float
     drop: Drop | None
     inlet: Drop | None
+    reynolds: float | None = None  # of a tube, the narrowest of the part
 
 
 @dataclass(frozen=True)
@@ -48,7 +49,7 @@ def pressures(instrument: Instrument) -> Pressures:
     rows: list[PressureRow] = []
     for part, drop in zip(reversed(instrument.parts), reversed(drops), strict=True):
         inlet = None if drop is None or inlet is None else drop + inlet
-        rows.append(PressureRow(part, instrument.flow, drop, inlet))
+        rows.append(PressureRow(part, instrument.flow, drop, inlet, _reynolds(part, instrument)))
     rows.reverse()
     for row in rows:
         warnings += _limits(row)
@@ -66,6 +67,15 @@ def _drop(part: Part, instrument: Instrument) -> Drop | None:
             drop = None if viscosity is None else element.drop(instrument.flow, viscosity)
             total = None if drop is None or total is None else total + drop
     return total
+
+
+def _reynolds(part: Part, instrument: Instrument) -> float | None:
+    bores = [element.bore for element in part.elements if isinstance(element, Bore)]
+    if not bores or instrument.viscosity is None:
+        return None
+    return float(
+        reynolds_number(instrument.flow, min(bores), instrument.viscosity, instrument.density)
+    )
 
 
 def _with_pump_pressure(

@@ -11,7 +11,7 @@ from xcol.flowpath.file_keys import FILE_KEYS
 from xcol.flowpath.findings import Draft, Findings
 from xcol.flowpath.keys import described
 from xcol.flowpath.locate import Path, key_lines
-from xcol.flowpath.model import Instrument, Part
+from xcol.flowpath.model import Assumption, Instrument, Part
 from xcol.flowpath.part_reader import read_keys, read_part, refuse_unknown
 from xcol.flowpath.peak_reader import check_positions, peaks_of, read_peaks
 from xcol.flowpath.source import read_text
@@ -74,7 +74,6 @@ def _instrument(
         place=Place(top.file),
     )
     slips.of_path(instrument, Place(top.file, top.lines.get("flow"), "", "flow"), findings)
-    _assume_best_and_worst(instrument, findings)
     peaks = peaks_of(drafts, instrument, top.number("diffusion"), findings)
     if "diffusion" in top.values or any("diffusion" in draft.values for draft in drafts):
         findings.assume("D as entered", "diffusion coefficients are taken as entered")
@@ -82,22 +81,23 @@ def _instrument(
     return replace(
         instrument,
         peaks=peaks,
-        assumed=tuple(findings.assumed),
+        assumed=(*_ends_of_ranges(instrument), *findings.assumed),
         warnings=tuple(findings.warnings),
     )
 
 
-def _assume_best_and_worst(instrument: Instrument, findings: Findings) -> None:
-    """Say which end of their range injection and tubes are computed at."""
-    findings.assume(
-        "injection a plug", "the injection is a plug, the best case: a real loop can be 5 times worse"
-    )
-    if any(part.kind == "tube" for part in instrument.parts):
-        findings.assume(
-            "tubes straight",
-            "tubes are straight, the worst case: bends mix the stream, and can lower a tube's "
-            "variance up to 4 times",
+def _ends_of_ranges(instrument: Instrument) -> list[Assumption]:
+    """Return at which end of their range injection and tubes are computed."""
+    ends = [
+        Assumption(
+            "injection a plug",
+            "the injection is a plug, the best case: a real loop can be 5 times worse",
         )
+    ]
+    if any(part.kind == "tube" for part in instrument.parts):
+        text = "tubes are straight, the worst case: bends mix the stream, and can lower a tube's "
+        ends.insert(0, Assumption("tubes straight", f"{text}variance up to 4 times"))
+    return ends
 
 
 def _read_path(

@@ -81,13 +81,16 @@ def show_reading(reading: Reading) -> str:
 
 
 def name_of(part: Part) -> str:
-    """Return the part's name, or what it is: 'tube 400 mm x 0.254 mm'."""
+    """Return the part's name, or what it is: 'tube 400 x 0.254 mm'."""
     if part.name:
         return part.name
     values = {reading.key: reading for reading in part.readings}
     if "bore" in values and "length" in values:
         pair = ("bore", "length") if part.kind == "column" else ("length", "bore")
-        return f"{part.kind} " + " x ".join(show_reading(values[key]) for key in pair)
+        first, second = (show_reading(values[key]) for key in pair)
+        if first.split()[1:] == second.split()[1:]:  # the trade writes a common unit once
+            first = first.split()[0]
+        return f"{part.kind} {first} x {second}"
     return part.kind
 
 

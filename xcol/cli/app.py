@@ -1,0 +1,70 @@
+"""The application: its commands, and what happens to errors."""
+
+from __future__ import annotations
+
+import os
+import sys
+from typing import Annotated
+
+import typer
+
+from xcol import __version__
+from xcol.cli import budget, check, explain
+from xcol.cli.output import can_show_symbols
+from xcol.errors import InputError
+
+app = typer.Typer(
+    name="xcol",
+    help="Extra-column band broadening of a liquid chromatograph, part by part.",
+    epilog="Every command shows a worked example with --help.",
+    no_args_is_help=True,
+    rich_markup_mode=None,
+    pretty_exceptions_enable=False,
+    context_settings={"help_option_names": ["-h", "--help"]},
+)
+app.command("budget", epilog=budget.EXAMPLE)(budget.budget)
+app.command("check", epilog=check.EXAMPLE)(check.check)
+app.command("explain", epilog=explain.EXAMPLE)(explain.explain)
+
+
+def _show_version(wanted: bool) -> None:
+    if wanted:
+        typer.echo(f"xcol {__version__}")
+        raise typer.Exit
+
+
+@app.callback()
+def options(
+    version: Annotated[
+        bool,
+        typer.Option("--version", callback=_show_version, is_eager=True, help="Show the version."),
+    ] = False,
+) -> None:
+    """Extra-column band broadening of a liquid chromatograph, part by part."""
+
+
+def main() -> None:
+    """Run the command line; exit 0 fine, 1 a requirement is not met, 2 bad input or usage."""
+    try:
+        app()
+    except InputError as error:
+        _complain(error)
+        sys.exit(2)
+    except BrokenPipeError:
+        # the reader of our output has gone; keep the interpreter from complaining at its exit
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+        sys.exit(0)
+    except KeyboardInterrupt:
+        sys.exit(130)
+
+
+def _complain(error: InputError) -> None:
+    text = str(error)
+    count = len(error.faults)
+    if count > 1:
+        text += f"\n\n{count} faults; nothing was computed."
+    if not can_show_symbols(sys.stderr):
+        from xcol.report.sheet import to_ascii
+
+        text = to_ascii(text)
+    print(text, file=sys.stderr)

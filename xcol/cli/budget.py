@@ -1,0 +1,109 @@
+"""``xcol budget``."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING, Annotated
+
+import typer
+
+from xcol.cli.output import (
+    FileArgument,
+    ForceOption,
+    Format,
+    FormatOption,
+    OutputOption,
+    as_json,
+    emit,
+    new_sheet,
+)
+from xcol.errors import Fault, InputError, Place
+
+if TYPE_CHECKING:
+    from xcol.answers.budget import Budget, DetectorBudget, PeakBudget
+
+EXAMPLE = """
+Example, a path file of a few lines and the first screen of its budget:
+
+\b
+  xcol budget brewery-narrow.toml
+  xcol budget brewery-narrow.toml --peak early --full
+  xcol budget brewery-narrow.toml --format json --output budget.json
+"""
+
+
+def budget(
+    file: FileArgument,
+    peak: Annotated[
+        str | None, typer.Option("--peak", help="Peak of the first screen, by name or k.")
+    ] = None,
+    detector: Annotated[
+        str | None, typer.Option("--detector", help="Detector of the first screen, by name.")
+    ] = None,
+    full: Annotated[bool, typer.Option("--full", help="Everything, not the first screen.")] = False,
+    form: FormatOption = Format.TEXT,
+    output: OutputOption = None,
+    force: ForceOption = False,
+) -> None:
+    """Show what each part of the path adds to the width of the peaks, and what it costs in plates."""
+    from xcol.answers.budget import budget as answer_of
+    from xcol.flowpath.reader import read
+
+    answer = answer_of(read(file))
+    at = _chosen_detector(answer, detector, file)
+    chosen = _chosen_peak(at, peak, file)
+    emit(_render(answer, at, chosen, full, form, output), output, force, file)
+
+
+def _render(
+    answer: Budget,
+    at: DetectorBudget,
+    chosen: PeakBudget,
+    full: bool,
+    form: Format,
+    output: str | None,
+) -> str:
+    if form is Format.JSON:
+        from xcol.report.budget_record import budget_record
+
+        return as_json(budget_record(answer), output)
+    if form is Format.CSV:
+        from xcol.report.budget_record import budget_csv
+
+        return budget_csv(answer)
+    from xcol.report.budget_text import budget_markdown, first_screen, full_report
+
+    if form is Format.MARKDOWN:
+        return budget_markdown(answer, at, chosen)
+    sheet = new_sheet(output)
+    (full_report if full else first_screen)(answer, at, chosen, sheet)
+    return sheet.text()
+
+
+def _chosen_detector(answer: Budget, name: str | None, file: str) -> DetectorBudget:
+    """Return the detector of that name; the last one, which the whole path leads to, by default."""
+    if name is None:
+        return answer.detectors[-1]
+    found = [d for d in answer.detectors if d.detector.name.lower() == name.strip().lower()]
+    if not found:
+        known = ", ".join(f'"{d.detector.name}"' for d in answer.detectors)
+        raise _unknown(file, "--detector", name, f"one of {known}")
+    return found[0]
+
+
+def _chosen_peak(at: DetectorBudget, name: str | None, file: str) -> PeakBudget:
+    """Return the peak of that name or k; the middle one in order of k by default."""
+    if name is None:
+        ordered = sorted(at.peaks, key=lambda peak: peak.peak.k or 0.0)
+        return ordered[(len(ordered) - 1) // 2]
+    word = name.strip().lower()
+    for peak in at.peaks:
+        k = f"{peak.peak.k:g}" if peak.peak.k is not None else ""
+        if word in (peak.peak.name.lower(), k, f"k={k}", f"k = {k}"):
+            return peak
+    known = ", ".join(f'"{peak.peak.name}"' for peak in at.peaks)
+    raise _unknown(file, "--peak", name, f"one of {known}")
+
+
+def _unknown(file: str, option: str, read: str, expected: str) -> InputError:
+    fault = Fault(Place(file, key=option), f'"{read}"', expected, f"{option} with one of these names")
+    return InputError((fault,))

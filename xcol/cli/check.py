@@ -1,0 +1,45 @@
+"""``xcol check``."""
+
+from __future__ import annotations
+
+from xcol.cli.output import (
+    FileArgument,
+    ForceOption,
+    Format,
+    FormatOption,
+    OutputOption,
+    as_json,
+    emit,
+    new_sheet,
+)
+
+EXAMPLE = """
+Example, what was understood of a path file, and everything that looks like a slip:
+
+\b
+  xcol check brewery-narrow.toml
+"""
+
+
+def check(
+    file: FileArgument,
+    form: FormatOption = Format.TEXT,
+    output: OutputOption = None,
+    force: ForceOption = False,
+) -> None:
+    """Show what was understood of a path file, in metric and inch, and what was assumed."""
+    from xcol.flowpath.reader import read
+    from xcol.report.check import check_csv, check_markdown, check_record, check_text
+
+    instrument = read(file)
+    if form is Format.JSON:
+        text = as_json(check_record(instrument), output)
+    elif form is Format.CSV:
+        text = check_csv(instrument)
+    elif form is Format.MARKDOWN:
+        text = check_markdown(instrument)
+    else:
+        sheet = new_sheet(output)
+        check_text(instrument, sheet)
+        text = sheet.text()
+    emit(text, output, force, file)

@@ -1,0 +1,115 @@
+"""Where results go: standard output or a file, whole or not at all; messages to standard error."""
+
+from __future__ import annotations
+
+import os
+import shutil
+import sys
+import tempfile
+from enum import StrEnum
+from pathlib import Path
+from typing import TYPE_CHECKING, Annotated, TextIO
+
+import typer
+
+from xcol.errors import Fault, InputError, Place
+
+if TYPE_CHECKING:
+    from xcol.report.sheet import Sheet
+
+
+class Format(StrEnum):
+    """The forms of a result."""
+
+    TEXT = "text"
+    JSON = "json"
+    CSV = "csv"
+    MARKDOWN = "markdown"
+
+
+FormatOption = Annotated[Format, typer.Option("--format", help="Form of the result.")]
+OutputOption = Annotated[
+    str | None, typer.Option("--output", help="Write to this file; never over an existing one.")
+]
+ForceOption = Annotated[bool, typer.Option("--force", help="Let --output replace a file.")]
+FileArgument = Annotated[str, typer.Argument(metavar="FILE", help='Path file; "-": standard input.')]
+
+_SYMBOLS = "µ²°½█σθ−–"  # what a text report may need
+
+
+def can_show_symbols(stream: TextIO) -> bool:
+    """Return whether the stream's encoding has the symbols of a report."""
+    try:
+        _SYMBOLS.encode(stream.encoding or "ascii")
+    except (UnicodeEncodeError, LookupError):
+        return False
+    return True
+
+
+def new_sheet(output: str | None) -> Sheet:
+    """Return the sheet for a text report: width, colour and symbols as the destination allows."""
+    from xcol.report.sheet import Sheet
+
+    if output is not None:
+        return Sheet()
+    terminal = sys.stdout.isatty()
+    width = min(max(shutil.get_terminal_size((80, 24)).columns, 80), 140) if terminal else 80
+    color = terminal and not os.environ.get("NO_COLOR") and os.environ.get("TERM") != "dumb"
+    return Sheet(width=width, ascii_only=not can_show_symbols(sys.stdout), color=color)
+
+
+def as_json(record: object, output: str | None) -> str:
+    """Return a record as JSON text, with escapes where the terminal has no symbols."""
+    import json
+
+    plain = output is None and not can_show_symbols(sys.stdout)
+    return json.dumps(record, indent=2, ensure_ascii=plain, allow_nan=False) + "\n"
+
+
+def emit(text: str, output: str | None, force: bool, source: str = "-") -> None:
+    """Write a result to standard output, or whole to a file.
+
+    Raises ``InputError`` where the file exists (without ``force``), is the path file itself, or
+    cannot be written.
+    """
+    if output is None:
+        encoding = sys.stdout.encoding or "ascii"
+        sys.stdout.write(text.encode(encoding, "replace").decode(encoding))
+        return
+    target = Path(output)
+    place = Place(file=output, key="--output")
+    if target.is_dir():
+        raise _refusal(place, "a directory", "the name of a file", f"{target / 'budget.txt'}")
+    if source != "-" and target.exists() and target.samefile(source):
+        raise _refusal(place, "the path file itself", "another file", "another name for the result")
+    if target.exists() and not force:
+        raise _refusal(place, "a file that exists", "a new file", "another name, or --force")
+    try:
+        _write_whole(target, text)
+    except OSError as error:
+        words = (error.strerror or str(error)).lower()
+        raise _refusal(place, words, "a file that can be written", "check folder and rights") from None
+
+
+def _write_whole(target: Path, text: str) -> None:
+    """Write beside the target and move into place, so that no half-written file is ever seen."""
+    mode = target.stat().st_mode & 0o777 if target.exists() else 0o666 & ~_umask()
+    handle, name = tempfile.mkstemp(dir=target.parent, prefix=f".{target.name}.")
+    try:
+        with os.fdopen(handle, "w", encoding="utf-8", newline="\n") as stream:
+            stream.write(text)
+        os.chmod(name, mode)  # noqa: PTH101  (the name came from mkstemp)
+        os.replace(name, target)  # noqa: PTH105
+    except BaseException:
+        Path(name).unlink(missing_ok=True)
+        raise
+
+
+def _umask() -> int:
+    current = os.umask(0)
+    os.umask(current)
+    return current
+
+
+def _refusal(place: Place, read: str, expected: str, suggestion: str) -> InputError:
+    return InputError((Fault(place, read, expected, suggestion),))

@@ -1,0 +1,129 @@
+"""A budget as the JSON object of the file format, and as CSV rows. Numbers are not rounded."""
+
+from __future__ import annotations
+
+import csv
+import io
+import math
+from typing import TYPE_CHECKING, Any
+
+from xcol import __version__
+
+if TYPE_CHECKING:
+    from xcol.answers.budget import Budget, DetectorBudget, PeakBudget, Row
+    from xcol.answers.pressure import PressureRow
+    from xcol.flowpath.hydraulics import Drop
+
+SCHEMA = "xcol.budget/1"
+_HALF = 2 * math.sqrt(2 * math.log(2))  # width at half height of a Gaussian, in σ
+
+
+def budget_record(answer: Budget) -> dict[str, Any]:
+    """Return the budget as one JSON object; units stand in the key names."""
+    instrument = answer.instrument
+    return {
+        "schema": SCHEMA,
+        "version": __version__,
+        "title": instrument.title,
+        "flow_mL_min": instrument.flow * 60e6,
+        "assumed": [assumption.text for assumption in instrument.assumed],
+        "warnings": list(answer.warnings),
+        "cautions": list(answer.cautions),
+        "pressure": [_pressure(row) for row in answer.pressure.rows],
+        "detectors": [_detector(found, instrument.flow) for found in answer.detectors],
+    }
+
+
+def budget_csv(answer: Budget) -> str:
+    """Return one line for each contribution to each peak at each detector, as CSV."""
+    lines = []
+    for detector in budget_record(answer)["detectors"]:
+        for peak in detector["peaks"]:
+            parts = peak.pop("parts")
+            ahead = {"detector": detector["name"], "peak": peak["name"], "k": peak["k"]}
+            ahead |= {key: peak[key] for key in ("plates_column", "plates_observed", "plates_kept")}
+            lines += [ahead | part for part in parts]
+    out = io.StringIO()
+    if lines:
+        writer = csv.DictWriter(out, fieldnames=list(lines[0]), lineterminator="\n")
+        writer.writeheader()
+        writer.writerows(lines)
+    return out.getvalue()
+
+
+def _pressure(row: PressureRow) -> dict[str, Any]:
+    limit = row.part.max_pressure
+    return {
+        "part": row.part.kind,
+        "name": row.part.name or row.part.kind,
+        "position": row.part.position,
+        "flow_mL_min": row.flow * 60e6,
+        "drop_bar": _bar(row.drop),
+        "inlet_bar": _bar(row.inlet),
+        "inlet_low_bar": row.inlet.low / 1e5 if row.inlet else None,
+        "inlet_high_bar": row.inlet.high / 1e5 if row.inlet else None,
+        "max_pressure_bar": limit / 1e5 if limit is not None else None,
+        "reynolds_number": row.reynolds,
+        "max_drop_bar": row.part.max_drop / 1e5 if row.part.max_drop is not None else None,
+    }
+
+
+def _bar(drop: Drop | None) -> float | None:
+    return drop.value / 1e5 if drop is not None else None
+
+
+def _detector(answer: DetectorBudget, flow: float) -> dict[str, Any]:
+    return {
+        "name": answer.detector.name or "detector",
+        "position": answer.detector.position,
+        "delay_s": answer.delay,
+        "peaks": [_peak(peak, answer.delay, flow) for peak in answer.peaks],
+    }
+
+
+def _peak(answer: PeakBudget, delay: float, flow: float) -> dict[str, Any]:
+    square = (flow * 1e9) ** 2  # s² to µL²
+    return {
+        "name": answer.peak.name,
+        "k": answer.peak.k,
+        "retention_s": answer.retention,
+        "diffusion_m2_s": answer.peak.diffusion,
+        "plates_column": answer.plates_column,
+        "plates_observed": answer.plates_observed,
+        "plates_kept": answer.plates_kept,
+        "interval_plates_kept": None,
+        "resolution_kept": answer.resolution_kept,
+        "variance_column_uL2": answer.variance_column * square,
+        "variance_extra_uL2": answer.variance_extra * square,
+        "variance_total_uL2": answer.variance_total * square,
+        "variance_total_s2": answer.variance_total,
+        "sigma_total_s": answer.sigma,
+        "width_half_s": _HALF * answer.sigma,
+        "width_base_s": 4 * answer.sigma,
+        "extra_volume_uL": delay * flow * 1e9,
+        "points_4sigma": answer.points,
+        "parts": [_row(row, square) for row in answer.rows],
+    }
+
+
+def _row(row: Row, square: float) -> dict[str, Any]:
+    longtube = row.longtube_variance
+    return {
+        "part": row.part.kind,
+        "name": row.part.name or row.part.kind,
+        "position": row.part.position,
+        "contribution": row.contribution,
+        "side": row.side,
+        "volume_uL": row.volume * 1e9,
+        "tstar": row.t_star,
+        "bend_De2Sc": None,
+        "compression": row.compression,
+        "variance_uL2": row.variance * square,
+        "variance_low_uL2": None,
+        "variance_high_uL2": None,
+        "variance_s2": row.variance,
+        "variance_longtube_uL2": longtube * square if longtube is not None else None,
+        "share_extra": row.share_extra,
+        "share_total": row.share_total,
+        "plates_kept_without": row.plates_kept_without,
+    }

@@ -1,0 +1,205 @@
+"""The tables of a budget as text, for the screen and for Markdown."""
+
+from __future__ import annotations
+
+import math
+from typing import TYPE_CHECKING
+
+from xcol.flowpath.elements import Bed
+from xcol.report.labels import contribution_label, name_of
+from xcol.report.sheet import Grid
+from xcol.units import significant
+
+if TYPE_CHECKING:
+    from xcol.answers.budget import Budget, DetectorBudget, PeakBudget, Row
+    from xcol.flowpath.hydraulics import Drop
+    from xcol.flowpath.model import Part
+
+HALF = 2 * math.sqrt(2 * math.log(2))
+MOST_ROWS = 7  # of parts on the first screen; with more, the small ones fold
+SMALL_SHARE = 0.02
+_BAR = 10  # characters of a full share bar
+
+
+def parts_grid(answer: Budget, at: DetectorBudget, peak: PeakBudget, *, fold: bool) -> Grid:
+    """Return the parts in flow order, the columns among them, for one peak at one detector."""
+    square = (answer.instrument.flow * 1e9) ** 2
+    inlets = {row.part.position: row.inlet for row in answer.pressure.rows}
+    folded = _folded(peak) if fold else []
+    most = max((row.share_extra for row in peak.rows), default=0.0)
+    lines: list[tuple[str, ...]] = []
+    shown: set[int] = set()
+    for part in answer.instrument.parts[: at.detector.position]:
+        if any(isinstance(element, Bed) for element in part.elements):
+            own = peak if not any(line[0].startswith("[") for line in lines) else None
+            lines.append(_column_line(part, own, inlets[part.position], square))
+        for row in peak.rows:
+            if row.part is part and row not in folded:
+                inlet = inlets[part.position] if part.position not in shown else None
+                shown.add(part.position)
+                lines.append(_part_line(row, peak, inlet, square, most))
+    if folded:
+        total = sum(row.variance for row in folded)
+        share = total / peak.variance_extra if peak.variance_extra else 0.0
+        lines.append(
+            (f"{len(folded)} others, each under 2 %", three(total * square), percent(share),
+             "", "", "")
+        )  # fmt: skip
+    headers = ("in flow order", "µL²", "of added", "", "N if gone", "inlet, bar")
+    return Grid(headers, tuple(lines), (False, True, True, False, True, True))
+
+
+def peaks_grid(peaks: tuple[PeakBudget, ...], flow: float) -> Grid:
+    """Return what is recorded of each peak."""
+    square = (flow * 1e9) ** 2
+    if all(peak.plates_column is None for peak in peaks):
+        headers = ("peak", "σ, µL", "σ², µL²", "σ, s", "width at half height, s", "4σ, s")
+        rows = tuple(
+            (
+                peak.peak.name,
+                three(math.sqrt(peak.variance_total * square)),
+                three(peak.variance_total * square),
+                three(peak.sigma),
+                three(HALF * peak.sigma),
+                three(4 * peak.sigma),
+            )
+            for peak in peaks
+        )
+        return Grid(headers, rows, (False, True, True, True, True, True))
+    headers = ("peak", "k", "t_R, min", "plates", "kept", "W½, s", "column's", "Rs kept")
+    rows = tuple(
+        (
+            peak.peak.name,
+            significant(peak.peak.k or 0.0),
+            three(peak.retention / 60),
+            f"{plates(peak.plates_observed)} of {plates(peak.plates_column)}",
+            percent(peak.plates_kept),
+            three(HALF * peak.sigma),
+            three(HALF * math.sqrt(peak.variance_column)),
+            percent(peak.resolution_kept),
+        )
+        for peak in peaks
+    )
+    return Grid(headers, rows, (False, *(True,) * 7))
+
+
+def detail_grid(answer: Budget, peak: PeakBudget, *, wide: bool) -> Grid:
+    """Return every contribution to one peak; ``wide`` with side, s² and share of all."""
+    square = (answer.instrument.flow * 1e9) ** 2
+    columns: list[tuple[str, bool, list[str]]] = [
+        ("part", False, [contribution_label(row.part, row.contribution) for row in peak.rows]),
+        ("held, µL", True, [_held(row) for row in peak.rows]),
+        ("t*", True, [_or_dash(row.t_star) for row in peak.rows]),
+        ("µL²", True, [three(row.variance * square) for row in peak.rows]),
+        ("long-tube", True, [_or_dash(row.longtube_variance, square) for row in peak.rows]),
+        ("of added", True, [percent(row.share_extra) for row in peak.rows]),
+        ("kept if gone", True, [percent(row.plates_kept_without) for row in peak.rows]),
+    ]
+    if wide:
+        columns[1:1] = [("side", False, [row.side for row in peak.rows])]
+        columns += [
+            ("s²", True, [three(row.variance) for row in peak.rows]),
+            ("of all", True, [percent(row.share_total) for row in peak.rows]),
+        ]
+    return Grid(
+        tuple(header for header, _, _ in columns),
+        tuple(zip(*(cells for _, _, cells in columns), strict=True)),
+        tuple(right for _, right, _ in columns),
+    )
+
+
+def pressure_grid(answer: Budget) -> Grid:
+    """Return flow, Reynolds number, drop, inlet pressure with its range, and limit of each part."""
+    headers = ("part", "mL/min", "Re", "drop, bar", "inlet, bar", "range", "limit, bar")
+    rows = tuple(
+        (
+            name_of(row.part),
+            significant(row.flow * 60e6),
+            _or_dash(row.reynolds),
+            bars(row.drop),
+            bars(row.inlet),
+            span(row.inlet),
+            significant(row.part.max_pressure / 1e5) if row.part.max_pressure else "not checked",
+        )
+        for row in answer.pressure.rows
+    )
+    return Grid(headers, rows, (False, *(True,) * 6))
+
+
+def three(value: float) -> str:
+    """Return a computed figure: three significant digits, zeros at the end kept."""
+    return significant(value, zeros=True)
+
+
+def percent(share: float | None) -> str:
+    """Return a share in per cent; "<1 %" where it would round to nothing."""
+    if share is None:
+        return "-"
+    if 0 < share < 0.005:
+        return "<1 %"
+    if 0.995 <= share < 1:
+        return f"{100 * share:.1f} %"
+    return f"{100 * share:.0f} %"
+
+
+def plates(number: float | None) -> str:
+    """Return a plate number with three significant digits."""
+    return three(number) if number is not None else "-"
+
+
+def bars(drop: Drop | None) -> str:
+    """Return a pressure in bar, '-' where it is not computed."""
+    return three(drop.value / 1e5) if drop is not None else "-"
+
+
+def span(drop: Drop | None) -> str:
+    """Return the range of a pressure in bar, '' where it has none."""
+    if drop is None or math.isclose(drop.low, drop.high, rel_tol=0.01):
+        return ""
+    return f"{three(drop.low / 1e5)}-{three(drop.high / 1e5)}"
+
+
+def _held(row: Row) -> str:
+    return significant(row.volume * 1e9) if row.side != "signal" else "-"
+
+
+def _or_dash(value: float | None, factor: float = 1.0) -> str:
+    return three(value * factor) if value is not None else "-"
+
+
+def _part_line(
+    row: Row, peak: PeakBudget, inlet: Drop | None, square: float, most: float
+) -> tuple[str, ...]:
+    gone = None
+    if peak.plates_column is not None and row.plates_kept_without is not None:
+        gone = peak.plates_column * row.plates_kept_without
+    bar = "█" * round(_BAR * row.share_extra / most) if most else ""
+    return (
+        contribution_label(row.part, row.contribution),
+        three(row.variance * square),
+        percent(row.share_extra),
+        bar,
+        plates(gone),
+        bars(inlet) if inlet is not None else "",
+    )
+
+
+def _column_line(
+    part: Part, peak: PeakBudget | None, inlet: Drop | None, square: float
+) -> tuple[str, ...]:
+    """Return a column's line; ``peak`` is given for the first one, which shows the band of all."""
+    bed = next(element for element in part.elements if isinstance(element, Bed))
+    size = f"{bed.bore * 1e3:.3g} x {bed.length * 1e3:.3g} mm"
+    label = f"[ {part.name or 'column'} {size} ]"
+    if peak is None:
+        return (label, "", "", "", "", bars(inlet))
+    own = three(peak.variance_column * square)
+    return (label, own, "own", "", plates(peak.plates_column), bars(inlet))
+
+
+def _folded(peak: PeakBudget) -> list[Row]:
+    """Return the rows that fold into one line: with more than seven, those under 2 %."""
+    if len(peak.rows) <= MOST_ROWS:
+        return []
+    small = [row for row in peak.rows if row.share_extra < SMALL_SHARE]
+    return small if len(small) > 1 else []

@@ -1,0 +1,248 @@
+"""A budget as text: the first screen, the full report, and Markdown."""
+
+from __future__ import annotations
+
+import math
+from typing import TYPE_CHECKING
+
+from xcol.report.budget_tables import (
+    bars,
+    detail_grid,
+    parts_grid,
+    peaks_grid,
+    percent,
+    plates,
+    pressure_grid,
+    span,
+    three,
+)
+from xcol.report.labels import name_of, show
+from xcol.report.sheet import Sheet, markdown
+from xcol.units import FLOW, PRESSURE, TEMPERATURE, VOLUME, significant
+
+if TYPE_CHECKING:
+    from xcol.answers.budget import Budget, DetectorBudget, PeakBudget
+
+SCREEN = 24  # lines of the first screen
+_ENDS = (
+    "No ranges yet: tubes count as straight (worst), injection and cells as plugs (best), so these "
+    "figures alone do not say which part to change first."
+)
+
+
+def first_screen(
+    answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: Sheet
+) -> None:
+    """Write the first screen: at most 24 lines of 80 columns for one peak at one detector."""
+    _heading(answer, sheet)
+    for line in verdict(answer, at, peak):
+        sheet.line(line, hang=2)
+    sheet.line()
+    sheet.grid(parts_grid(answer, at, peak, fold=True), indent=2)
+    sheet.line()
+    foot = Sheet(sheet.width, sheet.ascii_only, sheet.color)
+    _footer(answer, foot)
+    room = SCREEN - sheet.count() - foot.count() - 1
+    shown = _peaks_that_fit(at.peaks, peak, room - min(len(answer.warnings), 2))
+    sheet.grid(peaks_grid(shown, answer.instrument.flow), indent=2)
+    _warnings_that_fit(answer, sheet, SCREEN - sheet.count() - foot.count())
+    _footer(answer, sheet)
+
+
+def _footer(answer: Budget, sheet: Sheet) -> None:
+    sheet.line(_pressure_line(answer), hang=2)
+    short = list(dict.fromkeys(assumption.short for assumption in answer.instrument.assumed))
+    sheet.line(_fitting_list("Assumed: ", short, sheet.width))
+    sheet.line("Before opening a line: pump off, pressure at zero, eye protection, site rules.", "dim")
+
+
+def full_report(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: Sheet) -> None:
+    """Write everything: all detectors and peaks, pressure, warnings, assumptions, cautions."""
+    _heading(answer, sheet)
+    for line in verdict(answer, at, peak):
+        sheet.line(line, hang=2)
+    sheet.line(_ENDS, hang=2)
+    for found in answer.detectors:
+        sheet.line()
+        volume = found.delay * answer.instrument.flow
+        sheet.line(
+            f"Detector {name_of(found.detector)}: {three(found.delay)} s from the valve's turn to "
+            f"the record outside the column ({show(volume, VOLUME)} at the column's flow)",
+            "bold",
+        )
+        sheet.grid(peaks_grid(found.peaks, answer.instrument.flow), indent=2)
+        for one in found.peaks:
+            sheet.line()
+            sheet.line(_peak_line(one, answer), indent=2)
+            sheet.grid(detail_grid(answer, one, wide=sheet.width >= 110), indent=2)
+    sheet.line()
+    sheet.line("Pressure", "bold")
+    sheet.grid(pressure_grid(answer), indent=2)
+    sheet.line(_pressure_line(answer), hang=2)
+    for title, lines in _lists(answer):
+        sheet.line()
+        sheet.line(title, "bold")
+        for line in lines:
+            sheet.line(f"- {line}", hang=2, indent=2)
+    sheet.line()
+    sheet.line(
+        "µL² is s² times the square of the column's flow. More: xcol explain TOPIC (tube, fitting, "
+        "detector, column, pressure, ...)",
+        "dim",
+        hang=2,
+    )
+
+
+def budget_markdown(answer: Budget, at: DetectorBudget, peak: PeakBudget) -> str:
+    """Return the report in Markdown."""
+    pieces = [f"# {answer.instrument.title or 'Budget'}\n", _conditions(answer) + "\n"]
+    pieces += [line + "\n" for line in (*verdict(answer, at, peak), _ENDS)]
+    for found in answer.detectors:
+        pieces.append(f"## Detector {name_of(found.detector)}\n")
+        pieces.append(markdown(peaks_grid(found.peaks, answer.instrument.flow)))
+        for one in found.peaks:
+            pieces.append(f"### {_peak_line(one, answer)}\n")
+            pieces.append(markdown(detail_grid(answer, one, wide=True)))
+    pieces += ["## Pressure\n", markdown(pressure_grid(answer)), _pressure_line(answer) + "\n"]
+    for title, lines in _lists(answer):
+        pieces.append(f"## {title}\n")
+        pieces.append("\n".join(f"- {line}" for line in lines) + "\n")
+    return "\n".join(pieces)
+
+
+def verdict(answer: Budget, at: DetectorBudget, peak: PeakBudget) -> list[str]:
+    """Return the answer in a sentence or two: plates recorded of the column's, at what."""
+    square = (answer.instrument.flow * 1e9) ** 2
+    extra = peak.variance_extra * square
+    if peak.plates_column is None:
+        sigma = math.sqrt(extra)
+        return [
+            f"Without a column, the {name_of(at.detector)} records a band of σ = {three(sigma)} µL "
+            f"({three(extra)} µL²) or {three(peak.sigma)} s."
+        ]
+    lines = [
+        f"{_which(peak)}: the {name_of(at.detector)} records {plates(peak.plates_observed)} of the "
+        f"column's {plates(peak.plates_column)} plates, {percent(peak.plates_kept)}. The path adds "
+        f"{three(extra)} µL² to the column's own {three(peak.variance_column * square)}."
+    ]
+    others = [
+        f"{name_of(found.detector)} {plates(same.plates_observed)} ({percent(same.plates_kept)})"
+        for found in answer.detectors
+        if found is not at
+        for same in found.peaks
+        if same.peak is peak.peak
+    ]
+    if others:
+        lines.append(f"Other detectors, same peak: {', '.join(others)}.")
+    return lines
+
+
+def _which(peak: PeakBudget) -> str:
+    k = f"k = {significant(peak.peak.k or 0.0)}"
+    return f"At {k}" if peak.peak.name == k else f'"{peak.peak.name}", {k}'
+
+
+def _conditions(answer: Budget) -> str:
+    instrument = answer.instrument
+    pieces = [show(instrument.flow, FLOW)]
+    if instrument.temperature is not None:
+        pieces.append(show(instrument.temperature, TEMPERATURE))
+    return ", ".join(["isocratic", *pieces])
+
+
+def _heading(answer: Budget, sheet: Sheet) -> None:
+    conditions = sheet.spelled(_conditions(answer))
+    title = sheet.spelled(answer.instrument.title or "Budget")
+    room = sheet.width - len(conditions) - 2
+    if len(title) > room:
+        title = f"{title[: room - 3]}..."
+    sheet.line(f"{title.ljust(room)}  {conditions}", "bold")
+
+
+def _peak_line(peak: PeakBudget, answer: Budget) -> str:
+    square = (answer.instrument.flow * 1e9) ** 2
+    points = f", {significant(peak.points)} data points across 4σ" if peak.points is not None else ""
+    from_retention = ""
+    if peak.peak.retention is not None:
+        from_retention = (
+            f", from {significant(peak.peak.retention, 4)} s recorded less the transit outside the column"
+        )
+    k = f", k = {significant(peak.peak.k, 4)}{from_retention}" if peak.peak.k is not None else ""
+    return (
+        f'Peak "{peak.peak.name}"{k}, D = {significant(peak.peak.diffusion)} m²/s: '
+        f"{three(peak.variance_extra * square)} µL² added, "
+        f"{three(peak.variance_total * square)} µL² in all{points}"
+    )
+
+
+def _pressure_line(answer: Budget) -> str:
+    total = answer.pressure.total
+    if total is None:
+        text = "Pressure: not computed (viscosity or a drop is missing)."
+    else:
+        ends = f" ({span(total)} over the bed porosity)" if span(total) else ""
+        text = f"Pressure {bars(total)} bar{ends}."
+    limited = [row for row in answer.pressure.rows if row.part.max_pressure is not None]
+    checked = ", ".join(
+        f"{name_of(row.part)} {bars(row.inlet)} of {show(row.part.max_pressure or 0.0, PRESSURE)}"
+        for row in limited
+    )
+    unchecked = [
+        name_of(row.part)
+        for row in answer.pressure.rows
+        if row.part.kind in ("column", "detector") and row.part.max_pressure is None
+    ]
+    if checked:
+        text += f" Inlet against limit: {checked}."
+    if unchecked:
+        text += f" Limits not checked (none entered): {', '.join(unchecked)}."
+    return text
+
+
+def _fitting_list(head: str, items: list[str], width: int) -> str:
+    """Return a list that fits one line, with the number of what did not fit."""
+    kept: list[str] = []
+    for index, item in enumerate(items):
+        left = len(items) - index - 1
+        tail = f", {left} more: --full" if left else ""
+        if len(head + ", ".join([*kept, item]) + tail) > width:
+            return f"{head}{', '.join(kept)}, {len(items) - index} more: --full"
+        kept.append(item)
+    return head + ", ".join(kept)
+
+
+def _peaks_that_fit(
+    peaks: tuple[PeakBudget, ...], chosen: PeakBudget, room: int
+) -> tuple[PeakBudget, ...]:
+    """Return as many peaks as there are lines for, the chosen one among them."""
+    if room >= len(peaks):
+        return peaks
+    if room < 1:
+        return (chosen,)
+    start = max(0, min(peaks.index(chosen) - room // 2, len(peaks) - room))
+    return peaks[start : start + room]
+
+
+def _warnings_that_fit(answer: Budget, sheet: Sheet, room: int) -> None:
+    """Add warnings as lines allow, those of limits first; the rest is counted."""
+    ordered = sorted(answer.warnings, key=lambda text: "limit" not in text)
+    for index, warning in enumerate(ordered):
+        trial = Sheet(sheet.width, sheet.ascii_only)
+        trial.line(f"! {warning}", hang=2)
+        last = index == len(ordered) - 1
+        if trial.count() + (0 if last else 1) > room:
+            left = len(ordered) - index
+            sheet.line(f"! {left} {'more warnings' if index else 'warnings'}: --full", "yellow")
+            return
+        sheet.line(f"! {warning}", "yellow", hang=2)
+        room -= trial.count()
+
+
+def _lists(answer: Budget) -> list[tuple[str, list[str]]]:
+    """Return what is listed at the end, each with its title."""
+    found = [
+        ("Warnings", list(answer.warnings)),
+        ("Assumed", [assumption.text for assumption in answer.instrument.assumed]),
+        ("Cautions", list(answer.cautions)),
+    ]
+    return [(title, lines) for title, lines in found if lines]

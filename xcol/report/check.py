@@ -1,0 +1,173 @@
+"""What was understood of a path file, in metric and inch, with everything assumed."""
+
+from __future__ import annotations
+
+import csv
+import io
+from typing import TYPE_CHECKING, Any
+
+from xcol import __version__
+from xcol.report.labels import show, show_reading
+from xcol.report.sheet import Grid, Sheet, markdown
+from xcol.units import (
+    DENSITY,
+    DIFFUSION,
+    FLOW,
+    LENGTH,
+    PRESSURE,
+    TEMPERATURE,
+    TIME,
+    VISCOSITY,
+    Quantity,
+    significant,
+)
+
+if TYPE_CHECKING:
+    from xcol.flowpath.model import Instrument, Reading
+
+SCHEMA = "xcol.check/1"
+
+
+def check_text(instrument: Instrument, sheet: Sheet) -> None:
+    """Write the check as text."""
+    sheet.line(instrument.title or "Path file", "bold")
+    for title, grid in _grids(instrument):
+        sheet.line()
+        sheet.line(title, "bold")
+        sheet.grid(grid, indent=2, flexible=2 if title == "Path, in order of flow" else 0)
+    for title, lines in _lists(instrument):
+        sheet.line()
+        sheet.line(title, "bold")
+        for line in lines:
+            sheet.line(f"- {line}", indent=2, hang=2)
+
+
+def check_markdown(instrument: Instrument) -> str:
+    """Return the check in Markdown."""
+    pieces = [f"# {instrument.title or 'Path file'}\n"]
+    for title, grid in _grids(instrument):
+        pieces += [f"## {title}\n", markdown(grid)]
+    for title, lines in _lists(instrument):
+        pieces += [f"## {title}\n", "\n".join(f"- {line}" for line in lines) + "\n"]
+    return "\n".join(pieces)
+
+
+def check_record(instrument: Instrument) -> dict[str, Any]:
+    """Return the check as one JSON object; values in SI units, with the unit beside each."""
+    return {
+        "schema": SCHEMA,
+        "version": __version__,
+        "title": instrument.title,
+        "flow_mL_min": instrument.flow * 60e6,
+        "viscosity_mPa_s": _times(instrument.viscosity, 1e3),
+        "density_kg_m3": instrument.density,
+        "temperature_degC": None if instrument.temperature is None else instrument.temperature - 273.15,
+        "pump_pressure_bar": _times(instrument.pump_pressure, 1e-5),
+        "parts": [
+            {
+                "position": part.position,
+                "part": part.kind,
+                "name": part.name or part.kind,
+                "values": [_value(reading) for reading in part.readings],
+            }
+            for part in instrument.parts
+        ],
+        "peaks": [
+            {
+                "name": peak.name,
+                "k": peak.k,
+                "retention_s": peak.retention,
+                "diffusion_m2_s": peak.diffusion,
+                "plates": peak.plates,
+            }
+            for peak in instrument.peaks
+        ],
+        "assumed": [assumption.text for assumption in instrument.assumed],
+        "warnings": list(instrument.warnings),
+    }
+
+
+def check_csv(instrument: Instrument) -> str:
+    """Return one line for each value of each part, as CSV."""
+    out = io.StringIO()
+    writer = csv.writer(out, lineterminator="\n")
+    writer.writerow(("position", "part", "name", "key", "value", "unit", "shown", "inch"))
+    for part in check_record(instrument)["parts"]:
+        for value in part["values"]:
+            writer.writerow((part["position"], part["part"], part["name"], *value.values()))
+    return out.getvalue()
+
+
+def _value(reading: Reading) -> dict[str, Any]:
+    return {
+        "key": reading.key,
+        "value": reading.value,
+        "unit": reading.quantity.si if reading.quantity else "",
+        "shown": show_reading(reading),
+        "inch": _inch(reading),
+    }
+
+
+def _grids(instrument: Instrument) -> list[tuple[str, Grid]]:
+    conditions: list[tuple[str, float | None, Quantity]] = [
+        ("flow", instrument.flow, FLOW),
+        ("viscosity", instrument.viscosity, VISCOSITY),
+        ("density", instrument.density, DENSITY),
+        ("temperature", instrument.temperature, TEMPERATURE),
+        ("pump pressure", instrument.pump_pressure, PRESSURE),
+    ]
+    flow = tuple(
+        (name, show(value, quantity, 4) if value is not None else "not entered")
+        for name, value, quantity in conditions
+    )
+    rows: list[tuple[str, ...]] = []
+    for part in instrument.parts:
+        head = (str(part.position), part.kind, part.name)
+        for reading in part.readings:
+            rows.append((*head, reading.key, show_reading(reading), _inch(reading)))
+            head = ("", "", "")
+        if head[0]:
+            rows.append((*head, "", "", ""))
+    peaks = tuple(
+        (
+            peak.name,
+            significant(peak.k, 4) if peak.k is not None else "-",
+            show(peak.retention, TIME, 4) if peak.retention is not None else "-",
+            show(peak.diffusion, DIFFUSION),
+            significant(peak.plates, 6) if peak.plates is not None else "-",
+        )
+        for peak in instrument.peaks
+    )
+    return [
+        ("Conditions", Grid(("", "value"), flow, (False, True))),
+        (
+            "Path, in order of flow",
+            Grid(
+                ("", "part", "name", "key", "value", "in inch"),
+                tuple(rows),
+                (True, False, False, False, True, True),
+            ),
+        ),
+        (
+            "Peaks",
+            Grid(("", "k", "recorded at", "diffusion", "plates"), peaks, (False, True, True, True, True)),
+        ),
+    ]
+
+
+def _lists(instrument: Instrument) -> list[tuple[str, list[str]]]:
+    found = [
+        ("Warnings", list(instrument.warnings)),
+        ("Assumed", [assumption.text for assumption in instrument.assumed]),
+    ]
+    return [(title, lines) for title, lines in found if lines]
+
+
+def _inch(reading: Reading) -> str:
+    if reading.quantity is LENGTH and isinstance(reading.value, float):
+        return f"{significant(reading.value / 0.0254)} in"
+    return ""
+
+
+def _times(value: float | None, factor: float) -> float | None:
+    return None if value is None else value * factor

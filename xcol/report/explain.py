@@ -1,0 +1,102 @@
+"""Topics as text, JSON, CSV and Markdown."""
+
+from __future__ import annotations
+
+import csv
+import io
+from typing import TYPE_CHECKING, Any
+
+from xcol import __version__
+from xcol.errors import Fault, InputError, Place
+from xcol.flowpath.keys import nearest
+from xcol.report.topics import TOPICS, Topic
+
+if TYPE_CHECKING:
+    from xcol.report.sheet import Sheet
+
+SCHEMA = "xcol.explain/1"
+
+
+def find(word: str | None) -> tuple[Topic, ...]:
+    """Return the topic of that name or other word; all topics without a word."""
+    if word is None:
+        return TOPICS
+    plain = " ".join(word.lower().replace("_", " ").split())
+    for topic in TOPICS:
+        if plain in (topic.name, f"{topic.name}s"):
+            return (topic,)
+    for topic in TOPICS:
+        if plain in topic.words:
+            return (topic,)
+    names = tuple(topic.name for topic in TOPICS)
+    words = {other: topic.name for topic in TOPICS for other in topic.words}
+    near = nearest(plain, (*names, *words))
+    fault = Fault(
+        Place(key="TOPIC"),
+        f'"{word[:40]}"',
+        f"one of {', '.join(names)}",
+        f"xcol explain {words.get(near, near) or 'budget'}",
+    )
+    raise InputError((fault,))
+
+
+def topics_text(topics: tuple[Topic, ...], sheet: Sheet, *, in_full: bool) -> None:
+    """Write topics in full, or as a list of their names."""
+    if not in_full:
+        sheet.line("Topics of xcol explain TOPIC", "bold")
+        for topic in topics:
+            sheet.line(f"{topic.name:<10} {topic.title}", indent=2)
+        return
+    for topic in topics:
+        sheet.line(f"{topic.name}: {topic.title}", "bold")
+        sheet.line(topic.model)
+        sheet.line()
+        for line in topic.formula:
+            sheet.line(line, indent=4, hang=2)
+        sheet.line()
+        sheet.line(f"Holds for: {topic.holds}", hang=2)
+        sheet.line(f"Example: {topic.worked()}", hang=2)
+        sheet.line(f"Sources: {'; '.join(topic.sources)}", hang=2)
+
+
+def topics_record(topics: tuple[Topic, ...]) -> dict[str, Any]:
+    """Return topics as one JSON object."""
+    return {
+        "schema": SCHEMA,
+        "version": __version__,
+        "topics": [
+            {
+                "name": topic.name,
+                "title": topic.title,
+                "model": topic.model,
+                "formula": list(topic.formula),
+                "holds": topic.holds,
+                "example": topic.worked(),
+                "sources": list(topic.sources),
+            }
+            for topic in topics
+        ],
+    }
+
+
+def topics_csv(topics: tuple[Topic, ...]) -> str:
+    """Return one line a topic, as CSV."""
+    out = io.StringIO()
+    writer = csv.writer(out, lineterminator="\n")
+    writer.writerow(("name", "title", "formula", "holds", "example", "sources"))
+    for topic in topics:
+        formula, sources = "; ".join(topic.formula), "; ".join(topic.sources)
+        row = (topic.name, topic.title, formula, topic.holds, topic.worked(), sources)
+        writer.writerow(row)
+    return out.getvalue()
+
+
+def topics_markdown(topics: tuple[Topic, ...]) -> str:
+    """Return topics in Markdown."""
+    pieces = []
+    for topic in topics:
+        pieces += [f"# {topic.title} ({topic.name})\n", topic.model + "\n"]
+        pieces.append("\n".join(f"    {line}" for line in topic.formula) + "\n")
+        pieces += [f"Holds for: {topic.holds}\n", f"Example: {topic.worked()}\n"]
+        pieces.append(f"Sources: {'; '.join(topic.sources)}\n")
+    return "\n".join(pieces)

@@ -1,0 +1,118 @@
+"""A sheet of text: lines, paragraphs and tables at one width, in colour and Unicode where it may be."""
+
+from __future__ import annotations
+
+import io
+from dataclasses import dataclass, field
+
+from rich.console import Console
+from rich.padding import Padding
+from rich.table import Table
+from rich.text import Text
+
+# What a terminal that knows only ASCII gets instead.
+_ASCII = {
+    "µ": "u", "μ": "u", "²": "2", "³": "3", "°C": "degC", "°": " deg", "×": "x", "–": "-", "−": "-",
+    "█": "#", "▌": "#", "·": "*", "σ": "sigma", "θ": "theta", "ε": "eps", "η": "eta", "π": "pi",
+    "τ": "tau", "λ": "lambda", "ω": "omega", "Φ": "Phi", "Σ": "Sum", "Δ": "Delta", "ρ": "rho",
+    "√": "sqrt", "≥": ">=", "≤": "<=", "≈": "~", "→": "->", "₀": "0", "⁻": "-", "ν": "nu", "…": "...",
+    "½": "1/2", "α": "alpha", "β": "beta", "∞": "infinity", "∫": "Int ", "ₜ": "t", "′": "'", "ⁿ": "^n",
+}  # fmt: skip
+
+
+def to_ascii(text: str) -> str:
+    """Return the text in ASCII: symbols spelled out, anything else as '?'."""
+    for symbol, plain in _ASCII.items():
+        text = text.replace(symbol, plain)
+    return text.encode("ascii", "replace").decode("ascii")
+
+
+@dataclass(frozen=True)
+class Grid:
+    """A table as text: headers, rows, and for each column whether it is right-aligned."""
+
+    headers: tuple[str, ...]
+    rows: tuple[tuple[str, ...], ...]
+    right: tuple[bool, ...]
+
+
+@dataclass
+class Sheet:
+    """Collects what is printed; ``text()`` lays it out."""
+
+    width: int = 80
+    ascii_only: bool = False
+    color: bool = False
+    _items: list[Text | Table | Padding] = field(default_factory=list)
+
+    def line(self, text: str = "", style: str = "", indent: int = 0, hang: int = 0) -> None:
+        """Add a paragraph, wrapped; lines after the first are indented by ``hang`` more."""
+        content = Text(self.spelled(text), style=style)
+        if not hang:
+            self._items.append(Padding(content, (0, 0, 0, indent)) if indent else content)
+            return
+        pieces = content.wrap(_measuring(), self.width - indent - hang)
+        for number, piece in enumerate(pieces):
+            piece.rstrip()
+            self._items.append(Padding(piece, (0, 0, 0, indent + (hang if number else 0))))
+
+    def grid(self, grid: Grid, indent: int = 0, flexible: int = 0) -> None:
+        """Add a table; the ``flexible`` column is cut where the width does not suffice."""
+        widths = [
+            max(len(self.spelled(row[index])) for row in (grid.headers, *grid.rows))
+            for index in range(len(grid.headers))
+        ]
+        taken = indent + sum(widths) + 2 * (len(widths) - 1) - widths[flexible]
+        widths[flexible] = min(widths[flexible], max(self.width - taken, 8))
+        table = Table(box=None, padding=(0, 2, 0, 0), pad_edge=False, show_edge=False)
+        for header, right, width in zip(grid.headers, grid.right, widths, strict=True):
+            table.add_column(
+                Text(self.spelled(header)),
+                justify="right" if right else "left",
+                width=width,
+                no_wrap=True,
+                overflow="crop" if self.ascii_only else "ellipsis",
+                header_style="",
+            )
+        for row in grid.rows:
+            table.add_row(*(Text(self.spelled(cell)) for cell in row))
+        self._items.append(Padding(table, (0, 0, 0, indent)))
+
+    def text(self) -> str:
+        """Return the sheet as text, without blanks at the ends of lines."""
+        out = io.StringIO()
+        console = Console(
+            file=out,
+            width=self.width,
+            color_system="standard" if self.color else None,
+            force_terminal=self.color,
+            highlight=False,
+            markup=False,
+            emoji=False,
+            legacy_windows=False,
+        )
+        for item in self._items:
+            console.print(item)
+        return "".join(f"{line.rstrip()}\n" for line in out.getvalue().splitlines())
+
+    def count(self) -> int:
+        """Return the number of lines so far."""
+        return len(self.text().splitlines())
+
+    def spelled(self, text: str) -> str:
+        """Return the text as this sheet prints it: in ASCII where it must be."""
+        return to_ascii(text) if self.ascii_only else text
+
+
+def _measuring() -> Console:
+    return Console(file=io.StringIO(), width=1000, color_system=None, legacy_windows=False)
+
+
+def markdown(grid: Grid) -> str:
+    """Return a table in Markdown."""
+
+    def row(cells: tuple[str, ...]) -> str:
+        return "| " + " | ".join(cell.replace("|", "\\|") for cell in cells) + " |"
+
+    rule = tuple("---:" if right else "---" for right in grid.right)
+    return "\n".join(row(cells) for cells in (grid.headers, rule, *grid.rows)) + "\n"

@@ -1,0 +1,248 @@
+"""Topics: the kinds of part."""
+
+from __future__ import annotations
+
+from xcol.filters.block import MeasuredBlock
+from xcol.filters.column import Column, void_volume
+from xcol.filters.signal import Boxcar, FirstOrder, first_order_rise
+from xcol.filters.tube import Tube, TubeRun
+from xcol.filters.volumes import Plug, TanksInSeries, dead_gap_volume
+from xcol.report.topics.topic import Topic
+from xcol.units import significant
+
+_FLOW = 1e-6 / 60  # 1 mL/min
+_SQUARE = (_FLOW * 1e9) ** 2  # s² to µL²
+
+
+def _shown(variance: object) -> str:
+    return f"{significant(float(variance) * _SQUARE, zeros=True)} µL²"  # type: ignore[arg-type]
+
+
+def _inject() -> str:
+    return f"20 µL injected: {_shown(Plug(20e-9, _FLOW).variance())} at any flow"
+
+
+def _tube() -> str:
+    tube = Tube(0.4, 0.254e-3, _FLOW, 1e-9)
+    return (
+        f"40 cm x 0.254 mm at 1 mL/min, D = 1e-9 m²/s: t* = {significant(float(tube.t_star))}, "
+        f"{_shown(tube.variance())}; the long-tube formula gives {_shown(tube.longtube_variance())}"
+    )
+
+
+def _run() -> str:
+    first, second = Tube(0.2, 0.254e-3, _FLOW, 1e-9), Tube(0.2, 0.178e-3, _FLOW, 1e-9)
+    mixed = float(first.variance()) + float(second.variance())
+    return (
+        f"20 cm x 0.254 mm and 20 cm x 0.178 mm: {_shown(TubeRun((first, second)).variance())} as one "
+        f"run, {_shown(mixed)} if a fitting between them mixed the stream"
+    )
+
+
+def _fitting() -> str:
+    volume = float(dead_gap_volume(25.4e-3 / 16, 0.5e-3))
+    return (
+        f"a gap of 0.5 mm in a 1/16 in port holds {significant(volume * 1e9)} µL: "
+        f"{_shown(TanksInSeries(volume, _FLOW).variance())} as one stirred tank"
+    )
+
+
+def _mixer() -> str:
+    return f"50 µL as two tanks: {_shown(TanksInSeries(50e-9, _FLOW, 2.0).variance())}"
+
+
+def _column() -> str:
+    dead_time = float(void_volume(4.6e-3, 0.15, 0.65)) / _FLOW
+    column = Column(dead_time, 2.0, 11000.0)
+    return (
+        f"4.6 x 150 mm, total porosity 0.65, at 1 mL/min: t0 = {significant(dead_time)} s; a band of "
+        f"k = 2 with 11000 plates has {_shown(column.variance())}"
+    )
+
+
+def _block() -> str:
+    block = MeasuredBlock(4e-18, 8e-9, _FLOW)
+    return (
+        f"4 µL² and 8 µL at 1 mL/min: {significant(float(block.variance()))} s², "
+        f"{significant(float(block.delay()))} s of delay"
+    )
+
+
+def _detector() -> str:
+    return (
+        f"a 10 µL cell as a plug: {_shown(Plug(10e-9, _FLOW).variance())}; as one stirred tank: "
+        f"{_shown(TanksInSeries(10e-9, _FLOW).variance())}"
+    )
+
+
+def _filter() -> str:
+    tau = 0.5 / first_order_rise(1)
+    return (
+        f"0.5 s as a time constant: {_shown(FirstOrder(0.5).variance())} at 1 mL/min; as a 10-90 % rise "
+        f"time: {_shown(FirstOrder(tau).variance())}"
+    )
+
+
+def _rate() -> str:
+    return f"5 Hz, averaged over 0.2 s: {_shown(Boxcar(0.2).variance())} at 1 mL/min"
+
+
+def _outlet() -> str:
+    return "an outlet behind the last detector: 0 µL²"
+
+
+PARTS = (
+    Topic(
+        "inject",
+        "Injection",
+        "The injected volume enters as a plug: a rectangle in time. This is the best case. A loop "
+        "that is washed out through its own bore spreads more, up to about five times.",
+        ("σ² = (V/F)²/12 [s²],  V²/12 [µL²]", "mean delay V/(2F)"),
+        "Any flow. What the sample's solvent does at the column head is not counted yet.",
+        ("variance of a rectangular distribution; Sternberg, Adv. Chromatogr. 2 (1966) 205, from memory",),
+        _inject,
+        ("injection", "plug", "loop", "sample"),
+    ),
+    Topic(
+        "tube",
+        "Connecting tube",
+        "Laminar flow: the middle of the stream runs ahead, diffusion across the bore evens it out. "
+        "The exact variance at the outlet comes from the moment equations of that problem. It hangs "
+        "on t* = D·t/a² = π·D·L/F, in which the bore does not appear. The textbook formula is the "
+        "limit for long t*; connecting tubes have t* of 0.01 to 0.5, where it is 8 to 1.2 times too "
+        "large. A short tube's variance grows as L² and hardly with flow or D; a long one's as L, F "
+        "and 1/D. At any t* it grows as the fourth power of the bore.",
+        (
+            "σ² = V²·Φ(t*),  V = π/4·d²·L,  t* = π·D·L/F",
+            "Φ → 1/(24 t*) − 1/(384 t*²) for t* > 1;  0.224 at 0.1;  0.536 at 0.01",
+            "and along the tube 2·D·L/u³ [s²], u the mean velocity",
+        ),
+        "Straight, round, Reynolds number below 2000. Below t* = 0.001 entrance effects blur it. Bends "
+        "mix the stream and lower the variance, up to 4 times: a straight tube is the worst case.",
+        (
+            "Aris, Proc. R. Soc. A 235 (1956) 67 (method of moments), from memory",
+            "Taylor, Proc. R. Soc. A 219 (1953) 186; Golay 1958 (long-tube limit), from memory",
+        ),
+        _tube,
+        ("tubing", "capillary", "t*", "tstar", "long-tube", "longtube", "taylor", "aris", "bore"),
+    ),
+    Topic(
+        "run",
+        "Tubes that follow each other",
+        "Laminar flow keeps its layers through a change of bore, so what is slow in the first tube is "
+        "slow in the next, and their delays are correlated: a run of tubes spreads more than the sum "
+        "of its tubes. Cutting a tube in two changes nothing. A row shows the tube's own variance and "
+        "half of what it shares; N if gone is computed again without the tube, the run closing up. A "
+        "fitting, mixer, cell or column between them mixes the stream anew, which lowers the variance: "
+        "taking such a fitting out can cost plates.",
+        (
+            "σ² = Σ w_i²·V(t_i) + Σ_{i<j} w_i·w_j·[V(t_i+d+t_j) − V(t_i+d) − V(d+t_j) + V(d)] [s²]",
+            "V(t) = t²·Φ(t),  w = a²/D,  t the tubes' t*,  d the t* between i and j",
+        ),
+        "Straight tubes with nothing between them.",
+        ("moment equations of laminar flow with piecewise bore, as for a tube",),
+        _run,
+        ("runs", "series of tubes"),
+    ),
+    Topic(
+        "fitting",
+        "Fitting, union, frit, valve passage",
+        "A volume or a dead gap is one stirred tank, unless tanks says otherwise. A bore with a length "
+        "is a short tube, mixed at both ends.",
+        ("σ² = (V/F)²/n [s²]", "gap: V = π/4·d_port²·gap"),
+        "Real fittings mix less than a tank and more than a plug. The mixing is the worst case of the "
+        "volume itself, but it also mixes the stream of the tubes beside it, which is the best case "
+        "for them.",
+        ("tanks in series: Levenspiel, Chemical Reaction Engineering, from memory",),
+        _fitting,
+        ("union", "gap", "dead volume", "frit", "valve", "port"),
+    ),
+    Topic(
+        "mixer",
+        "Mixing volume",
+        "n equal stirred tanks in series; one tank mixes perfectly, many tanks only delay.",
+        ("σ² = (V/F)²/n [s²]", "third central moment 2(V/F)³/n² [s³]"),
+        "n of 1 and above; need not be whole.",
+        ("tanks in series: Levenspiel, Chemical Reaction Engineering, from memory",),
+        _mixer,
+        ("tanks", "tank"),
+    ),
+    Topic(
+        "column",
+        "Column",
+        "The column's own band is a Gaussian of its plate number. The plates are those entered: a "
+        "certificate's hold at its own flow, k and analyte, and have the maker's plumbing inside. "
+        "Columns in series add their times and variances.",
+        (
+            "t0 = V0/F,  V0 = ε_total·π/4·d²·L",
+            "σ = t0·(1+k)/√N [s]",
+            "N recorded / N column = σ²_column/σ²_total;  resolution kept = its root",
+        ),
+        "Isocratic elution; N is not changed with the flow. A reduced plate height below 1 is refused.",
+        ("definition of the plate number",),
+        _column,
+        ("plates", "n", "kept", "resolution", "rs kept", "void volume", "porosity", "own"),
+    ),
+    Topic(
+        "block",
+        "Measured block",
+        "A module that is known only by its measured variance, an autosampler with all it holds, for "
+        "instance. The variance is taken as constant in µL² at every flow, the form as Gaussian.",
+        ("σ² = σ²_measured/F² [s²]",),
+        "Near the flow at which it was measured.",
+        ("common practice, no source",),
+        _block,
+        ("module", "variance"),
+    ),
+    Topic(
+        "detector",
+        "Detector: cell",
+        "The cell is read over its volume: a plug, which is the best case, or as many stirred tanks as "
+        "are given. Filter and data rate act on the signal of this detector only. A cell on the way to "
+        "a later detector is a part of that one's path; its electronics are not.",
+        ("σ² = (V/F)²/12, or (V/F)²/n with n tanks [s²]",),
+        "A real cell can be 15 times worse than a plug.",
+        ("variance of a rectangular distribution; Sternberg, Adv. Chromatogr. 2 (1966) 205, from memory",),
+        _detector,
+        ("cell", "uv", "ri"),
+    ),
+    Topic(
+        "filter",
+        "Noise filter of the detector",
+        "A time constant τ is that of each first-order stage, or σ of a Gaussian filter. A rise time is "
+        "10-90 % of the whole filter. A word like 'response' can mean either, or the time to 90 or "
+        "99 %: look it up, the readings span a factor of 21 in variance.",
+        (
+            "first order: σ² = n·τ² [s²], n stages",
+            "rise time: σ = t_rise/c,  c = 2.197, 2.374, 2.437, 2.468 for 1 to 4 stages",
+            "c = 2.563 for a Gaussian, 2.771 for a boxcar",
+        ),
+        "In volume it grows with the square of the flow.",
+        (
+            "ln 9 = 2.197 time constants for 10-90 % of a first-order step",
+            "IUPAC Gold Book R05345, R05346 (response time, rise time)",
+        ),
+        _filter,
+        ("time constant", "rise time", "response", "electronics", "signal"),
+    ),
+    Topic(
+        "rate",
+        "Data rate",
+        "The signal is averaged between two data points over the whole time between them.",
+        ("σ² = dwell²/12 [s²], dwell = 1/rate",),
+        "20 points across 4σ add 0.33 % to the variance, 10 points 1.3 %.",
+        ("variance of a rectangular distribution",),
+        _rate,
+        ("sampling", "points", "cycle", "dwell"),
+    ),
+    Topic(
+        "outlet",
+        "Outlet",
+        "The end of the path: a collector, or waste. It broadens nothing that is recorded.",
+        ("σ² = 0",),
+        "Behind the last detector.",
+        ("definition",),
+        _outlet,
+        ("waste", "collector"),
+    ),
+)
