@@ -43,9 +43,7 @@ def folder() -> Path:
         if candidate.is_dir():
             return candidate
     place = Place(file="catalogs")
-    raise InputError(
-        (Fault(place, "nothing", "the catalogs that ship with xcol", "install xcol again"),)
-    )
+    raise InputError((Fault(place, "nothing", "the catalogs that ship with xcol", "install xcol again"),))
 
 
 @cache
@@ -68,9 +66,7 @@ def packings() -> dict[str, Packing]:
 def tubing() -> tuple[Tubing, ...]:
     """Return the stock bores, narrowest first."""
     rows = (_Row(*row) for row in _rows("tubing.toml", "tubing"))
-    records = [
-        Tubing(r.positive("bore_mm") * 1e-3, r.text("label"), r.text("source")) for r in rows
-    ]
+    records = [Tubing(r.positive("bore_mm") * 1e-3, r.text("label"), r.text("source")) for r in rows]
     return tuple(sorted(records, key=lambda record: record.bore))
 
 

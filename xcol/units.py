@@ -164,9 +164,7 @@ def spell(unit: str) -> str:
     """
     text = unit.strip().replace("µ", "u").replace("μ", "u").replace("℃", "degC")
     text = re.sub(r"°\s*([CFK])\b", r"deg\1", text).replace("″", "in").replace('"', "in")
-    text = re.sub(
-        r"(?<=[A-Za-z])[⁻⁺]?[⁰¹²³⁴-⁹]+", lambda m: "^" + m[0].translate(_SUPERSCRIPTS), text
-    )
+    text = re.sub(r"(?<=[A-Za-z])[⁻⁺]?[⁰¹²³⁴-⁹]+", lambda m: "^" + m[0].translate(_SUPERSCRIPTS), text)
     text = re.sub(r"[·⋅∙*]|(?<=[A-Za-z])\.(?=[A-Za-z])", " ", text.replace("**", "^"))
     text = re.sub(r"(?<=[A-Za-z])(-?\d)", r"^\1", text.rstrip(". "))
     text = re.sub(r"\s*([/^])\s*", r"\1", text)
@@ -186,9 +184,7 @@ def split(text: str) -> tuple[float, str]:
     stripped = text.strip().replace("−", "-")
     if match := _TIMES_TEN.fullmatch(stripped):
         exponent = match[2].translate(_SUPERSCRIPTS)
-        raise UnitError(
-            shown, "one decimal number and a unit", f'"{match[1]}e{exponent} {match[3]}"'
-        )
+        raise UnitError(shown, "one decimal number and a unit", f'"{match[1]}e{exponent} {match[3]}"')
     match = _NUMBER.match(stripped)
     if not match:
         raise UnitError(shown, "a number and a unit", 'a decimal number first, as in "0.25 mm"')
@@ -227,8 +223,7 @@ def parse(text: str, quantity: Quantity, *, fraction: bool = False) -> float:
             return value
         raise UnitError(
             quote(text),
-            f"{quantity.name} as one decimal number; an inch fraction names an outside or port "
-            "diameter",
+            f"{quantity.name} as one decimal number; an inch fraction names an outside or port diameter",
             "the bore (inside diameter) in mm or in, if a bore is asked for",
         )
     value, unit = split(text)
@@ -343,9 +338,7 @@ def _unknown(text: str, unit: str, quantity: Quantity, near: str = "") -> UnitEr
     if not near:
         import difflib  # noqa: PLC0415
 
-        close = difflib.get_close_matches(
-            unit, [u for u in quantity.everyday if u], n=1, cutoff=0.4
-        )
+        close = difflib.get_close_matches(unit, [u for u in quantity.everyday if u], n=1, cutoff=0.4)
         near = close[0] if close else ""
     options = ", ".join(option or "no unit" for option in quantity.likely)
     return UnitError(

@@ -14,9 +14,7 @@ def table() -> str:
     """Return the module's text."""
     eigenvalues, coupling = solve_modes(POLYNOMIALS)
     rows = zip(eigenvalues[1:], coupling[0, 1:] ** 2, strict=True)
-    lines = "\n".join(
-        f"        ({value!r}, {weight!r})," for value, weight in (map(float, r) for r in rows)
-    )
+    lines = "\n".join(f"        ({value!r}, {weight!r})," for value, weight in (map(float, r) for r in rows))
     return f'''"""Eigenvalues λ_j and weights β_j² of laminar flow in a round tube (see laminar.py).
 
 Made by tests/generate/laminar_modes.py; a test makes the table again and compares.

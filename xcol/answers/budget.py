@@ -18,9 +18,9 @@ from xcol.flowpath.chain import Link, filter_of, links, run_of, segments, transi
 from xcol.flowpath.elements import Bed, Stream
 
 if TYPE_CHECKING:
-    import numpy.typing as npt
-
     from collections.abc import Iterator, Sequence
+
+    import numpy.typing as npt
 
     from xcol.flowpath.model import Instrument, Part, Peak
 

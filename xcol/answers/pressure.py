@@ -73,18 +73,14 @@ def _reynolds(part: Part, instrument: Instrument) -> float | None:
     bores = [element.bore for element in part.elements if isinstance(element, Bore)]
     if not bores or instrument.viscosity is None:
         return None
-    return float(
-        reynolds_number(instrument.flow, min(bores), instrument.viscosity, instrument.density)
-    )
+    return float(reynolds_number(instrument.flow, min(bores), instrument.viscosity, instrument.density))
 
 
 def _with_pump_pressure(
     instrument: Instrument, drops: list[Drop | None], pump: float, warnings: list[str]
 ) -> list[Drop | None]:
     """Give the columns what the rest of the path does not explain of the measured pressure."""
-    unmeasured = [
-        part.kind == "column" and part.drop is None for part in instrument.parts
-    ]
+    unmeasured = [part.kind == "column" and part.drop is None for part in instrument.parts]
     others = [drop for drop, column in zip(drops, unmeasured, strict=True) if not column]
     shown = write(pump, "bar", PRESSURE)
     if any(drop is None for drop in others):

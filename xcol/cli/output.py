@@ -98,8 +98,8 @@ def _write_whole(target: Path, text: str) -> None:
     try:
         with os.fdopen(handle, "w", encoding="utf-8", newline="\n") as stream:
             stream.write(text)
-        os.chmod(name, mode)  # noqa: PTH101  (the name came from mkstemp)
-        os.replace(name, target)  # noqa: PTH105
+        os.chmod(name, mode)
+        os.replace(name, target)
     except BaseException:
         Path(name).unlink(missing_ok=True)
         raise

@@ -48,9 +48,7 @@ def solve_modes(polynomials: int) -> tuple[Matrix, Matrix]:
     slopes = np.zeros_like(values)
     for i in range(1, polynomials):  # P'_i = P'_{i−2} + (2i−1) P_{i−1}
         slopes[:, i] = (2 * i - 1) * values[:, i - 1] + (slopes[:, i - 2] if i > 1 else 0)
-    scale = np.sqrt(
-        2 * np.arange(polynomials) + 1
-    )  # makes the area mass ∫P_iP_j ds the unit matrix
+    scale = np.sqrt(2 * np.arange(polynomials) + 1)  # makes the area mass ∫P_iP_j ds the unit matrix
     values, slopes = values * scale, 2 * slopes * scale
     stiffness = 4 * (slopes * (weights * s)[:, None]).T @ slopes
     flow_mass = 2 * (values * (weights * (1 - s))[:, None]).T @ values
@@ -122,18 +120,14 @@ def run_third_moment(t_stars: list[Real], time_units: list[Real]) -> Real:
         swept_integral = (moving * integral) @ mixed - integral * (moving @ mixed)
         swept += diagonal * moving * t * decay
         swept_integral += diagonal * moving * (integral - t * decay) / rates
-        second_integral = second * integral + 2 * w * (
-            pushed * (t - integral) / rates + swept_integral
-        )
+        second_integral = second * integral + 2 * w * (pushed * (t - integral) / rates + swept_integral)
         total = total + 3 * (w * second_integral) @ beta
         second = second * decay + 2 * w * (pushed * integral + swept)
         first = steady + moving * decay
     return total
 
 
-def run_transfer(
-    t_stars: list[Real], time_units: list[Real], omega: Real
-) -> npt.NDArray[np.complex128]:
+def run_transfer(t_stars: list[Real], time_units: list[Real], omega: Real) -> npt.NDArray[np.complex128]:
     """H(ω) about the mean delay of tubes in a row whose layers run on; S + omega.shape.
 
     ``t_stars`` [-] and ``time_units`` a²/D [s] one entry a tube, of one common shape S; ``omega``

@@ -46,7 +46,8 @@ class FirstOrder:
 
     def transfer(self, omega: Real) -> Complex:
         """H(ω) = (1 + iωτ)⁻ⁿ."""
-        result: Complex = (1 + 1j * outer(self.tau, omega)) ** -widen(self.stages, omega)
+        base = 1 + 1j * outer(self.tau, omega)
+        result: Complex = np.power(base, -widen(self.stages, omega), dtype=np.complex128)
         return result
 
 

@@ -104,8 +104,8 @@ class TubeRun:
         edges = np.concatenate([np.zeros((1, *t_stars[0].shape)), np.cumsum(t_stars, axis=0)])
         # V over every stretch from edge i to edge j: one call, whatever the number of tubes
         starts, ends = np.triu_indices(count + 1, k=1)
-        stretches = spread(np.maximum(edges[ends] - edges[starts], 0.0))
-        v = {(i, j): stretches[n] for n, (i, j) in enumerate(zip(starts, ends, strict=True))}
+        stretches = np.asarray(spread(np.maximum(edges[ends] - edges[starts], 0.0)))
+        v = {(int(i), int(j)): stretches[n] for n, (i, j) in enumerate(zip(starts, ends, strict=True))}
 
         shares: list[Real] = [
             units[i] ** 2 * v[i, i + 1] + tube.axial_variance() for i, tube in enumerate(self.tubes)
@@ -121,9 +121,7 @@ class TubeRun:
 
     def third_moment(self) -> Real:
         """Third central moment [s³]; axial diffusion, taken as Gaussian, adds nothing to it."""
-        return run_third_moment(
-            [tube.t_star for tube in self.tubes], [tube.time_unit for tube in self.tubes]
-        )
+        return run_third_moment([tube.t_star for tube in self.tubes], [tube.time_unit for tube in self.tubes])
 
     def transfer(self, omega: Real) -> Complex:
         """H(ω) of the laminar flow times that of axial diffusion, a Gaussian, and the delay."""

@@ -83,9 +83,8 @@ class TanksInSeries:
 
     def transfer(self, omega: Real) -> Complex:
         """H(ω) = (1 + iωV/(nF))⁻ⁿ."""
-        result: Complex = (1 + 1j * outer(self.delay() / self.tanks, omega)) ** -widen(
-            self.tanks, omega
-        )
+        base = 1 + 1j * outer(self.delay() / self.tanks, omega)
+        result: Complex = np.power(base, -widen(self.tanks, omega), dtype=np.complex128)
         return result
 
 

@@ -41,9 +41,7 @@ def tube_drop(flow: Real, length: Real, bore: Real, viscosity: Real) -> Real:
     return 128 * viscosity * length * flow / (math.pi * bore**4)
 
 
-def bed_drop(
-    flow: Real, length: Real, bore: Real, viscosity: Real, particle: Real, porosity: Real
-) -> Real:
+def bed_drop(flow: Real, length: Real, bore: Real, viscosity: Real, particle: Real, porosity: Real) -> Real:
     """Pressure drop 180·η·u_s·L·(1−ε)²/(ε³·d_p²) [Pa] of a packed bed, laminar.
 
     ``porosity`` ε is the interstitial one, between the particles; ``particle`` diameter d_p [m];
@@ -53,9 +51,7 @@ def bed_drop(
     71.6
     """
     superficial = flow / (math.pi / 4 * bore**2)
-    return (
-        180 * viscosity * superficial * length * (1 - porosity) ** 2 / (porosity**3 * particle**2)
-    )
+    return 180 * viscosity * superficial * length * (1 - porosity) ** 2 / (porosity**3 * particle**2)
 
 
 def reynolds_number(flow: Real, bore: Real, viscosity: Real, density: Real) -> Real:

@@ -46,11 +46,7 @@ class Measure:
 
     def __call__(self, raw: object) -> float:
         """Return the value in SI units."""
-        if (
-            isinstance(raw, int | float)
-            and not isinstance(raw, bool)
-            and self.quantity is not RATIO
-        ):
+        if isinstance(raw, int | float) and not isinstance(raw, bool) and self.quantity is not RATIO:
             raise missing_unit(raw, self.quantity)
         value = parse(_text_or_number(raw, self.quantity), self.quantity, fraction=self.fraction)
         self.check(value, raw)
@@ -99,9 +95,7 @@ class Number:
         if isinstance(raw, str):
             value, unit = split(raw)
             if unit:
-                raise UnitError(
-                    f"{quote(raw)}, with the unit {quote(unit)}", self.what, f"{value:g} alone"
-                )
+                raise UnitError(f"{quote(raw)}, with the unit {quote(unit)}", self.what, f"{value:g} alone")
         if isinstance(value, bool) or not isinstance(value, int | float):
             raise UnitError(described(raw), self.what, "a number, without quotes")
         if not math.isfinite(value) or not self.low <= value <= self.high:
@@ -175,6 +169,11 @@ class Only:
         if self.refuses(raw):
             return Later(self.instead)(raw)
         return self.inner(raw)
+
+
+def yes(raw: object) -> bool:
+    """Return true: the reader of a key of which only ``true`` is computed yet."""
+    return True
 
 
 def described(raw: object) -> str:

@@ -22,7 +22,10 @@ def read_part(
     draft = Draft("part", "", position, file, lines, findings)
     if not isinstance(raw, dict):
         draft.fault(
-            "", 'a part in braces, { tube = "40 cm x 0.25 mm" }', "put the part in { }", described(raw)
+            "",
+            'a part in braces, { tube = "40 cm x 0.25 mm" }',
+            "put the part in { }",
+            described(raw),
         )
         return "", None
     kind = _kind_of(raw, draft)
@@ -103,10 +106,13 @@ def _kind_of(raw: dict[str, object], draft: Draft) -> Kind | None:
         )
         return None
     known = ", ".join(ANY_KIND)
-    words = [(word, OTHER_WORDS.get(word.lower(), "")) for word in raw]
+    plain = [(word, OTHER_WORDS.get(word.lower(), "")) for word in raw]
     guess = next(
-        (f'"{kind}" for "{word}"' for word, kind in words if kind in ANY_KIND),
-        next((f'"{near}" for "{word}"' for word in raw if (near := nearest(word.lower(), ANY_KIND))), ""),
+        (f'"{kind}" for "{word}"' for word, kind in plain if kind in ANY_KIND),
+        next(
+            (f'"{near}" for "{word}"' for word in raw if (near := nearest(word.lower(), ANY_KIND))),
+            "",
+        ),
     )
     shown = ", ".join(f'"{word[:30]}"' for word in raw) or "an empty part"
     draft.fault("", f"a part with its kind: {known}", guess or KINDS["tube"].example, shown)

@@ -22,7 +22,9 @@ DEFAULT_K = (1.0, 2.0, 5.0, 10.0)
 _POSITIONS = ("k", "retention", "elution_volume")
 
 
-def read_peaks(raw: object, file: str, lines: Mapping[int, dict[str, int]], findings: Findings) -> list[Draft]:
+def read_peaks(
+    raw: object, file: str, lines: Mapping[int, dict[str, int]], findings: Findings
+) -> list[Draft]:
     """Read the entries of ``peaks`` (None: there are none) as drafts; faults go to the findings."""
     if raw is None:
         return []

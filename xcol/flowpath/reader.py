@@ -47,17 +47,13 @@ def parse(text: str, file: str) -> Instrument:
         findings.fault(place, "nothing", "the flow rate", 'flow = "1.0 mL/min"')
 
     kinds, parts = _read_path(data, file, lines, findings)
-    drafts = read_peaks(
-        data.get("peaks"), file, lines.peaks(len(data.get("peaks") or ())), findings
-    )
+    drafts = read_peaks(data.get("peaks"), file, lines.peaks(len(data.get("peaks") or ())), findings)
     check_positions(drafts, "column" in kinds or not kinds)
     findings.raise_faults()
     return _instrument(top, tuple(parts), drafts, findings)
 
 
-def _instrument(
-    top: Draft, parts: tuple[Part, ...], drafts: list[Draft], findings: Findings
-) -> Instrument:
+def _instrument(top: Draft, parts: tuple[Part, ...], drafts: list[Draft], findings: Findings) -> Instrument:
     density = top.number("density")
     if density is None:
         density = _DENSITY
@@ -190,5 +186,3 @@ class _Lines:
 
     def peaks(self, count: int) -> dict[int, dict[str, int]]:
         return {index: self.of("peaks", index) for index in range(count)} | {-1: self.of()}
-
-

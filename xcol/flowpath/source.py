@@ -23,9 +23,7 @@ def read_text(name: str) -> str:
     if len(data) > MOST_BYTES:
         raise _refusal(place, "more than 1 MB", "a path file of a few kB", "the name of a path file")
     if data.startswith(_UTF16):
-        raise _refusal(
-            place, "text in UTF-16", "text in UTF-8", "save it again, with the encoding UTF-8"
-        )
+        raise _refusal(place, "text in UTF-16", "text in UTF-8", "save it again, with the encoding UTF-8")
     if b"\x00" in data:
         raise _refusal(place, "a binary file", "a path file: text in TOML", "xcol budget FILE.toml")
     try:
@@ -39,9 +37,7 @@ def read_text(name: str) -> str:
             "save it again, with the encoding UTF-8 (a µ or ° is the usual cause)",
         ) from None
     if not text.strip():
-        raise _refusal(
-            place, "an empty file", "a flow, a path and peaks", 'begin with flow = "1.0 mL/min"'
-        )
+        raise _refusal(place, "an empty file", "a flow, a path and peaks", 'begin with flow = "1.0 mL/min"')
     return text.replace("\r\n", "\n").replace("\r", "\n")
 
 
@@ -51,9 +47,7 @@ def _bytes(name: str, place: Place) -> bytes:
     path = Path(name)
     try:
         if path.is_dir():
-            raise _refusal(
-                place, "a directory", "a path file", _files_in(path) or "the name of a path file"
-            )
+            raise _refusal(place, "a directory", "a path file", _files_in(path) or "the name of a path file")
         with path.open("rb") as stream:
             return stream.read(MOST_BYTES + 1)
     except FileNotFoundError:

@@ -217,9 +217,7 @@ def _open_list(spot: _Spot) -> _Slip | None:
     """A new statement where the list before it has not ended."""
     if not spot.message.startswith(("Invalid value", "Unclosed array")):
         return None
-    if spot.text[spot.start : spot.at].strip() or not (
-        _KEY_AND_EQUALS.match(spot.line) or spot.char == "["
-    ):
+    if spot.text[spot.start : spot.at].strip() or not (_KEY_AND_EQUALS.match(spot.line) or spot.char == "["):
         return None
     before = len(spot.text[: spot.start].rstrip())
     return _Slip(
@@ -256,9 +254,7 @@ def _value_without_quotes(spot: _Spot) -> _Slip | None:
     begin = spot.start + equals + 1
     line_rest = spot.text[begin : spot.end]
     in_part = before[:equals].count("{") > before[:equals].count("}")
-    ending = re.search(
-        r"\s*(?:,\s*[A-Za-z_]\w*\s*=|\}|#|$)" if in_part else r"\s*(?:#|$)", line_rest
-    )
+    ending = re.search(r"\s*(?:,\s*[A-Za-z_]\w*\s*=|\}|#|$)" if in_part else r"\s*(?:#|$)", line_rest)
     value = line_rest[: ending.start() if ending else len(line_rest)].strip()
     if not value or '"' in value or "'" in value:
         return None
@@ -299,9 +295,7 @@ def _no_equals(spot: _Spot) -> _Slip | None:
     else:
         return None
     fixed = mended[spot.start :].split("\n", 1)[0]
-    return _Slip(
-        quote(spot.line), "key = value, the key in one word", fixed.strip(), mended, spot.at
-    )
+    return _Slip(quote(spot.line), "key = value, the key in one word", fixed.strip(), mended, spot.at)
 
 
 def _given_twice(spot: _Spot) -> _Slip | None:

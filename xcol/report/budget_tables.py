@@ -52,6 +52,8 @@ def parts_grid(answer: Budget, at: DetectorBudget, peak: PeakBudget, *, fold: bo
 def peaks_grid(peaks: tuple[PeakBudget, ...], flow: float) -> Grid:
     """Return what is recorded of each peak."""
     square = (flow * 1e9) ** 2
+    headers: tuple[str, ...]
+    rows: tuple[tuple[str, ...], ...]
     if all(peak.plates_column is None for peak in peaks):
         headers = ("peak", "σ, µL", "σ², µL²", "σ, s", "width at half height, s", "4σ, s")
         rows = tuple(
@@ -167,9 +169,7 @@ def _or_dash(value: float | None, factor: float = 1.0) -> str:
     return three(value * factor) if value is not None else "-"
 
 
-def _part_line(
-    row: Row, peak: PeakBudget, inlet: Drop | None, square: float, most: float
-) -> tuple[str, ...]:
+def _part_line(row: Row, peak: PeakBudget, inlet: Drop | None, square: float, most: float) -> tuple[str, ...]:
     gone = None
     if peak.plates_column is not None and row.plates_kept_without is not None:
         gone = peak.plates_column * row.plates_kept_without
@@ -184,9 +184,7 @@ def _part_line(
     )
 
 
-def _column_line(
-    part: Part, peak: PeakBudget | None, inlet: Drop | None, square: float
-) -> tuple[str, ...]:
+def _column_line(part: Part, peak: PeakBudget | None, inlet: Drop | None, square: float) -> tuple[str, ...]:
     """Return a column's line; ``peak`` is given for the first one, which shows the band of all."""
     bed = next(element for element in part.elements if isinstance(element, Bed))
     size = f"{bed.bore * 1e3:.3g} x {bed.length * 1e3:.3g} mm"

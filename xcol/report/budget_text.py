@@ -30,9 +30,7 @@ _ENDS = (
 )
 
 
-def first_screen(
-    answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: Sheet
-) -> None:
+def first_screen(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: Sheet) -> None:
     """Write the first screen: at most 24 lines of 80 columns for one peak at one detector."""
     _heading(answer, sheet)
     for line in verdict(answer, at, peak):
@@ -211,9 +209,7 @@ def _fitting_list(head: str, items: list[str], width: int) -> str:
     return head + ", ".join(kept)
 
 
-def _peaks_that_fit(
-    peaks: tuple[PeakBudget, ...], chosen: PeakBudget, room: int
-) -> tuple[PeakBudget, ...]:
+def _peaks_that_fit(peaks: tuple[PeakBudget, ...], chosen: PeakBudget, room: int) -> tuple[PeakBudget, ...]:
     """Return as many peaks as there are lines for, the chosen one among them."""
     if room >= len(peaks):
         return peaks

@@ -150,7 +150,11 @@ def _grids(instrument: Instrument) -> list[tuple[str, Grid]]:
         ),
         (
             "Peaks",
-            Grid(("", "k", "recorded at", "diffusion", "plates"), peaks, (False, True, True, True, True)),
+            Grid(
+                ("", "k", "recorded at", "diffusion", "plates"),
+                peaks,
+                (False, True, True, True, True),
+            ),
         ),
     ]
 

@@ -25,8 +25,7 @@ def _column(draft: Draft) -> Elements:
     written = draft.written.get("column", "")
     if written and not draft.values.get("name_is_value") and length_first(written):
         draft.warn(
-            f'"{written}" has the length first: read as bore {bore * 1e3:g} mm, '
-            f"length {length * 1e3:g} mm"
+            f'"{written}" has the length first: read as bore {bore * 1e3:g} mm, length {length * 1e3:g} mm'
         )
     usual = packings()["fully porous"]
     void, total = draft.number("void_volume"), draft.number("total_porosity")
@@ -54,9 +53,7 @@ def _column(draft: Draft) -> Elements:
         )
     particle = draft.number("particle")
     if particle is None and draft.number("drop") is None:
-        draft.warn(
-            "no particle size: its pressure drop is not computed (enter it, or a measured drop)"
-        )
+        draft.warn("no particle size: its pressure drop is not computed (enter it, or a measured drop)")
     porosity = (bed or usual.interstitial, low, high)
     return (Bed(bore, length, particle, plates or 1.0, void, porosity),)
 

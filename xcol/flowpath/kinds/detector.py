@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from typing import TYPE_CHECKING
 
 from xcol.filters.signal import (
     BOXCAR_RISE,
@@ -18,6 +19,9 @@ from xcol.flowpath.keys import Choice, Key, Later, Measure, Number
 from xcol.flowpath.kinds.table import DROP, TANKS, VOLUMES, Elements, Kind, one_size
 from xcol.units import FREQUENCY, LENGTH, TIME
 
+if TYPE_CHECKING:
+    from xcol.filters.interface import Filter
+
 _SECONDS = Measure(TIME, 1e-6, 600.0, zero=True)
 
 
@@ -27,12 +31,13 @@ def _detector(draft: Draft) -> Elements:
     if cell is not None:
         tanks = draft.number("tanks")
         if tanks is None and cell > 0:
-            draft.assume("no mixing in cell", "the cell passes as a plug, the best case: a real one can be 15 times worse")
+            draft.assume(
+                "no mixing in cell",
+                "the cell passes as a plug, the best case: a real one can be 15 times worse",
+            )
         elements.append(Cell(cell, tanks))
         if draft.number("path_length") is not None:
-            draft.assume(
-                "cell path not used", "the path length serves to check the cell volume only"
-            )
+            draft.assume("cell path not used", "the path length serves to check the cell volume only")
     elif draft.number("tanks") is not None or draft.number("path_length") is not None:
         key = "tanks" if draft.number("tanks") is not None else "path_length"
         draft.fault(key, "the cell's volume with it", 'cell = "10 uL"')
@@ -42,51 +47,52 @@ def _detector(draft: Draft) -> Elements:
         draft.fault("cycle", "rate or cycle, not both", "leave one out")
     period = 1 / rate if rate else cycle
     if period:
-        draft.assume(
-            "averaging between points", "the signal is averaged over the whole time between points"
-        )
+        draft.assume("averaging between points", "the signal is averaged over the whole time between points")
         elements.append(Electronics(Boxcar(period), "rate"))
     return tuple(elements)
 
 
 def _noise_filter(draft: Draft) -> list[Element]:
-    """Return the detector's noise filter; at most one of time_constant and rise_time is given."""
+    """Return the detector's noise filter; none where there is no setting, or where it is at fault."""
     tau, rise = draft.number("time_constant"), draft.number("rise_time")
-    form, stages = draft.text("filter"), draft.number("stages")
-    if tau is not None and rise is not None:
-        draft.fault("rise_time", "time_constant or rise_time, not both", "leave one out")
+    if _is_contradictory(draft) or (tau is None and rise is None):
         return []
-    if tau is None and rise is None:
-        for key in ("filter", "stages"):
-            if key in draft.values:
-                draft.fault(key, "time_constant or rise_time with it", 'time_constant = "0.1 s"')
-        return []
-    if form == "boxcar" and tau is not None:
-        draft.fault(
-            "time_constant",
-            "no time constant: a boxcar has none",
-            "rise_time (10-90 %), or rate alone",
-        )
-        return []
-    if stages is not None and form in ("gaussian", "boxcar"):
-        draft.fault("stages", "stages of a first-order filter only", "leave stages out")
-        return []
+    form, stages = draft.text("filter"), int(draft.number("stages") or 1)
     if form is None:
-        draft.assume(
-            "first-order filter",
-            f"{'time_constant' if rise is None else 'rise_time'} read as that of "
-            f"{f'{stages:g} equal' if stages else 'one'} first-order stage{'s' if stages else ''}",
-        )
-    count = int(stages or 1)
+        key = "time_constant" if rise is None else "rise_time"
+        count = f"{stages} equal first-order stages" if stages > 1 else "one first-order stage"
+        draft.assume("first-order filter", f"{key} read as that of {count}")
+    made: Filter
     if form == "gaussian":
-        return [
-            Electronics(GaussianFilter(tau if rise is None else rise / GAUSSIAN_RISE), "filter")
-        ]
-    if form == "boxcar" and rise is not None:
-        return [Electronics(Boxcar(rise / BOXCAR_RISE * math.sqrt(12)), "filter")]
-    if rise is not None:
-        tau = rise / first_order_rise(count) / math.sqrt(count)
-    return [Electronics(FirstOrder(tau or 0.0, float(count)), "filter")]
+        made = GaussianFilter(rise / GAUSSIAN_RISE if rise is not None else tau or 0.0)
+    elif form == "boxcar":
+        made = Boxcar((rise or 0.0) / BOXCAR_RISE * math.sqrt(12))
+    elif rise is not None:
+        made = FirstOrder(rise / first_order_rise(stages) / math.sqrt(stages), float(stages))
+    else:
+        made = FirstOrder(tau or 0.0, float(stages))
+    return [Electronics(made, "filter")]
+
+
+def _is_contradictory(draft: Draft) -> bool:
+    """Report filter settings that do not go together; return whether there are any."""
+    has_tau, has_rise = ("time_constant" in draft.values), ("rise_time" in draft.values)
+    form = draft.text("filter")
+    if has_tau and has_rise:
+        draft.fault("rise_time", "time_constant or rise_time, not both", "leave one out")
+    elif not has_tau and not has_rise:
+        given = [key for key in ("filter", "stages") if key in draft.values]
+        for key in given:
+            draft.fault(key, "time_constant or rise_time with it", 'time_constant = "0.1 s"')
+        return bool(given)
+    elif form == "boxcar" and has_tau:
+        expected = "no time constant: a boxcar has none"
+        draft.fault("time_constant", expected, "rise_time (10-90 %), or rate alone")
+    elif form in ("gaussian", "boxcar") and "stages" in draft.values:
+        draft.fault("stages", "stages of a first-order filter only", "leave stages out")
+    else:
+        return False
+    return True
 
 
 DETECTOR = Kind(

@@ -7,7 +7,7 @@ import math
 from xcol.filters.volumes import dead_gap_volume
 from xcol.flowpath.elements import Block, Bore, Injected, Mixed
 from xcol.flowpath.findings import Draft
-from xcol.flowpath.keys import Key, Later, Measure, Number, Only, Text
+from xcol.flowpath.keys import Key, Later, Measure, Only, Text, yes
 from xcol.flowpath.kinds.table import (
     DROP,
     TANKS,
@@ -114,7 +114,7 @@ FITTING = Kind(
         Key("tanks", TANKS, "number of tanks that it mixes like"),
         Key(
             "remix",
-            Only(bool, lambda raw: raw is not True, "leave remix out"),
+            Only(yes, lambda raw: raw is not True, "leave remix out"),
             "whether it mixes the stream across the bore",
         ),
         DROP,
