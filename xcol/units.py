@@ -17,6 +17,8 @@ from functools import cache
 from typing import TYPE_CHECKING
 
 if TYPE_CHECKING:
+    from collections.abc import Sequence
+
     import pint
 
 MAX_LENGTH = 80  # characters of a quantity; longer text is not a quantity
@@ -224,7 +226,7 @@ def parse(text: str, quantity: Quantity, *, fraction: bool = False) -> float:
         raise UnitError(
             quote(text),
             f"{quantity.name} as one decimal number; an inch fraction names an outside or port diameter",
-            "the bore (inside diameter) in mm or in, if a bore is asked for",
+            'a bore (inside diameter), as in "0.010 in"; an outside diameter can go into note',
         )
     value, unit = split(text)
     if not unit and quantity is not RATIO:
@@ -236,9 +238,9 @@ def parse(text: str, quantity: Quantity, *, fraction: bool = False) -> float:
     return result
 
 
-def missing_unit(number: object, quantity: Quantity) -> UnitError:
+def missing_unit(number: object, quantity: Quantity, units: Sequence[str] = ()) -> UnitError:
     """Return the error for a bare number where a unit belongs, with the likely readings."""
-    options = " or ".join(f'"{number} {unit}"' for unit in quantity.likely[:3])
+    options = " or ".join(f'"{number} {unit}"' for unit in (units or quantity.likely)[:3])
     return UnitError(f"{number}, without a unit", f"{quantity.name} with its unit", options)
 
 

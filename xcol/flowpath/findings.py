@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from dataclasses import dataclass, field
 from typing import TYPE_CHECKING
 
@@ -45,8 +46,7 @@ class Findings:
     def raise_faults(self) -> None:
         """Raise ``InputError`` with all faults in the order of the file, if there are any."""
         if self.faults:
-            ordered = sorted(self.faults, key=lambda fault: fault.place.line or 0)
-            raise InputError(tuple(ordered))
+            raise InputError(tuple(sorted(self.faults, key=_order)))
 
 
 @dataclass
@@ -80,7 +80,7 @@ class Draft:
             return ""
         if self.kind == "peak":
             return f"peak {self.position}{name}"
-        return f"part {self.position} ({self.kind}{name})"
+        return f"part {self.position} ({self.kind}{name})" if self.kind else f"part {self.position}"
 
     def place(self, key: str = "") -> Place:
         """Return the place of a key, or of the part."""
@@ -99,3 +99,9 @@ class Draft:
     def assume(self, short: str, text: str) -> None:
         """Add an assumption that names the part."""
         self.findings.assume(short, f"{self.label}: {text}")
+
+
+def _order(fault: Fault) -> tuple[int, int]:
+    """Order faults by line, and on one line by the part's or peak's number."""
+    number = re.search(r"\d+", fault.place.part)
+    return fault.place.line or 0, int(number[0]) if number else 0

@@ -3,11 +3,12 @@
 from __future__ import annotations
 
 import math
+import re
 from collections.abc import Callable
 from dataclasses import dataclass
 from typing import Protocol
 
-from xcol.units import RATIO, Quantity, UnitError, missing_unit, parse, quote, split, write
+from xcol.units import RATIO, Quantity, UnitError, convert, missing_unit, parse, quote, split, write
 
 Value = float | str | bool
 
@@ -47,7 +48,7 @@ class Measure:
     def __call__(self, raw: object) -> float:
         """Return the value in SI units."""
         if isinstance(raw, int | float) and not isinstance(raw, bool) and self.quantity is not RATIO:
-            raise missing_unit(raw, self.quantity)
+            raise missing_unit(raw, self.quantity, self._sensible(float(raw)))
         value = parse(_text_or_number(raw, self.quantity), self.quantity, fraction=self.fraction)
         self.check(value, raw)
         return value
@@ -61,23 +62,28 @@ class Measure:
         raise UnitError(
             f"{described(raw)}, which is {write(value, unit, self.quantity)}",
             f"{self.quantity.name} of {span}" + (", or 0" if self.zero else ""),
-            self._other_unit(raw),
+            self._other_unit(value, str(raw)),
         )
 
-    def _other_unit(self, raw: object) -> str:
-        """Propose the units in which the same number would make sense."""
-        try:
-            number, _ = split(str(raw))
-        except UnitError:
-            return "a size within that range"
-        options = [
-            f'"{number:g} {unit}"'.replace(' "', '"')
+    def _other_unit(self, value: float, text: str) -> str:
+        """Propose the units in which the number that was typed would make sense."""
+        if value < 0:
+            return "a size above zero"
+        typed = {float(found.replace(",", ".")) for found in re.findall(r"\d+(?:[.,]\d+)?(?:[eE][+-]?\d+)?", text)}
+        for unit in self.quantity.likely:
+            number = convert(value, unit, self.quantity)
+            if any(math.isclose(number, known, rel_tol=1e-6) for known in typed):
+                options = [f'"{number:g} {other}"' for other in self._sensible(number)]
+                return f"did you mean {' or '.join(options)}?" if options else "a size within that range"
+        return "a size within that range"
+
+    def _sensible(self, number: float) -> list[str]:
+        """Return the usual units in which this number is within the range."""
+        return [
+            unit
             for unit in self.quantity.likely
             if self.low <= parse(f"{number:.17g} {unit}", self.quantity) <= self.high
         ]
-        if number < 0:
-            return "a size above zero"
-        return f"did you mean {' or '.join(options)}?" if options else "a size within that range"
 
 
 @dataclass(frozen=True)
@@ -93,7 +99,10 @@ class Number:
         """Return the number."""
         value = raw
         if isinstance(raw, str):
-            value, unit = split(raw)
+            try:
+                value, unit = split(raw)
+            except UnitError as error:
+                raise UnitError(error.read, self.what, "a number, without quotes") from None
             if unit:
                 raise UnitError(f"{quote(raw)}, with the unit {quote(unit)}", self.what, f"{value:g} alone")
         if isinstance(value, bool) or not isinstance(value, int | float):
@@ -151,7 +160,7 @@ class Later:
         """Raise ``UnitError``: silence would be a wrong answer."""
         raise UnitError(
             described(raw),
-            "a key that this version of xcol can compute: not yet this one",
+            "not yet: the file format has this, but this version of xcol does not compute it",
             self.instead,
         )
 

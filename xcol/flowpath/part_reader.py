@@ -19,7 +19,7 @@ def read_part(
     raw: object, position: int, file: str, lines: dict[str, int], findings: Findings
 ) -> tuple[str, Part | None]:
     """Return the entry's kind ("" if unknown) and the part, None where faults were found in it."""
-    draft = Draft("part", "", position, file, lines, findings)
+    draft = Draft("", "", position, file, lines, findings)
     if not isinstance(raw, dict):
         draft.fault(
             "",
@@ -69,13 +69,17 @@ def read_keys(raw: dict[str, object], keys: Iterable[Key], draft: Draft) -> None
             draft.findings.fault_of(draft.place(key.name), error)
 
 
-def refuse_unknown(raw: dict[str, object], known: tuple[str, ...], draft: Draft) -> None:
-    """Report the keys that are not among the known ones, each with the nearest that is."""
+def refuse_unknown(
+    raw: dict[str, object], keys: Iterable[Key], others: tuple[str, ...], draft: Draft
+) -> None:
+    """Report what is neither one of the keys nor one of the ``others``, with the nearest that is."""
+    named = {key.name: key for key in keys}
+    known = (*others, *named)
     for word in raw:
         if word not in known:
             plain = OTHER_WORDS.get(word) or OTHER_WORDS.get(word.lower(), "")
             near = plain if plain in known else nearest(word.lower(), known)
-            listed = ", ".join(known)
+            listed = ", ".join(w for w in known if w in others or not isinstance(named[w].read, Later))
             draft.fault(
                 word,
                 f"one of its keys: {listed}",
@@ -120,8 +124,8 @@ def _kind_of(raw: dict[str, object], draft: Draft) -> Kind | None:
 
 
 def _read_keys(raw: dict[str, object], kind: Kind, draft: Draft) -> None:
-    read_keys(raw, (key for name in kind.key_names if (key := kind.key(name))), draft)
-    refuse_unknown(raw, kind.key_names, draft)
+    read_keys(raw, kind.all_keys, draft)
+    refuse_unknown(raw, kind.all_keys, (kind.name,), draft)
 
 
 def _read_size(raw: object, kind: Kind, draft: Draft) -> None:
@@ -152,7 +156,10 @@ def _read_size(raw: object, kind: Kind, draft: Draft) -> None:
             draft.fault("", f"its size once: {ways}", "leave the others out", "more than one size")
         return
     if error is not None:
-        draft.findings.fault_of(draft.place(kind.name), error)
+        suggestion = error.suggestion
+        if not kind.ways:  # a size is not needed, so this may be a name
+            suggestion += f', or name = "{text[:40]}" if it is the name'
+        draft.findings.fault(draft.place(kind.name), error.read, error.expected, suggestion)
 
 
 def _take_sizes(sizes: dict[str, float], started: set[str], kind: Kind, draft: Draft) -> None:
@@ -185,7 +192,6 @@ def _size_is_missing(started: set[str], kind: Kind, draft: Draft) -> None:
 
 
 def _readings(kind: Kind, draft: Draft) -> Iterable[Reading]:
-    for name in kind.key_names:
-        key = kind.key(name)
-        if key and name in draft.values and name != "name":
-            yield Reading(name, draft.values[name], key.quantity)
+    for key in kind.all_keys:
+        if key.name in draft.values and key.name != "name":
+            yield Reading(key.name, draft.values[key.name], key.quantity)

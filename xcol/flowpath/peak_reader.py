@@ -41,7 +41,7 @@ def read_peaks(
         if isinstance(name := entry.get("name"), str):
             draft.name = " ".join(name.split())
         read_keys(entry, PEAK_KEYS.values(), draft)
-        refuse_unknown(entry, tuple(PEAK_KEYS), draft)
+        refuse_unknown(entry, PEAK_KEYS.values(), (), draft)
         drafts.append(draft)
     return drafts
 

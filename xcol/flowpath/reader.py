@@ -41,7 +41,7 @@ def parse(text: str, file: str) -> Instrument:
 
     top = Draft("file", "", 0, file, lines.of(), findings)
     read_keys(data, FILE_KEYS.values(), top)
-    refuse_unknown(data, (*FILE_KEYS, "path", "peaks"), top)
+    refuse_unknown(data, FILE_KEYS.values(), ("path", "peaks"), top)
     if "flow" not in data:
         place = Place(file, None, "", "flow")
         findings.fault(place, "nothing", "the flow rate", 'flow = "1.0 mL/min"')

@@ -27,10 +27,10 @@ def tube_size(text: str) -> dict[str, float]:
         raise UnitError(quote(text), expected, _tube_advice(sizes))
     bare = [size for size in sizes if not split(size)[1]]
     if bare:
-        kept = [size for size in sizes if split(size)[1]]
-        other = kept[0] if kept else "0.25 mm"
-        readings = " or ".join(f'"{bare[0]} {unit} x {other}"' for unit in ("cm", "mm"))
-        raise UnitError(f"{quote(text)}: {bare[0]} without a unit", expected, readings)
+        units = ("mm", "in") if split(bare[0])[0] < 1.5 else ("cm", "mm")
+        readings = (" x ".join(f"{s} {unit}" if s == bare[0] else s for s in sizes) for unit in units)
+        options = " or ".join(f'"{reading}"' for reading in readings)
+        raise UnitError(f"{quote(text)}: {bare[0]} without a unit", expected, options)
     small, large = sorted(parse(size, LENGTH) for size in sizes)
     return {"length": large, "bore": small}
 

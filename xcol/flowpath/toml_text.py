@@ -330,6 +330,14 @@ def _backslash(spot: _Spot) -> _Slip | None:
 
 def _unknown(spot: _Spot) -> _Slip:
     words = _AT.sub("", spot.message.splitlines()[0]).strip()
+    if spot.line.count('"') % 2:
+        return _Slip(
+            f"{quote(spot.line)}, with an odd number of quotes",
+            'each text between two quotes, "..."',
+            "look for the text that lacks one",
+            None,
+            spot.at,
+        )
     return _Slip(
         quote(spot.line) if spot.line.strip() else "the end of the file",
         "lines of TOML: key = value, lists in [ ], parts in { }",

@@ -55,19 +55,18 @@ def peaks_grid(peaks: tuple[PeakBudget, ...], flow: float) -> Grid:
     headers: tuple[str, ...]
     rows: tuple[tuple[str, ...], ...]
     if all(peak.plates_column is None for peak in peaks):
-        headers = ("peak", "σ, µL", "σ², µL²", "σ, s", "width at half height, s", "4σ, s")
+        headers = ("peak", "σ, µL", "σ², µL²", "σ, s", "4σ, s")
         rows = tuple(
             (
                 peak.peak.name,
                 three(math.sqrt(peak.variance_total * square)),
                 three(peak.variance_total * square),
                 three(peak.sigma),
-                three(HALF * peak.sigma),
                 three(4 * peak.sigma),
             )
             for peak in peaks
         )
-        return Grid(headers, rows, (False, True, True, True, True, True))
+        return Grid(headers, rows, (False, True, True, True, True))
     headers = ("peak", "k", "t_R, min", "plates", "kept", "W½, s", "column's", "Rs kept")
     rows = tuple(
         (
@@ -95,7 +94,7 @@ def detail_grid(answer: Budget, peak: PeakBudget, *, wide: bool) -> Grid:
         ("µL²", True, [three(row.variance * square) for row in peak.rows]),
         ("long-tube", True, [_or_dash(row.longtube_variance, square) for row in peak.rows]),
         ("of added", True, [percent(row.share_extra) for row in peak.rows]),
-        ("kept if gone", True, [percent(row.plates_kept_without) for row in peak.rows]),
+        ("if gone", True, [percent(row.plates_kept_without) for row in peak.rows]),
     ]
     if wide:
         columns[1:1] = [("side", False, [row.side for row in peak.rows])]

@@ -116,7 +116,8 @@ def verdict(answer: Budget, at: DetectorBudget, peak: PeakBudget) -> list[str]:
         sigma = math.sqrt(extra)
         return [
             f"Without a column, the {name_of(at.detector)} records a band of σ = {three(sigma)} µL "
-            f"({three(extra)} µL²) or {three(peak.sigma)} s."
+            f"({three(extra)} µL²) or {three(peak.sigma)} s. "
+            "Compare moments: the width at half height of such a peak says little about its variance."
         ]
     lines = [
         f"{_which(peak)}: the {name_of(at.detector)} records {plates(peak.plates_observed)} of the "

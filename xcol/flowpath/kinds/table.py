@@ -53,12 +53,12 @@ class Kind:
 
     def key(self, name: str) -> Key | None:
         """Return the key of this name, None where this kind has none."""
-        return next((key for key in (*self.keys, *COMMON) if key.name == name), None)
+        return next((key for key in self.all_keys if key.name == name), None)
 
     @property
-    def key_names(self) -> tuple[str, ...]:
-        """Names of all keys, the kind key itself included."""
-        return (self.name, *(key.name for key in (*self.keys, *COMMON)))
+    def all_keys(self) -> tuple[Key, ...]:
+        """The kind's own keys and those that all kinds have."""
+        return (*self.keys, *COMMON)
 
 
 def one_size(key: str, measure: Measure) -> Callable[[str], dict[str, float]]:
