@@ -1,0 +1,106 @@
+"""Laminar flow in a tube: the table, Φ(t*), limits, and an independent solution."""
+
+import importlib.util
+
+import numpy as np
+import pytest
+from scipy.linalg import expm
+
+from xcol.filters import laminar, laminar_modes
+
+
+def test_the_table_is_what_its_script_makes(root):
+    path = root / "tests" / "generate" / "laminar_modes.py"
+    spec = importlib.util.spec_from_file_location("generate_laminar_modes", path)
+    script = importlib.util.module_from_spec(spec)
+    spec.loader.exec_module(script)
+    made: dict = {}
+    exec(compile(script.table(), "table", "exec"), made)  # noqa: S102  (our own text)
+    # the last eigenvalues, 1e9 times the first, differ between linear algebra libraries
+    assert made["EIGENVALUES"][:25] == pytest.approx(laminar_modes.EIGENVALUES[:25], rel=1e-7)
+    assert made["WEIGHTS"][:25] == pytest.approx(laminar_modes.WEIGHTS[:25], rel=1e-5)
+    t = np.logspace(-4, 2, 30)
+    x = np.multiply.outer(t, made["EIGENVALUES"])
+    again = ((x + np.expm1(-x)) / made["EIGENVALUES"] ** 2) @ (2 * made["WEIGHTS"])
+    assert again == pytest.approx(laminar.spread(t), rel=1e-7)
+
+
+def test_the_first_eigenvalue_and_the_sums_of_the_constants():
+    assert laminar_modes.EIGENVALUES[0] == pytest.approx(12.8398, abs=5e-5)
+    weights, rates = laminar_modes.WEIGHTS, laminar_modes.EIGENVALUES
+    assert 2 * (weights / rates).sum() == pytest.approx(1 / 24, rel=1e-7)
+    assert 2 * (weights / rates**2).sum() == pytest.approx(1 / 384, rel=1e-7)
+
+
+def test_the_number_of_polynomials_does_not_matter():
+    t = np.array([1e-4, 1e-3, 0.01, 0.1, 1.0, 10.0])
+    for polynomials in (32, 48, 64):
+        rates, coupling = laminar.solve_modes(polynomials)
+        x = np.multiply.outer(t, rates[1:])
+        v = ((x + np.expm1(-x)) / rates[1:] ** 2) @ (2 * coupling[0, 1:] ** 2)
+        assert v == pytest.approx(laminar.spread(t), rel=2e-6)
+
+
+def test_a_long_tube_has_the_two_closed_terms():
+    t = np.array([1.0, 3.0, 10.0, 1e3, 1e6])
+    closed = 1 / (24 * t) - 1 / (384 * t**2)
+    assert laminar.relative_variance(t) == pytest.approx(closed, rel=3e-7)
+    assert 1 / (24 * 0.3) - 1 / (384 * 0.3**2) == pytest.approx(
+        float(laminar.relative_variance(0.3)), rel=6e-3
+    )
+
+
+def test_phi_falls_monotonically_from_unmixed_to_mixed():
+    t = np.logspace(-6, 6, 2000)
+    phi = laminar.relative_variance(t)
+    assert np.all(np.isfinite(phi))
+    assert np.all(np.diff(phi) < 0)
+    assert laminar.relative_variance(1e-3) < 1
+
+
+def finite_volumes(t_stars, units, cells=240):
+    """Second and third central moment by finite volumes in r and one matrix exponential a tube.
+
+    Independent of the program: other variables, other discretisation, raw moments made central.
+    """
+    edges = np.linspace(0, 1, cells + 1)
+    centres = (edges[1:] + edges[:-1]) / 2
+    areas = np.pi * (edges[1:] ** 2 - edges[:-1] ** 2)
+    speed = 2 * (1 - (edges[1:] ** 2 + edges[:-1] ** 2) / 2)  # mean of 2(1 − r²) over the cell
+    conductance = 2 * np.pi * edges[1:-1] / np.diff(centres)
+    diffusion = np.zeros((cells, cells))
+    for i, g in enumerate(conductance):
+        diffusion[i, i] -= g
+        diffusion[i, i + 1] += g
+        diffusion[i + 1, i + 1] -= g
+        diffusion[i + 1, i] += g
+    generator = diffusion / (areas * speed)[:, None]
+    slowness = np.diag(1 / speed)
+    moments = np.zeros(4 * cells)
+    moments[:cells] = 1
+    # dm_n/dt* = generator·m_n + n·w·slowness·m_{n−1}, from the outlet backwards
+    for t, w in zip(reversed(t_stars), reversed(units), strict=True):
+        block = np.kron(np.eye(4), generator)
+        for n in (1, 2, 3):
+            rows, columns = slice(n * cells, (n + 1) * cells), slice((n - 1) * cells, n * cells)
+            block[rows, columns] = n * w * slowness
+        moments = expm(block * t) @ moments
+    flux = areas * speed / (areas * speed).sum()
+    m1, m2, m3 = (flux @ moments[n * cells : (n + 1) * cells] for n in (1, 2, 3))
+    return m2 - m1**2, m3 - 3 * m1 * m2 + 2 * m1**3
+
+
+@pytest.mark.parametrize(
+    ("t_stars", "units"), [([0.1], [1.0]), ([0.05, 0.1, 0.03], [1.0, 0.5, 3.0]), ([1.5], [2.0])]
+)
+def test_second_and_third_moment_against_finite_volumes(t_stars, units):
+    variance, third = finite_volumes(t_stars, units)
+    assert laminar.run_third_moment(t_stars, units) == pytest.approx(third, rel=5e-3)
+    if len(t_stars) == 1:
+        assert units[0] ** 2 * laminar.spread(t_stars[0]) == pytest.approx(variance, rel=2e-3)
+
+
+def test_the_third_moment_of_a_cut_tube_is_that_of_the_whole():
+    whole = laminar.run_third_moment([0.2], [3.0])
+    assert laminar.run_third_moment([0.05, 0.15], [3.0, 3.0]) == pytest.approx(whole, rel=1e-10)
+    assert laminar.run_third_moment([0.0, 0.2], [5.0, 3.0]) == pytest.approx(whole, rel=1e-10)

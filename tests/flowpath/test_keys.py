@@ -1,0 +1,97 @@
+"""How values are read."""
+
+import datetime
+
+import pytest
+
+from xcol.flowpath.keys import Choice, Later, Measure, Number, Only, Text, described, nearest, yes
+from xcol.units import LENGTH, RATIO, UnitError
+
+BORE = Measure(LENGTH, 1e-6, 1e-2)
+SHARE = Measure(RATIO, 0.2, 0.99)
+
+
+def test_a_measure_is_a_text_with_its_unit():
+    assert BORE("0.25 mm") == pytest.approx(0.25e-3)
+    assert SHARE(0.65) == SHARE("65 %") == SHARE("0.65") == pytest.approx(0.65)
+
+
+@pytest.mark.parametrize("raw", [0.25, 1, True, None, [], {}, "", "  ", datetime.date(2020, 1, 1), "x", "75 mm", "-1 mm"])
+def test_what_is_no_bore(raw):
+    with pytest.raises(UnitError) as caught:
+        BORE(raw)
+    assert caught.value.suggestion
+
+
+def test_a_bare_number_is_offered_in_the_units_that_make_sense():
+    with pytest.raises(UnitError) as caught:
+        BORE(75)
+    assert '"75 um"' in caught.value.suggestion
+    assert '"75 mm"' not in caught.value.suggestion
+
+
+def test_an_absurd_size_is_offered_in_a_unit_that_makes_sense():
+    with pytest.raises(UnitError) as caught:
+        BORE("75 mm")
+    assert '"75 um"' in caught.value.suggestion
+    with pytest.raises(UnitError) as caught:
+        SHARE(65)
+    assert '"65 %"' in caught.value.suggestion
+
+
+def test_zero_only_where_it_is_allowed():
+    assert Measure(LENGTH, 1e-6, 1.0, zero=True)("0 mm") == 0
+    with pytest.raises(UnitError):
+        BORE("0 mm")
+
+
+@pytest.mark.parametrize("raw", [11000, 11000.0, "11000", "1.1e4"])
+def test_a_number(raw):
+    assert Number(1, 1e8, "a plate number")(raw) == 11000
+
+
+@pytest.mark.parametrize("raw", [True, "x", "11000 mm", 0, -1, 1e9, float("nan"), float("inf"), [], "11,000"])
+def test_what_is_no_number(raw):
+    with pytest.raises(UnitError):
+        Number(1, 1e8, "a plate number")(raw)
+
+
+def test_whole_numbers():
+    assert Number(1, 20, "stages", whole=True)(2.0) == 2
+    with pytest.raises(UnitError):
+        Number(1, 20, "stages", whole=True)(2.5)
+
+
+def test_texts_are_one_line_without_control_characters():
+    assert Text()(" a\x1b[31m\n b ") == "a [31m b"
+    for raw in (1, [], "x" * 201):
+        with pytest.raises(UnitError):
+            Text()(raw)
+
+
+def test_choices_propose_the_nearest():
+    forms = Choice(("first-order", "gaussian"))
+    assert forms("First_Order") == "first-order"
+    with pytest.raises(UnitError) as caught:
+        forms("gausian")
+    assert "gaussian" in caught.value.suggestion
+
+
+def test_what_is_not_computed_yet_is_refused():
+    for reader, raw in ((Later(), "x"), (Only(yes, lambda raw: raw is not True, "leave it out"), False)):
+        with pytest.raises(UnitError) as caught:
+            reader(raw)
+        assert "not yet" in caught.value.expected
+    assert Only(yes, lambda raw: raw is not True, "")(True) is True
+
+
+def test_the_nearest_word():
+    assert nearest("tempreature", ("temperature", "title")) == "temperature"
+    assert nearest("xyz", ("temperature", "title")) == ""
+
+
+def test_values_are_described():
+    assert described([]) == "a list"
+    assert described({}) == "a table"
+    assert described("") == "an empty text"
+    assert len(described("y" * 1000)) < 80
