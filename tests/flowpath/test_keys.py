@@ -16,7 +16,9 @@ def test_a_measure_is_a_text_with_its_unit():
     assert SHARE(0.65) == SHARE("65 %") == SHARE("0.65") == pytest.approx(0.65)
 
 
-@pytest.mark.parametrize("raw", [0.25, 1, True, None, [], {}, "", "  ", datetime.date(2020, 1, 1), "x", "75 mm", "-1 mm"])
+@pytest.mark.parametrize(
+    "raw", [0.25, 1, True, None, [], {}, "", "  ", datetime.date(2020, 1, 1), "x", "75 mm", "-1 mm"]
+)
 def test_what_is_no_bore(raw):
     with pytest.raises(UnitError) as caught:
         BORE(raw)

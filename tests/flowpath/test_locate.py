@@ -60,6 +60,6 @@ def test_every_key_of_the_examples_is_found(examples):
                     assert key in rows[lines[(kind, index, key)] - 1]
 
 
-@given(st.text(alphabet='[]{}=,"\'#\n ab.1\\', max_size=60))
+@given(st.text(alphabet="[]{}=,\"'#\n ab.1\\", max_size=60))
 def test_any_text_ends(text):
     key_lines(text)

@@ -8,7 +8,14 @@ from xcol.flowpath.source import MOST_BYTES, read_text
 
 @pytest.mark.parametrize(
     "data",
-    [b"", b"  \n\t\n", b"\x00\x01\x02", b'flow = "1 \xb5L/min"\n', 'flow = "1"'.encode("utf-16"), b"a" * (MOST_BYTES + 1)],
+    [
+        b"",
+        b"  \n\t\n",
+        b"\x00\x01\x02",
+        b'flow = "1 \xb5L/min"\n',
+        'flow = "1"'.encode("utf-16"),
+        b"a" * (MOST_BYTES + 1),
+    ],
 )
 def test_what_is_no_path_file(tmp_path, data):
     path = tmp_path / "f.toml"

@@ -6,7 +6,9 @@ from hypothesis import strategies as st
 
 from xcol.flowpath.toml_text import load
 
-GOOD = 'path = [\n  { inject = "20 uL" },\n  { tube = "40 cm x 0.25 mm", name = "a" },\n]\nflow = "1 mL/min"\n'
+GOOD = (
+    'path = [\n  { inject = "20 uL" },\n  { tube = "40 cm x 0.25 mm", name = "a" },\n]\nflow = "1 mL/min"\n'
+)
 DATA = {"path": [{"inject": "20 uL"}, {"tube": "40 cm x 0.25 mm", "name": "a"}], "flow": "1 mL/min"}
 
 
@@ -83,7 +85,7 @@ def test_very_deep_lists_are_refused():
     assert len(faults) == 1
 
 
-@given(st.text(alphabet='[]{}=,"\'#\n ab.1:;“”\\\t-', max_size=80))
+@given(st.text(alphabet="[]{}=,\"'#\n ab.1:;“”\\\t-", max_size=80))
 def test_any_text_ends_with_data_or_faults(text):
     data, _, faults = load(text, "f")
     assert data is not None or faults

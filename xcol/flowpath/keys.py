@@ -69,7 +69,9 @@ class Measure:
         """Propose the units in which the number that was typed would make sense."""
         if value < 0:
             return "a size above zero"
-        typed = {float(found.replace(",", ".")) for found in re.findall(r"\d+(?:[.,]\d+)?(?:[eE][+-]?\d+)?", text)}
+        typed = {
+            float(found.replace(",", ".")) for found in re.findall(r"\d+(?:[.,]\d+)?(?:[eE][+-]?\d+)?", text)
+        }
         for unit in self.quantity.likely:
             number = convert(value, unit, self.quantity)
             if any(math.isclose(number, known, rel_tol=1e-6) for known in typed):

@@ -27,6 +27,29 @@ def key_lines(text: str) -> dict[Path, int]:
     return _Scan(text).lines
 
 
+class KeyLines:
+    """The lines of a file's keys, looked up by path."""
+
+    def __init__(self, lines: dict[Path, int]) -> None:
+        self._lines = lines
+
+    def line(self, path: Path) -> int | None:
+        """Return the line of one key, None where it is not in the file."""
+        return self._lines.get(path)
+
+    def of(self, *path: str | int) -> dict[str, int]:
+        """Return the lines of the keys right below a path, and its own as ""."""
+        depth = len(path)
+        found = {
+            str(key[depth]): line
+            for key, line in self._lines.items()
+            if len(key) == depth + 1 and key[:depth] == path
+        }
+        if path in self._lines:
+            found[""] = self._lines[path]
+        return found
+
+
 class _Scan:
     """One pass over the text; trusts it to be valid, and stops quietly where it is not."""
 

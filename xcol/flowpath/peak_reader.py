@@ -3,38 +3,32 @@
 from __future__ import annotations
 
 from dataclasses import replace
-from typing import TYPE_CHECKING
-
 from xcol.flowpath import slips
 from xcol.flowpath.chain import dead_time, transit
 from xcol.flowpath.elements import Bed
 from xcol.flowpath.file_keys import PEAK_KEYS
 from xcol.flowpath.findings import Draft, Findings
 from xcol.flowpath.keys import described
+from xcol.flowpath.locate import KeyLines
 from xcol.flowpath.model import Instrument, Peak
 from xcol.flowpath.part_reader import read_keys, refuse_unknown
 from xcol.units import TIME, write
-
-if TYPE_CHECKING:
-    from collections.abc import Mapping
 
 DEFAULT_K = (1.0, 2.0, 5.0, 10.0)
 _POSITIONS = ("k", "retention", "elution_volume")
 
 
-def read_peaks(
-    raw: object, file: str, lines: Mapping[int, dict[str, int]], findings: Findings
-) -> list[Draft]:
+def read_peaks(raw: object, file: str, lines: KeyLines, findings: Findings) -> list[Draft]:
     """Read the entries of ``peaks`` (None: there are none) as drafts; faults go to the findings."""
     if raw is None:
         return []
     if not isinstance(raw, list):
-        draft = Draft("peak", "", 1, file, lines.get(-1, {}), findings)
+        draft = Draft("peak", "", 1, file, lines.of(), findings)
         draft.fault("peaks", "a list, peaks = [ { k = 2 }, ... ]", "peaks = [ { k = 2 } ]", described(raw))
         return []
     drafts = []
     for index, entry in enumerate(raw):
-        draft = Draft("peak", "", index + 1, file, lines.get(index, {}), findings)
+        draft = Draft("peak", "", index + 1, file, lines.of("peaks", index), findings)
         if not isinstance(entry, dict):
             draft.fault("", "a peak in braces, { k = 2 }", "put the peak in { }", described(entry))
             continue

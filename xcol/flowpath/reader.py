@@ -5,12 +5,12 @@ from __future__ import annotations
 from dataclasses import replace
 from typing import Any
 
-from xcol.errors import Place
+from xcol.errors import InputError, Place
 from xcol.flowpath import slips
 from xcol.flowpath.file_keys import FILE_KEYS
 from xcol.flowpath.findings import Draft, Findings
 from xcol.flowpath.keys import described
-from xcol.flowpath.locate import Path, key_lines
+from xcol.flowpath.locate import KeyLines, key_lines
 from xcol.flowpath.model import Assumption, Instrument, Part
 from xcol.flowpath.part_reader import read_keys, read_part, refuse_unknown
 from xcol.flowpath.peak_reader import check_positions, peaks_of, read_peaks
@@ -35,9 +35,8 @@ def parse(text: str, file: str) -> Instrument:
     data, mended, faults = load(text, file)
     findings.faults += faults
     if data is None:
-        findings.raise_faults()
-        data = {}
-    lines = _Lines(key_lines(mended))
+        raise InputError(tuple(faults))
+    lines = KeyLines(key_lines(mended))
 
     top = Draft("file", "", 0, file, lines.of(), findings)
     read_keys(data, FILE_KEYS.values(), top)
@@ -47,7 +46,7 @@ def parse(text: str, file: str) -> Instrument:
         findings.fault(place, "nothing", "the flow rate", 'flow = "1.0 mL/min"')
 
     kinds, parts = _read_path(data, file, lines, findings)
-    drafts = read_peaks(data.get("peaks"), file, lines.peaks(len(data.get("peaks") or ())), findings)
+    drafts = read_peaks(data.get("peaks"), file, lines, findings)
     check_positions(drafts, "column" in kinds or not kinds)
     findings.raise_faults()
     return _instrument(top, tuple(parts), drafts, findings)
@@ -97,7 +96,7 @@ def _ends_of_ranges(instrument: Instrument) -> list[Assumption]:
 
 
 def _read_path(
-    data: dict[str, Any], file: str, lines: _Lines, findings: Findings
+    data: dict[str, Any], file: str, lines: KeyLines, findings: Findings
 ) -> tuple[list[str], list[Part]]:
     """Return the kinds of all entries, in order, and the parts that could be read."""
     entries = data.get("path")
@@ -131,7 +130,7 @@ def _read_path(
 
 
 def _check_kinds(
-    kinds: list[str], entries: list[Any], place: Place, lines: _Lines, findings: Findings
+    kinds: list[str], entries: list[Any], place: Place, lines: KeyLines, findings: Findings
 ) -> None:
     """Report a path without injection or detector, and a second injection.
 
@@ -161,28 +160,3 @@ def _check_kinds(
                 where = Place(place.file, lines.line(("path", index)), f"part {index + 1} (column)")
                 findings.fault(where, "a column that is not between injection and last detector",
                                "parts in order of flow", "move it between them")  # fmt: skip
-
-
-class _Lines:
-    """The lines of a file's keys, by path."""
-
-    def __init__(self, lines: dict[Path, int]) -> None:
-        self._lines = lines
-
-    def line(self, path: Path) -> int | None:
-        return self._lines.get(path)
-
-    def of(self, *path: str | int) -> dict[str, int]:
-        """Return the lines of the keys below a path, and its own as ""."""
-        depth = len(path)
-        found = {
-            str(key[depth]): line
-            for key, line in self._lines.items()
-            if len(key) == depth + 1 and key[:depth] == path
-        }
-        if path in self._lines:
-            found[""] = self._lines[path]
-        return found
-
-    def peaks(self, count: int) -> dict[int, dict[str, int]]:
-        return {index: self.of("peaks", index) for index in range(count)} | {-1: self.of()}
