@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
 
 from xcol.flowpath.elements import Bed, Bore
@@ -51,9 +51,22 @@ def pressures(instrument: Instrument) -> Pressures:
         inlet = None if drop is None or inlet is None else drop + inlet
         rows.append(PressureRow(part, instrument.flow, drop, inlet, _reynolds(part, instrument)))
     rows.reverse()
+    if rows[0].inlet is None and instrument.pump_pressure is not None:
+        rows = _down_from_pump(rows, instrument.pump_pressure)
     for row in rows:
         warnings += _limits(row)
     return Pressures(tuple(rows), tuple(warnings))
+
+
+def _down_from_pump(rows: list[PressureRow], pump: float) -> list[PressureRow]:
+    """Fill in inlet pressures from the pump on, as far as the drops are known."""
+    inlet: Drop | None = exactly(pump)
+    filled = []
+    for row in rows:
+        filled.append(replace(row, inlet=row.inlet if inlet is None else inlet))
+        known = inlet is not None and row.drop is not None
+        inlet = exactly(inlet.value - row.drop.value) if known and inlet and row.drop else None
+    return filled
 
 
 def _drop(part: Part, instrument: Instrument) -> Drop | None:
@@ -80,15 +93,18 @@ def _with_pump_pressure(
     instrument: Instrument, drops: list[Drop | None], pump: float, warnings: list[str]
 ) -> list[Drop | None]:
     """Give the columns what the rest of the path does not explain of the measured pressure."""
-    unmeasured = [part.kind == "column" and part.drop is None for part in instrument.parts]
-    others = [drop for drop, column in zip(drops, unmeasured, strict=True) if not column]
     shown = write(pump, "bar", PRESSURE)
+    unmeasured = [i for i, part in enumerate(instrument.parts) if part.kind == "column" and part.drop is None]
+    others = [drop for i, drop in enumerate(drops) if i not in unmeasured]
     if any(drop is None for drop in others):
-        warnings.append(f"pump_pressure {shown}: not used, since the tubes' drop is not computed")
+        warnings.append(f"pump_pressure {shown}: not shared out, since the tubes' drop is not computed")
         return drops
-    explained = sum(drop.value for drop in others if drop is not None)
+    unknown = [i for i in unmeasured if drops[i] is None]
+    explained = _sum(others)
+    if unknown:  # columns with a computed drop keep it
+        explained += _sum([drops[i] for i in unmeasured])
     rest = pump - explained
-    if not any(unmeasured):
+    if not unmeasured:
         if abs(rest) > 0.1 * pump:
             warnings.append(
                 f"pump_pressure {shown} contradicts the drops of the parts, "
@@ -97,30 +113,41 @@ def _with_pump_pressure(
         return drops
     if rest <= 0:
         warnings.append(
-            f"pump_pressure {shown} contradicts the drops computed for the parts other than the column, "
+            f"pump_pressure {shown} contradicts the drops computed for the rest of the path, "
             f"{write(explained, 'bar', PRESSURE)}: a bore, the viscosity or the flow is not as entered"
         )
         return drops
-    computed = [drop for drop, column in zip(drops, unmeasured, strict=True) if column]
-    known = [drop.value for drop in computed if drop is not None]
-    if len(known) == len(computed):
-        total = sum(known)
-        low = sum(drop.low for drop in computed if drop is not None)
-        high = sum(drop.high for drop in computed if drop is not None)
-        if not low / 1.5 <= rest <= high * 1.5:
-            warnings.append(
-                f"pump_pressure leaves {write(rest, 'bar', PRESSURE)} for the column, where its bed "
-                f"should take {write(low, 'bar', PRESSURE)} to {write(high, 'bar', PRESSURE)}: a "
-                "blocked frit, a particle size or a viscosity that is not as entered?"
-            )
-        shares = [value / total for value in known]
-    else:
-        shares = [1 / len(computed)] * len(computed)
-    given = iter(shares)
-    return [
-        exactly(rest * next(given)) if column else drop
-        for drop, column in zip(drops, unmeasured, strict=True)
-    ]
+    if len(unknown) > 1:
+        warnings.append(
+            "columns without a particle size share what is left of pump_pressure as length over bore squared"
+        )
+    if not unknown:
+        _compare_with_beds(rest, [drop for i in unmeasured if (drop := drops[i])], warnings)
+    taking = unknown or unmeasured
+    weights = {i: _weight(instrument.parts[i], None if unknown else drops[i]) for i in taking}
+    total = sum(weights.values())
+    return [exactly(rest * weights[i] / total) if i in weights else drop for i, drop in enumerate(drops)]
+
+
+def _sum(drops: list[Drop | None]) -> float:
+    return sum(drop.value for drop in drops if drop is not None)
+
+
+def _weight(part: Part, drop: Drop | None) -> float:
+    """Return a column's weight in sharing a drop: its computed one, or length over bore squared."""
+    if drop is not None:
+        return drop.value
+    return sum(bed.length / bed.bore**2 for bed in part.elements if isinstance(bed, Bed))
+
+
+def _compare_with_beds(rest: float, beds: list[Drop], warnings: list[str]) -> None:
+    low, high = sum(bed.low for bed in beds), sum(bed.high for bed in beds)
+    if not low / 1.5 <= rest <= high * 1.5:
+        warnings.append(
+            f"pump_pressure leaves {write(rest, 'bar', PRESSURE)} for the column, where its bed should take "
+            f"{write(low, 'bar', PRESSURE)} to {write(high, 'bar', PRESSURE)}: a blocked frit, or a particle "
+            "size or viscosity that is not as entered?"
+        )
 
 
 def _limits(row: PressureRow) -> list[str]:

@@ -23,7 +23,11 @@ if TYPE_CHECKING:
 
 
 class Filter(Protocol):
-    """What a part does to the signal; parameters are floats or arrays that broadcast to a shape S."""
+    """What a part does to the signal.
+
+    Parameters are floats or arrays that broadcast to a shape S; so do the results (a moment that an
+    array parameter does not enter may come without its axes).
+    """
 
     def delay(self) -> Real:
         """Mean delay [s], shape S."""

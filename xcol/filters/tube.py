@@ -99,6 +99,8 @@ class TubeRun:
     def shares(self) -> list[Real]:
         """Each tube's part of the variance [s²]: its own, and half of what it shares with others."""
         count = len(self.tubes)
+        if not count:
+            return []
         t_stars = np.broadcast_arrays(*(np.asarray(tube.t_star) for tube in self.tubes))
         units = [tube.time_unit for tube in self.tubes]
         edges = np.concatenate([np.zeros((1, *t_stars[0].shape)), np.cumsum(t_stars, axis=0)])

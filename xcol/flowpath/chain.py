@@ -54,8 +54,8 @@ def links(instrument: Instrument, detector: Part) -> tuple[Link, ...]:
 def segments(chain: Sequence[Link]) -> list[tuple[int, ...]]:
     """Group the chain, as indices into it: tubes with nothing between them are one segment.
 
-    Everything else but electronics mixes the stream anew, and is a segment of its own. What holds
-    no volume mixes nothing, so it does not end a run.
+    Everything else is a segment of its own. What mixes the stream anew ends a run; electronics and
+    what has no size do not.
     """
     groups: list[tuple[int, ...]] = []
     run: list[int] = []
@@ -69,7 +69,7 @@ def segments(chain: Sequence[Link]) -> list[tuple[int, ...]]:
         if isinstance(link.element, Bore) and link.element.layered:
             run.append(index)
             continue
-        if not link.element.of_signal and link.element.volume > 0:
+        if link.element.remixes:
             end_run()
         groups.append((index,))
     end_run()
@@ -97,7 +97,7 @@ def transit(instrument: Instrument, detector: Part) -> float:
     return total
 
 
-def dead_time(instrument: Instrument) -> float:
-    """Hold-up time of all columns together [s]; 0 without a column."""
-    beds = (e for part in instrument.parts for e in part.elements if isinstance(e, Bed))
-    return sum(bed.void_volume for bed in beds) / instrument.flow
+def dead_time(instrument: Instrument, detector: Part) -> float:
+    """Hold-up time of the columns upstream of a detector [s]; 0 without a column."""
+    beds = (link.element for link in links(instrument, detector))
+    return sum(bed.void_volume for bed in beds if isinstance(bed, Bed)) / instrument.flow

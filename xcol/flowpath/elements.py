@@ -46,6 +46,11 @@ class Element(Protocol):
         """Whether it acts on the recorded signal of its own detector only, not on the stream."""
         ...
 
+    @property
+    def remixes(self) -> bool:
+        """Whether the stream leaves it mixed across the bore, so that a run of tubes ends in it."""
+        ...
+
     def filter(self, stream: Stream, *, read_here: bool) -> Filter:
         """Return the filter it is for this stream; ``read_here`` in the detector that records."""
         ...
@@ -58,6 +63,11 @@ class Injected:
     volume: float
     contribution: str = "injection"
     of_signal: bool = False
+
+    @property
+    def remixes(self) -> bool:
+        """Whether there is any volume to mix the stream in."""
+        return self.volume > 0
 
     def filter(self, stream: Stream, *, read_here: bool) -> Filter:
         """Return the plug."""
@@ -82,6 +92,11 @@ class Bore:
         """Volume [m³]."""
         return math.pi / 4 * self.bore**2 * self.length
 
+    @property
+    def remixes(self) -> bool:
+        """Whether it is remixed at its ends (and has a length at all)."""
+        return not self.layered and self.length > 0
+
     def filter(self, stream: Stream, *, read_here: bool) -> Tube:
         """Return the tube."""
         return Tube(self.length, self.bore, stream.flow, stream.diffusion)
@@ -100,6 +115,11 @@ class Mixed:
     contribution: str
     of_signal: bool = False
 
+    @property
+    def remixes(self) -> bool:
+        """Whether there is any volume to mix the stream in."""
+        return self.volume > 0
+
     def filter(self, stream: Stream, *, read_here: bool) -> Filter:
         """Return the tanks."""
         return TanksInSeries(self.volume, stream.flow, self.tanks)
@@ -113,6 +133,11 @@ class Cell:
     tanks: float | None = None
     contribution: str = "cell"
     of_signal: bool = False
+
+    @property
+    def remixes(self) -> bool:
+        """Whether there is any volume to mix the stream in."""
+        return self.volume > 0
 
     def filter(self, stream: Stream, *, read_here: bool) -> Filter:
         """Return the plug (its whole volume is passed on the way to a later detector) or tanks."""
@@ -130,6 +155,11 @@ class Electronics:
     volume: float = 0.0
     of_signal: bool = True
 
+    @property
+    def remixes(self) -> bool:
+        """Never: the stream does not meet it."""
+        return False
+
     def filter(self, stream: Stream, *, read_here: bool) -> Filter:
         """Return the filter."""
         return self.made
@@ -143,6 +173,11 @@ class Block:
     volume: float
     contribution: str = "block"
     of_signal: bool = False
+
+    @property
+    def remixes(self) -> bool:
+        """Whether it spreads anything: then its inside is taken to mix the stream."""
+        return self.spread > 0
 
     def filter(self, stream: Stream, *, read_here: bool) -> Filter:
         """Return the block."""
@@ -167,9 +202,19 @@ class Bed:
     of_signal: bool = False
 
     @property
+    def porosity_is_assumed(self) -> bool:
+        """Whether the interstitial porosity is a usual one, not one that was entered."""
+        return self.porosity[1] < self.porosity[2]
+
+    @property
     def volume(self) -> float:
         """Void volume [m³]."""
         return self.void_volume
+
+    @property
+    def remixes(self) -> bool:
+        """Always: a bed mixes the stream."""
+        return True
 
     def filter(self, stream: Stream, *, read_here: bool) -> Filter:
         """Return the column for an unretained band; ``retained`` gives it for the others."""

@@ -96,7 +96,7 @@ def _kind_of(raw: dict[str, object], draft: Draft) -> Kind | None:
     if len(found) == 1:
         draft.kind = found[0]
         try:
-            Later()(raw[found[0]])
+            Later("leave the part out")(raw[found[0]])
         except UnitError as error:
             draft.findings.fault_of(draft.place(found[0]), error)
         return None

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import replace
+
 from xcol.flowpath import slips
 from xcol.flowpath.chain import dead_time, transit
 from xcol.flowpath.elements import Bed
@@ -69,7 +70,7 @@ def peaks_of(
     ``diffusion`` [m²/s] serves the peaks that have none. Without drafts the peaks are k = 1, 2, 5,
     10, or one unnamed band where there is no column.
     """
-    has_column = dead_time(instrument) > 0
+    has_column = any(part.kind == "column" for part in instrument.parts)
     if not drafts:
         if diffusion is None:
             findings.fault(
@@ -118,11 +119,19 @@ def _peak(draft: Draft, instrument: Instrument, default: float | None) -> Peak |
 
 def _k_from(retention: float, draft: Draft, instrument: Instrument) -> float | None:
     """Return k from the recorded retention time: the mean delay outside the columns comes off."""
-    delay, hold_up = transit(instrument, instrument.detectors[0]), dead_time(instrument)
+    first = instrument.detectors[0]
+    delay, hold_up = transit(instrument, first), dead_time(instrument, first)
+    key = "retention" if "retention" in draft.values else "elution_volume"
+    if not hold_up:
+        draft.fault(
+            key,
+            f"a column before the first detector, {first.label}, where retention is recorded",
+            "k = 2, in its place",
+        )
+        return None
     k = (retention - delay) / hold_up - 1
     if k >= -1e-9:
         return max(k, 0.0)
-    key = "retention" if "retention" in draft.values else "elution_volume"
     least = delay + hold_up
     expected = f"at least {write(least, 's', TIME, 4)} ({write(least, 'min', TIME, 4)})"
     if key == "elution_volume":

@@ -5,8 +5,10 @@ from __future__ import annotations
 from dataclasses import replace
 from typing import Any
 
+from xcol.catalogs import packings
 from xcol.errors import InputError, Place
 from xcol.flowpath import slips
+from xcol.flowpath.elements import Bed
 from xcol.flowpath.file_keys import FILE_KEYS
 from xcol.flowpath.findings import Draft, Findings
 from xcol.flowpath.keys import described
@@ -70,8 +72,11 @@ def _instrument(top: Draft, parts: tuple[Part, ...], drafts: list[Draft], findin
     )
     slips.of_path(instrument, Place(top.file, top.lines.get("flow"), "", "flow"), findings)
     peaks = peaks_of(drafts, instrument, top.number("diffusion"), findings)
-    if "diffusion" in top.values or any("diffusion" in draft.values for draft in drafts):
-        findings.assume("D as entered", "diffusion coefficients are taken as entered")
+    _notes_on_beds(instrument, findings)
+    findings.assume(
+        "viscosity and D as entered",
+        "viscosity and diffusion coefficients are taken as entered, at whatever temperature",
+    )
     findings.raise_faults()
     return replace(
         instrument,
@@ -81,17 +86,38 @@ def _instrument(top: Draft, parts: tuple[Part, ...], drafts: list[Draft], findin
     )
 
 
+def _notes_on_beds(instrument: Instrument, findings: Findings) -> None:
+    """Say what the columns' pressure drops rest on, where they are computed at all."""
+    for part in instrument.parts:
+        for bed in part.elements:
+            if not isinstance(bed, Bed) or part.drop is not None or instrument.pump_pressure is not None:
+                continue
+            if bed.particle is None:
+                findings.warn(
+                    f"{part.label}: no particle size: its pressure drop is not computed (enter it, or a "
+                    "measured drop)"
+                )
+            elif bed.porosity_is_assumed and instrument.viscosity is not None:
+                value, low, high = bed.porosity
+                findings.assume(
+                    f"bed {value:g}",
+                    f"{part.label}: interstitial porosity {value:g} ({low:g} to {high:g}), for the pressure "
+                    f"drop only; {packings()['fully porous'].source}",
+                )
+
+
 def _ends_of_ranges(instrument: Instrument) -> list[Assumption]:
     """Return at which end of their range injection and tubes are computed."""
     ends = [
         Assumption(
             "injection a plug",
-            "the injection is a plug, the best case: a real loop can be 5 times worse",
+            "the injection is a plug, the best case: a loop that is washed out can be 5 times worse, and more "
+            "for slow molecules",
         )
     ]
     if any(part.kind == "tube" for part in instrument.parts):
         text = "tubes are straight, the worst case: bends mix the stream, and can lower a tube's "
-        ends.insert(0, Assumption("tubes straight", f"{text}variance up to 4 times"))
+        ends.insert(0, Assumption("tubes straight", f"{text}variance up to 5 times"))
     return ends
 
 

@@ -32,6 +32,8 @@ def tube_size(text: str) -> dict[str, float]:
         options = " or ".join(f'"{reading}"' for reading in readings)
         raise UnitError(f"{quote(text)}: {bare[0]} without a unit", expected, options)
     small, large = sorted(parse(size, LENGTH) for size in sizes)
+    if small == 0:  # no length, rather than no bore
+        small, large = large, small
     return {"length": large, "bore": small}
 
 
@@ -65,7 +67,7 @@ def column_size(text: str) -> dict[str, float]:
     if len(pieces) == 2:
         particle = _INSIDE.sub("", pieces[1])
         if not split(particle)[1]:
-            raise missing_unit(particle, LENGTH)
+            raise missing_unit(particle, LENGTH, ("um",))
         result["particle"] = parse(particle, LENGTH)
     return result
 
@@ -94,6 +96,6 @@ def _sizes(text: str, expected: str) -> list[str]:
 
 
 def _tube_advice(sizes: list[str]) -> str:
-    if len(sizes) == 1:
+    if len(sizes) == 1 and re.fullmatch(r"[\d.,]+\s*[A-Za-zµμ]+", sizes[0]):
         return f'"{sizes[0]} x 0.25 mm", with the tube\'s own bore'
-    return "two sizes only; an outside diameter can go into note"
+    return '"40 cm x 0.25 mm": two sizes with an x between them; anything else can go into note'

@@ -92,7 +92,9 @@ def _tube(draft: Draft) -> None:
         draft.warn(f"{shown} is the outside diameter of {outside} tubing: is the bore meant?")
     elif bore > WIDEST_USUAL_BORE:
         draft.warn(f"{shown} is wide for a connecting tube: o.d. for bore, or another unit?")
-    elif any(math.isclose(millimetres, number, rel_tol=1e-6) for number in _REEL_NUMBERS):
+    elif _says_millimetres(draft) and any(
+        math.isclose(millimetres, number, rel_tol=1e-6) for number in _REEL_NUMBERS
+    ):
         draft.warn(f"{shown}: reels show this number in inches; did you mean {millimetres:g} in?")
     else:
         stock = [row.bore for row in tubing()]
@@ -105,6 +107,12 @@ def _tube(draft: Draft) -> None:
         draft.warn(f"length {write(length, 'm', LENGTH)} is long for a connecting tube")
     if length is not None and 0 < length < 5 * bore:
         draft.warn(f"length {write(length, 'mm', LENGTH)} is less than 5 bores: no tube formula holds")
+
+
+def _says_millimetres(draft: Draft) -> bool:
+    """Whether the bore was typed in mm: nobody takes 20 um for 0.020 in."""
+    typed = draft.written.get("bore") or draft.written.get("tube", "")
+    return "um" not in typed and "µ" not in typed and "μ" not in typed
 
 
 def _fitting(draft: Draft) -> None:
@@ -179,7 +187,7 @@ def _detector(draft: Draft) -> None:
         elif not 0.1e-3 <= bore <= 3e-3:
             draft.warn(f"{shown}, which is unusual: is the cell volume or the path length off?")
     _odd_volume(draft, cell, 1e-7)
-    if draft.number("time_constant") is None and draft.number("rise_time") is None:
+    if cell is not None and draft.number("time_constant") is None and draft.number("rise_time") is None:
         draft.warn("no filter setting (time_constant or rise_time): its filter is not counted")
     for key in ("time_constant", "rise_time"):
         seconds = draft.number(key)
@@ -242,7 +250,7 @@ def _order(instrument: Instrument, findings: Findings) -> None:
     for part in instrument.parts:
         if part.position < first:
             findings.warn(f"{part.label} stands before the injection: the band never meets it")
-        elif part.position > last:
+        elif part.position > last and part.kind != "outlet":
             findings.warn(
                 f"{part.label} stands behind the last detector: it broadens nothing that is recorded; "
                 "its pressure drop loads what is upstream"

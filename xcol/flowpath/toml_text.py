@@ -254,7 +254,7 @@ def _value_without_quotes(spot: _Spot) -> _Slip | None:
     begin = spot.start + equals + 1
     line_rest = spot.text[begin : spot.end]
     in_part = before[:equals].count("{") > before[:equals].count("}")
-    ending = re.search(r"\s*(?:,\s*[A-Za-z_]\w*\s*=|\}|#|$)" if in_part else r"\s*(?:#|$)", line_rest)
+    ending = re.search(r"\s*(?:,\s*[A-Za-z_]\w*\s*=|,\s*$|\}|#|$)" if in_part else r"\s*(?:#|$)", line_rest)
     value = line_rest[: ending.start() if ending else len(line_rest)].strip()
     if not value or '"' in value or "'" in value:
         return None

@@ -22,8 +22,8 @@ def _column(draft: Draft) -> Elements:
             "plates = 11000, from the certificate or a measurement (as a first look, N is near "
             "length / (2 to 2.5 particle diameters))",
         )
-    written = draft.written.get("column", "")
-    if written and not draft.values.get("name_is_value") and length_first(written):
+    written = draft.written["column"]
+    if "bore" not in draft.written and length_first(written):
         draft.warn(
             f'"{written}" has the length first: read as bore {bore * 1e3:g} mm, length {length * 1e3:g} mm'
         )
@@ -44,16 +44,7 @@ def _column(draft: Draft) -> Elements:
         void = float(void_volume(bore, length, total))
     bed = draft.number("interstitial_porosity")
     low, high = (bed, bed) if bed is not None else usual.interstitial_range
-    if bed is None and draft.number("drop") is None:
-        bed = usual.interstitial
-        draft.assume(
-            f"bed {bed:g}",
-            f"interstitial porosity {bed:g} ({low:g} to {high:g}), for the pressure drop only; "
-            f"{usual.source}",
-        )
     particle = draft.number("particle")
-    if particle is None and draft.number("drop") is None:
-        draft.warn("no particle size: its pressure drop is not computed (enter it, or a measured drop)")
     porosity = (bed or usual.interstitial, low, high)
     return (Bed(bore, length, particle, plates or 1.0, void, porosity),)
 

@@ -33,7 +33,8 @@ def _detector(draft: Draft) -> Elements:
         if tanks is None and cell > 0:
             draft.assume(
                 "no mixing in cell",
-                "the cell passes as a plug, the best case: a real one can be 15 times worse",
+                "the cell passes as a plug, the best case: a real one can be 15 times worse, and more for "
+                "slow molecules",
             )
         elements.append(Cell(cell, tanks))
         if draft.number("path_length") is not None:

@@ -37,7 +37,7 @@ INJECT = Kind(
             "loop",
             Only(
                 VOLUMES,
-                lambda raw: isinstance(raw, str) and "x" in raw.lower(),
+                lambda raw: isinstance(raw, str) and any(sign in raw.lower() for sign in "x×*,;"),
                 'the loop\'s volume alone, loop = "20 uL"',
             ),
             "volume that the loop holds",
@@ -70,6 +70,7 @@ TUBE = Kind(
         Key("bore", TUBE_BORES, "inside diameter"),
         Key("volume", VOLUMES, "volume, in place of the length"),
         Key("material", Text(60), "material, for your own record"),
+        DROP,
         Key("bend_radius", Later(), "radius of its bends"),
         Key("coil_diameter", Later(), "diameter of its coil"),
     ),
@@ -152,6 +153,7 @@ def _block(draft: Draft) -> Elements:
     if volume is None:
         volume = 0.0
         draft.assume("block without delay", "no volume entered: the block delays nothing")
+    draft.assume("blocks mix", "the stream leaves it mixed across the bore")
     measured_at = draft.number("at_flow")
     if measured_at is not None:
         draft.assume(

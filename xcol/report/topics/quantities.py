@@ -48,7 +48,7 @@ QUANTITIES = (
         "is shown in µL² is s² times the square of the column's flow. Parts behind a detector add "
         "nothing to it. N if gone is the plate number recorded without that part.",
         (
-            "σ²_total = σ²_before + σ²_column + σ²_after + σ²_signal [s²]",
+            "σ²_total = σ²_before + σ²_column + σ²_between + σ²_after + σ²_signal [s²]",
             "N recorded/N column = σ²_column/σ²_total",
         ),
         "Isocratic elution; parts that are linear and independent of each other, runs of tubes aside.",
@@ -62,7 +62,7 @@ QUANTITIES = (
         "A part's inlet carries its own drop and all drops downstream, to atmosphere. Tubes by "
         "Hagen-Poiseuille, beds by Kozeny-Carman with the interstitial porosity, which is rarely known: "
         "the range is that of 0.36 to 0.42. A measured drop, or pump_pressure (the columns then take "
-        "what the rest does not explain), is better. Cells, fittings and mixers have no drop unless it "
+        "what the rest does not explain), is better. Cells, mixers and the volumes of fittings have no drop unless it "
         "is entered. A limit that was not entered is not checked.",
         (
             "tube: ΔP = 128·η·L·F/(π·d⁴)",
@@ -100,7 +100,8 @@ QUANTITIES = (
         "Retention and the delay outside the column",
         "A recorded retention or elution volume is the mean of the recorded peak, counted from the "
         "valve's turn. The mean delay of everything outside the columns is taken off before k is "
-        "computed: half the injected volume, tubes, fittings, half the cell, the filter's time constants, "
+        "computed: half the injected volume, tubes, fittings, half the cell (all of it where it mixes as tanks, or is "
+        "passed on the way to a later detector), the filter's time constants, "
         "half the time between data points.",
         ("k = (t_R − t_outside)/t0 − 1",),
         "Recorded at the first detector.",
