@@ -45,9 +45,9 @@ def test_a_long_tube_has_the_two_closed_terms():
     t = np.array([1.0, 3.0, 10.0, 1e3, 1e6])
     closed = 1 / (24 * t) - 1 / (384 * t**2)
     assert laminar.relative_variance(t) == pytest.approx(closed, rel=3e-7)
-    assert pytest.approx(
-        float(laminar.relative_variance(0.3)), rel=6e-3
-    ) == 1 / (24 * 0.3) - 1 / (384 * 0.3**2)
+    assert pytest.approx(float(laminar.relative_variance(0.3)), rel=6e-3) == 1 / (24 * 0.3) - 1 / (
+        384 * 0.3**2
+    )
 
 
 def test_phi_falls_monotonically_from_unmixed_to_mixed():

@@ -12,6 +12,7 @@ from typing import TYPE_CHECKING
 import numpy as np
 
 from xcol.answers.pressure import Pressures, pressures
+from xcol.filters.column import Column
 from xcol.filters.laminar import UNMIXED_BELOW
 from xcol.filters.tube import Tube
 from xcol.flowpath.chain import Link, filter_of, links, run_of, segments, transit
@@ -42,8 +43,18 @@ class Row:
     share_total: float
     plates_kept_without: float | None
     t_star: float | None = None
+    run_t_star: float | None = None  # of the whole run of tubes that it belongs to
     longtube_variance: float | None = None
     compression: float = 1.0  # θ, 1 for isocratic elution
+
+
+@dataclass(frozen=True)
+class ColumnBand:
+    """One column's own part of a peak: variance [s²] and plates."""
+
+    part: Part
+    variance: float
+    plates: float
 
 
 @dataclass(frozen=True)
@@ -56,6 +67,7 @@ class PeakBudget:
     variance_column: float
     variance_extra: float
     rows: tuple[Row, ...]
+    columns: tuple[ColumnBand, ...]
     points: float | None  # data points across 4σ
 
     @property
@@ -128,17 +140,17 @@ def _at_detector(instrument: Instrument, detector: Part) -> DetectorBudget:
     rows = spread.rows()
     extra = sum((row.variance for row in rows.values()), spread.zero)
     without = {index: spread.total_without(index) for index in rows}
-    beds = [link.element for link in chain if isinstance(link.element, Bed)]
 
     peaks = []
     for n, peak in enumerate(instrument.peaks):
-        column_time, column = _own_band(beds, peak, instrument.flow)
+        column_time, bands = _own_bands(instrument, chain, peak)
+        column = sum(band.variance for band in bands)
         total = column + float(extra[n])
         peaks.append(
             PeakBudget(
                 peak=peak,
                 retention=delay + column_time,
-                plates_column=column_time**2 / column if beds else None,
+                plates_column=column_time**2 / column if bands else None,
                 variance_column=column,
                 variance_extra=float(extra[n]),
                 rows=tuple(
@@ -150,26 +162,44 @@ def _at_detector(instrument: Instrument, detector: Part) -> DetectorBudget:
                         variance=float(row.variance[n]),
                         share_extra=float(row.variance[n] / extra[n]) if extra[n] else 0.0,
                         share_total=float(row.variance[n]) / total if total else 0.0,
-                        plates_kept_without=column / (column + float(without[i][n])) if beds else None,
+                        plates_kept_without=column / (column + float(without[i][n])) if bands else None,
                         t_star=None if row.t_star is None else float(row.t_star[n]),
+                        run_t_star=None if row.run_t_star is None else float(row.run_t_star[n]),
                         longtube_variance=None if row.longtube is None else float(row.longtube[n]),
                     )
                     for i, row in rows.items()
                 ),
+                columns=bands,
                 points=_points(chain, instrument, total),
             )
         )
     return DetectorBudget(detector, delay, tuple(peaks))
 
 
-def _own_band(beds: list[Bed], peak: Peak, flow: float) -> tuple[float, float]:
-    """Return retention time [s] and variance [s²] of the columns alone; 0, 0 without a column."""
-    stream = Stream(flow, peak.diffusion)
-    columns = [bed.retained(stream, peak.k or 0.0, bed.plates) for bed in beds]
-    time = sum(float(column.delay()) for column in columns)
-    if beds and peak.plates is not None:
-        return time, time**2 / peak.plates
-    return time, sum(float(column.variance()) for column in columns)
+def _own_bands(
+    instrument: Instrument, chain: tuple[Link, ...], peak: Peak
+) -> tuple[float, tuple[ColumnBand, ...]]:
+    """Return retention time [s] in the chain's columns, and each one's own band.
+
+    A peak's own ``plates`` are those of all columns of the path together; each column's variance
+    is scaled alike, so that a detector between columns gets its share.
+    """
+    stream = Stream(instrument.flow, peak.diffusion)
+
+    def column_of(bed: Bed) -> Column:
+        return bed.retained(stream, peak.k or 0.0, bed.plates)
+
+    scale = 1.0
+    if peak.plates is not None:
+        every = [column_of(e) for part in instrument.parts for e in part.elements if isinstance(e, Bed)]
+        time, variance = sum(float(c.delay()) for c in every), sum(float(c.variance()) for c in every)
+        scale = time**2 / peak.plates / variance
+    passed = [(link.part, column_of(link.element)) for link in chain if isinstance(link.element, Bed)]
+    bands = tuple(
+        ColumnBand(part, float(column.variance()) * scale, float(column.plates) / scale)
+        for part, column in passed
+    )
+    return sum(float(column.delay()) for _, column in passed), bands
 
 
 @dataclass(frozen=True)
@@ -179,6 +209,7 @@ class _LinkSpread:
     link: Link
     variance: Values
     t_star: Values | None = None
+    run_t_star: Values | None = None
     longtube: Values | None = None
 
 
@@ -194,11 +225,18 @@ class _Spread:
 
     def rows(self) -> dict[int, _LinkSpread]:
         """Return what each link but the columns contributes, in the order of the chain."""
-        rows = {
-            index: self._row(self._chain[index], variance)
-            for group in self._groups(range(len(self._chain)))
-            for index, variance in zip(group, self._shares(group), strict=True)
-        }
+        rows: dict[int, _LinkSpread] = {}
+        for group in self._groups(range(len(self._chain))):
+            filters = [filter_of(self._chain[index], self._flow, self._diffusion) for index in group]
+            tubes = [part for part in filters if isinstance(part, Tube)]
+            run = sum((tube.t_star for tube in tubes), self.zero)
+            for index, part, variance in zip(group, filters, self._shares(group), strict=True):
+                link = self._chain[index]
+                if isinstance(part, Tube):
+                    own, longtube = self.zero + part.t_star, self.zero + part.longtube_variance()
+                    rows[index] = _LinkSpread(link, variance, own, run, longtube)
+                else:
+                    rows[index] = _LinkSpread(link, variance)
         return dict(sorted(rows.items()))
 
     def total_without(self, removed: int) -> Values:
@@ -222,13 +260,6 @@ class _Spread:
                 shares = [part.variance()]
             self._known[group] = [self.zero + share for share in shares]
         return self._known[group]
-
-    def _row(self, link: Link, variance: Values) -> _LinkSpread:
-        part = filter_of(link, self._flow, self._diffusion)
-        if isinstance(part, Tube):
-            t_star, longtube = self.zero + part.t_star, self.zero + part.longtube_variance()
-            return _LinkSpread(link, variance, t_star, longtube)
-        return _LinkSpread(link, variance)
 
 
 def _points(chain: tuple[Link, ...], instrument: Instrument, variance: float) -> float | None:
@@ -255,13 +286,13 @@ def _remarks(detectors: tuple[DetectorBudget, ...]) -> list[str]:
             row.part.label
             for p in answer.peaks
             for row in p.rows
-            if row.t_star is not None and 0 < row.t_star < UNMIXED_BELOW
+            if row.run_t_star is not None and 0 < row.run_t_star < UNMIXED_BELOW
         }
-        found += [
-            f"{label}: the flow is nearly unmixed (t* below {UNMIXED_BELOW:g}); entrance effects blur its "
-            "variance"
-            for label in sorted(unmixed)
-        ]
+        if unmixed:
+            found.append(
+                f"nearly unmixed flow (t* below {UNMIXED_BELOW:g}) in {', '.join(sorted(unmixed))}: entrance "
+                "effects blur the variance"
+            )
     return list(dict.fromkeys(found))
 
 

@@ -70,10 +70,12 @@ def _render(
         from xcol.report.budget_record import budget_csv
 
         return budget_csv(answer)
-    from xcol.report.budget_text import budget_markdown, first_screen, full_report
+    from xcol.report.budget_text import budget_markdown, full_report
 
     if form is Format.MARKDOWN:
         return budget_markdown(answer, at, chosen)
+    from xcol.report.budget_screen import first_screen
+
     sheet = new_sheet(output)
     (full_report if full else first_screen)(answer, at, chosen, sheet)
     return sheet.text()

@@ -11,9 +11,8 @@ from xcol.report.sheet import Grid
 from xcol.units import significant
 
 if TYPE_CHECKING:
-    from xcol.answers.budget import Budget, DetectorBudget, PeakBudget, Row
+    from xcol.answers.budget import Budget, ColumnBand, DetectorBudget, PeakBudget, Row
     from xcol.flowpath.hydraulics import Drop
-    from xcol.flowpath.model import Part
 
 HALF = 2 * math.sqrt(2 * math.log(2))
 MOST_ROWS = 7  # of parts on the first screen; with more, the small ones fold
@@ -21,30 +20,34 @@ SMALL_SHARE = 0.02
 _BAR = 10  # characters of a full share bar
 
 
-def parts_grid(answer: Budget, at: DetectorBudget, peak: PeakBudget, *, fold: bool) -> Grid:
-    """Return the parts in flow order, the columns among them, for one peak at one detector."""
+def parts_grid(answer: Budget, at: DetectorBudget, peak: PeakBudget, most: int) -> Grid:
+    """Return the parts in flow order, columns among them, for one peak at one detector.
+
+    At most ``most`` lines (4 or more): with more than seven contributions those under 2 % fold into
+    one line, and then the smallest, until the rest fits.
+    """
     square = (answer.instrument.flow * 1e9) ** 2
     inlets = {row.part.position: row.inlet for row in answer.pressure.rows}
-    folded = _folded(peak) if fold else []
-    most = max((row.share_extra for row in peak.rows), default=0.0)
+    columns = {band.part.position: band for band in peak.columns}
+    room = most - min(len(columns), 3)
+    folded = _folded(peak, room)
+    largest = max((row.share_extra for row in peak.rows), default=0.0)
     lines: list[tuple[str, ...]] = []
     shown: set[int] = set()
     for part in answer.instrument.parts[: at.detector.position]:
-        if any(isinstance(element, Bed) for element in part.elements):
-            own = peak if not any(line[0].startswith("[") for line in lines) else None
-            lines.append(_column_line(part, own, inlets[part.position], square))
+        band = columns.get(part.position)
+        if band is not None and (len(columns) <= 3 or band is peak.columns[0]):
+            lines.append(_column_line(band, peak, inlets[part.position], square))
         for row in peak.rows:
             if row.part is part and row not in folded:
                 inlet = inlets[part.position] if part.position not in shown else None
                 shown.add(part.position)
-                lines.append(_part_line(row, peak, inlet, square, most))
+                lines.append(_part_line(row, peak, inlet, square, largest))
     if folded:
         total = sum(row.variance for row in folded)
         share = total / peak.variance_extra if peak.variance_extra else 0.0
-        lines.append(
-            (f"{len(folded)} others, each under 2 %", three(total * square), percent(share),
-             "", "", "")
-        )  # fmt: skip
+        label = f"{len(folded)} others, {percent(max(row.share_extra for row in folded))} or less each"
+        lines.append((label, three(total * square), percent(share), "", "", ""))
     headers = ("in flow order", "µL²", "of added", "", "N if gone", "inlet, bar")
     return Grid(headers, tuple(lines), (False, True, True, False, True, True))
 
@@ -183,20 +186,22 @@ def _part_line(row: Row, peak: PeakBudget, inlet: Drop | None, square: float, mo
     )
 
 
-def _column_line(part: Part, peak: PeakBudget | None, inlet: Drop | None, square: float) -> tuple[str, ...]:
-    """Return a column's line; ``peak`` is given for the first one, which shows the band of all."""
-    bed = next(element for element in part.elements if isinstance(element, Bed))
-    size = f"{bed.bore * 1e3:.3g} x {bed.length * 1e3:.3g} mm"
-    label = f"[ {part.name or 'column'} {size} ]"
-    if peak is None:
-        return (label, "", "", "", "", bars(inlet))
-    own = three(peak.variance_column * square)
-    return (label, own, "own", "", plates(peak.plates_column), bars(inlet))
+def _column_line(band: ColumnBand, peak: PeakBudget, inlet: Drop | None, square: float) -> tuple[str, ...]:
+    """Return a column's line; the first of more than three stands for all of them."""
+    if len(peak.columns) > 3:
+        label, own, number = f"[ {len(peak.columns)} columns ]", peak.variance_column, peak.plates_column
+    else:
+        bed = next(element for element in band.part.elements if isinstance(element, Bed))
+        size = f"{bed.bore * 1e3:.3g} x {bed.length * 1e3:.3g} mm"
+        label, own, number = f"[ {band.part.name or 'column'} {size} ]", band.variance, band.plates
+    return (label, three(own * square), "own", "", plates(number), bars(inlet))
 
 
-def _folded(peak: PeakBudget) -> list[Row]:
-    """Return the rows that fold into one line: with more than seven, those under 2 %."""
-    if len(peak.rows) <= MOST_ROWS:
+def _folded(peak: PeakBudget, room: int) -> list[Row]:
+    """Return the rows that fold into one line, for the rest to fit in ``room`` lines with it."""
+    if len(peak.rows) <= min(MOST_ROWS, room):
         return []
-    small = [row for row in peak.rows if row.share_extra < SMALL_SHARE]
-    return small if len(small) > 1 else []
+    ordered = sorted(peak.rows, key=lambda row: row.variance)
+    small = sum(row.share_extra < SMALL_SHARE for row in ordered)
+    needed = len(ordered) - min(MOST_ROWS, room - 1)
+    return ordered[: max(small, needed, 2)]

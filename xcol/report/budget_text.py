@@ -8,7 +8,6 @@ from typing import TYPE_CHECKING
 from xcol.report.budget_tables import (
     bars,
     detail_grid,
-    parts_grid,
     peaks_grid,
     percent,
     plates,
@@ -17,49 +16,24 @@ from xcol.report.budget_tables import (
     three,
 )
 from xcol.report.labels import name_of, show
-from xcol.report.sheet import Sheet, markdown
+from xcol.report.sheet import Sheet, fitted, markdown
 from xcol.units import FLOW, PRESSURE, TEMPERATURE, VOLUME, significant
 
 if TYPE_CHECKING:
     from xcol.answers.budget import Budget, DetectorBudget, PeakBudget
 
-SCREEN = 24  # lines of the first screen
-_ENDS = (
+NO_RANGES = (
     "No ranges yet: tubes count as straight (worst), injection and cells as plugs (best), so these "
     "figures alone do not say which part to change first."
 )
 
 
-def first_screen(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: Sheet) -> None:
-    """Write the first screen: at most 24 lines of 80 columns for one peak at one detector."""
-    _heading(answer, sheet)
-    for line in verdict(answer, at, peak):
-        sheet.line(line, hang=2)
-    sheet.line()
-    sheet.grid(parts_grid(answer, at, peak, fold=True), indent=2)
-    sheet.line()
-    foot = Sheet(sheet.width, sheet.ascii_only, sheet.color)
-    _footer(answer, foot)
-    room = SCREEN - sheet.count() - foot.count() - 1
-    shown = _peaks_that_fit(at.peaks, peak, room - min(len(answer.warnings), 2))
-    sheet.grid(peaks_grid(shown, answer.instrument.flow), indent=2)
-    _warnings_that_fit(answer, sheet, SCREEN - sheet.count() - foot.count())
-    _footer(answer, sheet)
-
-
-def _footer(answer: Budget, sheet: Sheet) -> None:
-    sheet.line(_pressure_line(answer), hang=2)
-    short = list(dict.fromkeys(assumption.short for assumption in answer.instrument.assumed))
-    sheet.line(_fitting_list("Assumed: ", short, sheet.width))
-    sheet.line("Before opening a line: pump off, pressure at zero, eye protection, site rules.", "dim")
-
-
 def full_report(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: Sheet) -> None:
     """Write everything: all detectors and peaks, pressure, warnings, assumptions, cautions."""
-    _heading(answer, sheet)
+    heading(answer, sheet)
     for line in verdict(answer, at, peak):
         sheet.line(line, hang=2)
-    sheet.line(_ENDS, hang=2)
+    sheet.line(NO_RANGES, hang=2)
     for found in answer.detectors:
         sheet.line()
         volume = found.delay * answer.instrument.flow
@@ -94,7 +68,7 @@ def full_report(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: She
 def budget_markdown(answer: Budget, at: DetectorBudget, peak: PeakBudget) -> str:
     """Return the report in Markdown."""
     pieces = [f"# {answer.instrument.title or 'Budget'}\n", _conditions(answer) + "\n"]
-    pieces += [line + "\n" for line in (*verdict(answer, at, peak), _ENDS)]
+    pieces += [line + "\n" for line in (*verdict(answer, at, peak), NO_RANGES)]
     for found in answer.detectors:
         pieces.append(f"## Detector {name_of(found.detector)}\n")
         pieces.append(markdown(peaks_grid(found.peaks, answer.instrument.flow)))
@@ -149,13 +123,12 @@ def _conditions(answer: Budget) -> str:
     return ", ".join(["isocratic", *pieces])
 
 
-def _heading(answer: Budget, sheet: Sheet) -> None:
+def heading(answer: Budget, sheet: Sheet) -> None:
+    """Write title and conditions on one line."""
     conditions = sheet.spelled(_conditions(answer))
     title = sheet.spelled(answer.instrument.title or "Budget")
     room = sheet.width - len(conditions) - 2
-    if len(title) > room:
-        title = f"{title[: room - 3]}..."
-    sheet.line(f"{title.ljust(room)}  {conditions}", "bold")
+    sheet.line(f"{fitted(title, room)}  {conditions}", "bold")
 
 
 def _peak_line(peak: PeakBudget, answer: Budget) -> str:
@@ -175,64 +148,35 @@ def _peak_line(peak: PeakBudget, answer: Budget) -> str:
 
 
 def _pressure_line(answer: Budget) -> str:
-    total = answer.pressure.total
-    if total is None:
-        text = "Pressure: not computed (viscosity or a drop is missing)."
-    else:
-        ends = f" ({span(total)} over the bed porosity)" if span(total) else ""
-        text = f"Pressure {bars(total)} bar{ends}."
     limited = [row for row in answer.pressure.rows if row.part.max_pressure is not None]
     checked = ", ".join(
         f"{name_of(row.part)} {bars(row.inlet)} of {show(row.part.max_pressure or 0.0, PRESSURE)}"
         for row in limited
     )
-    unchecked = [
+    text = total_pressure(answer)
+    if checked:
+        text += f" Inlet against limit: {checked}."
+    if without := unchecked(answer):
+        text += f" Limits not checked (none entered): {', '.join(without)}."
+    return text
+
+
+def total_pressure(answer: Budget) -> str:
+    """Return the pressure at the pump's side in a sentence."""
+    total = answer.pressure.total
+    if total is None:
+        return "Pressure: not computed (viscosity or a drop is missing)."
+    ends = f" ({span(total)} over the bed porosity)" if span(total) else ""
+    return f"Pressure {bars(total)} bar{ends}."
+
+
+def unchecked(answer: Budget) -> list[str]:
+    """Return the names of columns and detectors without a limit."""
+    return [
         name_of(row.part)
         for row in answer.pressure.rows
         if row.part.kind in ("column", "detector") and row.part.max_pressure is None
     ]
-    if checked:
-        text += f" Inlet against limit: {checked}."
-    if unchecked:
-        text += f" Limits not checked (none entered): {', '.join(unchecked)}."
-    return text
-
-
-def _fitting_list(head: str, items: list[str], width: int) -> str:
-    """Return a list that fits one line, with the number of what did not fit."""
-    kept: list[str] = []
-    for index, item in enumerate(items):
-        left = len(items) - index - 1
-        tail = f", {left} more: --full" if left else ""
-        if len(head + ", ".join([*kept, item]) + tail) > width:
-            return f"{head}{', '.join(kept)}, {len(items) - index} more: --full"
-        kept.append(item)
-    return head + ", ".join(kept)
-
-
-def _peaks_that_fit(peaks: tuple[PeakBudget, ...], chosen: PeakBudget, room: int) -> tuple[PeakBudget, ...]:
-    """Return as many peaks as there are lines for, the chosen one among them."""
-    if room >= len(peaks):
-        return peaks
-    if room < 1:
-        return (chosen,)
-    start = max(0, min(peaks.index(chosen) - room // 2, len(peaks) - room))
-    return peaks[start : start + room]
-
-
-def _warnings_that_fit(answer: Budget, sheet: Sheet, room: int) -> None:
-    """Add warnings as lines allow, those of limits first; the rest is counted."""
-    ordered = sorted(answer.warnings, key=lambda text: "limit" not in text)
-    for index, warning in enumerate(ordered):
-        trial = Sheet(sheet.width, sheet.ascii_only)
-        trial.line(f"! {warning}", hang=2)
-        last = index == len(ordered) - 1
-        if trial.count() + (0 if last else 1) > room:
-            left = len(ordered) - index
-            sheet.line(f"! {left} {'more warnings' if index else 'warnings'}: --full", "yellow")
-            return
-        sheet.line(f"! {warning}", "yellow", hang=2)
-        room -= trial.count()
 
 
 def _lists(answer: Budget) -> list[tuple[str, list[str]]]:

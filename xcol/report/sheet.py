@@ -5,6 +5,7 @@ from __future__ import annotations
 import io
 from dataclasses import dataclass, field
 
+from rich.cells import cell_len, set_cell_size
 from rich.console import Console
 from rich.padding import Padding
 from rich.table import Table
@@ -25,6 +26,13 @@ def to_ascii(text: str) -> str:
     for symbol, plain in _ASCII.items():
         text = text.replace(symbol, plain)
     return text.encode("ascii", "replace").decode("ascii")
+
+
+def fitted(text: str, width: int) -> str:
+    """Return the text cut or filled to this many columns of a terminal (wide characters take two)."""
+    if cell_len(text) > width:
+        text = set_cell_size(text, max(width - 3, 0)).rstrip() + "..."
+    return set_cell_size(text, width)
 
 
 @dataclass(frozen=True)
@@ -59,7 +67,7 @@ class Sheet:
     def grid(self, grid: Grid, indent: int = 0, flexible: int = 0) -> None:
         """Add a table; the ``flexible`` column is cut where the width does not suffice."""
         widths = [
-            max(len(self.spelled(row[index])) for row in (grid.headers, *grid.rows))
+            max(cell_len(self.spelled(row[index])) for row in (grid.headers, *grid.rows))
             for index in range(len(grid.headers))
         ]
         taken = indent + sum(widths) + 2 * (len(widths) - 1) - widths[flexible]
