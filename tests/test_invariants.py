@@ -14,9 +14,7 @@ bores = st.sampled_from([0.05, 0.1, 0.127, 0.178, 0.254, 0.5])
 tubes = st.tuples(st.floats(5, 900), bores).map(lambda pair: f'{{ tube = "{pair[0]!r} mm x {pair[1]} mm" }}')
 mixing = st.one_of(
     st.floats(0.01, 20).map(lambda v: f'{{ fitting = "{v!r} uL" }}'),
-    st.tuples(st.floats(0.1, 50), st.floats(1, 20)).map(
-        lambda p: f'{{ mixer = "{p[0]!r} uL", tanks = {p[1]!r} }}'
-    ),
+    st.tuples(st.floats(0.1, 50), st.floats(1, 20)).map(lambda p: f'{{ mixer = "{p[0]!r} uL", tanks = {p[1]!r} }}'),
     st.floats(0.01, 20).map(lambda v: f'{{ block = "{v!r} uL^2", volume = "1 uL" }}'),
     st.tuples(st.floats(0.5, 5), bores).map(
         lambda p: f'{{ fitting = "a", length = "{p[0]!r} mm", bore = "{p[1]} mm" }}'
@@ -27,8 +25,8 @@ conditions = st.fixed_dictionaries(
     {
         "flow": st.floats(0.05, 2),
         "diffusion": st.floats(1e-11, 5e-9),
-        "k": st.floats(0, 20),
-        "inject": st.floats(0, 50),
+        "k": st.just(0.0) | st.floats(0.01, 20),
+        "inject": st.just(0.0) | st.floats(0.01, 50),
     }
 )
 

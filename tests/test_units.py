@@ -31,9 +31,7 @@ from xcol.units import (
     write,
 )
 
-EVERYDAY = [
-    (quantity, unit) for quantity in QUANTITIES for unit in quantity.everyday if unit not in ("", "%")
-]
+EVERYDAY = [(quantity, unit) for quantity in QUANTITIES for unit in quantity.everyday if unit not in ("", "%")]
 
 
 @pytest.mark.parametrize(("quantity", "unit"), EVERYDAY, ids=lambda value: str(getattr(value, "name", value)))

@@ -36,12 +36,7 @@ class Fault:
 
     def __str__(self) -> str:
         """Return the message in four lines."""
-        return (
-            f"{self.place}\n"
-            f"  read:      {self.read}\n"
-            f"  expected:  {self.expected}\n"
-            f"  try:       {self.suggestion}"
-        )
+        return f"{self.place}\n  read:      {self.read}\n  expected:  {self.expected}\n  try:       {self.suggestion}"
 
 
 @dataclass

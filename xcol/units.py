@@ -55,9 +55,7 @@ def _volumes() -> dict[str, float]:
 def _flows() -> dict[str, float]:
     times = {"s": 1.0, "min": 60.0, "h": 3600.0}
     return {
-        f"{volume}/{time}": factor / seconds
-        for volume, factor in _volumes().items()
-        for time, seconds in times.items()
+        f"{volume}/{time}": factor / seconds for volume, factor in _volumes().items() for time, seconds in times.items()
     }
 
 
@@ -151,7 +149,7 @@ dalton = 1e-3 * kilogram / mole = Da
 """
 
 _NUMBER = re.compile(r"[+-]?(?:\d+(?:[.,]\d*)?|[.,]\d+)(?:[eE][+-]?\d{1,3})?(?![\d.,])")
-_FRACTION = re.compile(r"(?:(\d{1,2})\s+)?(\d{1,2})\s*/\s*(\d{1,3})\s*(?:in|inch|inches)\.?")
+_FRACTION = re.compile(r"(?:(\d{1,2})\s+)?(\d{1,2})\s*/\s*(\d{1,4})\s*(?:in|inch|inches)\.?")
 _UNIT_NAME = r"[A-Za-z]+(?:\^-?[1-9])?"
 _UNIT = re.compile(rf"(?:1|{_UNIT_NAME})(?:[ /]{_UNIT_NAME}){{0,3}}")
 _TIMES_TEN = re.compile(r"([+-]?[\d.,]+)\s*(?:x|×|\*|·)\s*10\s*\^?\s*([-+−⁻⁺]?[\d⁰¹²³⁴-⁹]+)\s*(.*)")
@@ -165,6 +163,7 @@ def spell(unit: str) -> str:
     ('uL^2', 'mPa s', 'cm^2/s', 'degC')
     """
     text = unit.strip().replace("µ", "u").replace("μ", "u").replace("℃", "degC")
+    text = re.sub(r"^mc(?=[LlmMgG])", "u", text)  # "mcL", as clinics write the microlitre
     text = re.sub(r"°\s*([CFK])\b", r"deg\1", text).replace("″", "in").replace('"', "in")
     text = re.sub(r"(?<=[A-Za-z])[⁻⁺]?[⁰¹²³⁴-⁹]+", lambda m: "^" + m[0].translate(_SUPERSCRIPTS), text)
     text = re.sub(r"[·⋅∙*]|(?<=[A-Za-z])\.(?=[A-Za-z])", " ", text.replace("**", "^"))
@@ -174,8 +173,10 @@ def spell(unit: str) -> str:
     return re.sub(r"\s+", " ", text)
 
 
-def split(text: str) -> tuple[float, str]:
+def split(text: str, example: str = "0.25 mm") -> tuple[float, str]:
     """Split a text into its number and its unit in the one spelling; raise ``UnitError``.
+
+    ``example`` is what the error offers to someone who typed no number.
 
     >>> split("1,8 µm")
     (1.8, 'um')
@@ -189,7 +190,7 @@ def split(text: str) -> tuple[float, str]:
         raise UnitError(shown, "one decimal number and a unit", f'"{match[1]}e{exponent} {match[3]}"')
     match = _NUMBER.match(stripped)
     if not match:
-        raise UnitError(shown, "a number and a unit", 'a decimal number first, as in "0.25 mm"')
+        raise UnitError(shown, "a number and a unit", f'a decimal number first, as in "{example}"')
     number, unit = match[0], stripped[match.end() :]
     if re.fullmatch(r"[+-]?[1-9]\d{0,2},\d{3}", number):
         point, plain = number.replace(",", "."), number.replace(",", "")
@@ -204,9 +205,14 @@ def split(text: str) -> tuple[float, str]:
     return value, spell(unit)
 
 
+def plain(text: str) -> str:
+    """Return a text on one line, without control characters."""
+    return " ".join("".join(c if c.isprintable() else " " for c in text).split())
+
+
 def quote(text: object) -> str:
     """Return what was read, in quotes, cut where it is long, on one line."""
-    shown = " ".join(str(text).split())
+    shown = plain(str(text)[:200])
     return f'"{shown[:57]}..."' if len(shown) > 60 else f'"{shown}"'
 
 
@@ -223,12 +229,14 @@ def parse(text: str, quantity: Quantity, *, fraction: bool = False) -> float:
         value = (int(match[1] or 0) + int(match[2]) / max(int(match[3]), 1)) * 0.0254
         if fraction and quantity is LENGTH and int(match[3]) in (2, 4, 8, 16, 32, 64):
             return value
+        if match[3] == "1000" and not match[1]:
+            raise UnitError(quote(text), f"{quantity.name} as one decimal number", f'"{int(match[2])} thou"')
         raise UnitError(
             quote(text),
             f"{quantity.name} as one decimal number; an inch fraction names an outside or port diameter",
             'a bore (inside diameter), as in "0.010 in"; an outside diameter can go into note',
         )
-    value, unit = split(text)
+    value, unit = split(text, f"1 {quantity.likely[0]}".strip())
     if not unit and quantity is not RATIO:
         raise missing_unit(text.strip(), quantity)
     factor, zero = _factor(unit, quantity, text)
@@ -337,11 +345,10 @@ def _wrong_kind(text: str, unit: str, kind: str, quantity: Quantity) -> UnitErro
 
 
 def _unknown(text: str, unit: str, quantity: Quantity, near: str = "") -> UnitError:
-    if not near:
-        import difflib  # noqa: PLC0415
+    """Return the error for a unit that is not known; no near miss is offered but another case.
 
-        close = difflib.get_close_matches(unit, [u for u in quantity.everyday if u], n=1, cutoff=0.4)
-        near = close[0] if close else ""
+    A unit that differs by one letter may differ by a factor of 1000.
+    """
     options = ", ".join(option or "no unit" for option in quantity.likely)
     return UnitError(
         f"{quote(text)}, with the unit {quote(unit)}",

@@ -26,9 +26,7 @@ FILTERS = {
     "short tube": Tube(0.05, 254e-6, FLOW, 5e-10),
     "long tube": Tube(10.0, 127e-6, FLOW, 2e-9),
     "tube with axial diffusion": Tube(0.3, 2e-3, FLOW / 10, 5e-9),
-    "run": TubeRun(
-        (Tube(0.2, 254e-6, FLOW, 1e-9), Tube(0.3, 127e-6, FLOW, 1e-9), Tube(0.1, 500e-6, FLOW, 1e-9))
-    ),
+    "run": TubeRun((Tube(0.2, 254e-6, FLOW, 1e-9), Tube(0.3, 127e-6, FLOW, 1e-9), Tube(0.1, 500e-6, FLOW, 1e-9))),
 }
 
 

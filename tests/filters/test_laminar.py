@@ -45,9 +45,7 @@ def test_a_long_tube_has_the_two_closed_terms():
     t = np.array([1.0, 3.0, 10.0, 1e3, 1e6])
     closed = 1 / (24 * t) - 1 / (384 * t**2)
     assert laminar.relative_variance(t) == pytest.approx(closed, rel=3e-7)
-    assert pytest.approx(float(laminar.relative_variance(0.3)), rel=6e-3) == 1 / (24 * 0.3) - 1 / (
-        384 * 0.3**2
-    )
+    assert pytest.approx(float(laminar.relative_variance(0.3)), rel=6e-3) == 1 / (24 * 0.3) - 1 / (384 * 0.3**2)
 
 
 def test_phi_falls_monotonically_from_unmixed_to_mixed():
@@ -90,9 +88,7 @@ def finite_volumes(t_stars, units, cells=240):
     return m2 - m1**2, m3 - 3 * m1 * m2 + 2 * m1**3
 
 
-@pytest.mark.parametrize(
-    ("t_stars", "units"), [([0.1], [1.0]), ([0.05, 0.1, 0.03], [1.0, 0.5, 3.0]), ([1.5], [2.0])]
-)
+@pytest.mark.parametrize(("t_stars", "units"), [([0.1], [1.0]), ([0.05, 0.1, 0.03], [1.0, 0.5, 3.0]), ([1.5], [2.0])])
 def test_second_and_third_moment_against_finite_volumes(t_stars, units):
     variance, third = finite_volumes(t_stars, units)
     assert laminar.run_third_moment(t_stars, units) == pytest.approx(third, rel=5e-3)

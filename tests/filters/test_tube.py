@@ -10,9 +10,7 @@ FLOW = 1e-6 / 60
 
 def run_of(t_stars, units):
     """A run of these t* and a²/D, with D = F = 1; the axial term is taken off by the caller."""
-    return TubeRun(
-        tuple(Tube(t / np.pi, 2 * np.sqrt(w), 1.0, 1.0) for t, w in zip(t_stars, units, strict=True))
-    )
+    return TubeRun(tuple(Tube(t / np.pi, 2 * np.sqrt(w), 1.0, 1.0) for t, w in zip(t_stars, units, strict=True)))
 
 
 def laminar_part(run):

@@ -35,12 +35,11 @@ def instrument():
 def test_sides_and_what_counts_at_each_detector(instrument):
     first, second = instrument.detectors
     at_first = [
-        (link.element.contribution, link.side)
-        for link in links(instrument, first)
-        if link.part.kind != "column"
+        (link.element.contribution, link.side) for link in links(instrument, first) if link.part.kind != "column"
     ]
     assert at_first == [
-        ("injection", "before"), ("tube", "before"), ("tube", "before"), ("tube", "between"), ("fitting", "after"), ("tube", "after"), ("cell", "after"), ("filter", "signal"),
+        ("injection", "before"), ("tube", "before"), ("tube", "before"), ("tube", "between"),
+        ("fitting", "after"), ("tube", "after"), ("cell", "after"), ("filter", "signal"),
         ("rate", "signal"),
     ]  # fmt: skip
     at_second = [(link.part.name, link.element.contribution) for link in links(instrument, second)]
@@ -66,4 +65,4 @@ def test_the_transit_is_the_sum_of_the_mean_delays(instrument):
     # the first cell is passed through whole, its electronics are not met; the second is two tanks
     second = (3e-9 + sum(tubes) + 1e-9 + 2e-9 + more + 4e-9) / flow + 1 / 2.1972245773
     assert transit(instrument, instrument.detectors[1]) == pytest.approx(second)
-    assert dead_time(instrument) == pytest.approx(0.2e-6 / flow)
+    assert dead_time(instrument, instrument.detectors[0]) == pytest.approx(0.2e-6 / flow)

@@ -63,9 +63,7 @@ def test_mixer_block_injection():
     (block,) = part_of('{ block = "autosampler", variance = "4 uL2", volume = "8 uL" }').elements
     assert isinstance(block, Block)
     assert block.volume == pytest.approx(8e-9)
-    instrument = parse(
-        FILE.format(part='{ mixer = "1 uL" }').replace('"2 uL"', '"a", volume = "2 uL"', 1), "f"
-    )
+    instrument = parse(FILE.format(part='{ mixer = "1 uL" }').replace('"2 uL"', '"a", volume = "2 uL"', 1), "f")
     assert instrument.parts[0].elements[0].volume == pytest.approx(2e-9)
     assert instrument.parts[0].name == "a"
 
@@ -116,7 +114,5 @@ def test_a_detector_may_have_no_cell_and_no_filter():
 
 
 def test_every_part_carries_its_limits_and_measured_drop():
-    part = part_of(
-        '{ mixer = "1 uL", drop = "2 bar", max_pressure = "300 bar", max_drop = "5 bar", note = "x" }'
-    )
+    part = part_of('{ mixer = "1 uL", drop = "2 bar", max_pressure = "300 bar", max_drop = "5 bar", note = "x" }')
     assert (part.drop, part.max_pressure, part.max_drop) == pytest.approx((2e5, 3e7, 5e5))

@@ -39,7 +39,8 @@ def test_the_order_of_a_column_is_noticed_in_any_units():
 @pytest.mark.parametrize(
     "text",
     ["40 cm", "40 x 0.25 mm", "40 cm x 0.25", "40 x 0.25", "40 cm x 0.25 mm x 1/16 in", "40 cm x 1/16 in",
-     "40 cm x 0.25 mm o.d.", "40 cm x 0.25 mm OD", "40 cm x 0.125 mm radius", "x", "", "40 cm x", "40 cm x 0.25 mm, 5 um",
+     "40 cm x 0.25 mm o.d.", "40 cm x 0.25 mm OD", "40 cm x 0.125 mm radius", "x", "", "40 cm x",
+     "40 cm x 0.25 mm, 5 um", "-40 cm x 0.25 mm",
      "40 cm x 2 uL", "2 x 20 cm x 0.25 mm"],
 )  # fmt: skip
 def test_tubes_that_are_refused(text):
@@ -50,7 +51,8 @@ def test_tubes_that_are_refused(text):
 
 @pytest.mark.parametrize(
     "text",
-    ["4.6 x 150", "4.6 x 150, 5 um", "4.6 mm x 150, 5 um", "4.6 x 150 mm, 5", "4.6", "150 mm, 5 um", "4.6 x 150 mm, 5 um, 2",
+    ["4.6 x 150", "4.6 x 150, 5 um", "4.6 mm x 150, 5 um", "4.6 x 150 mm, 5", "4.6", "150 mm, 5 um",
+     "4.6 x 150 mm, 5 um, 2", "2.1 x 50 cm, 2.5 um", "4.6 x 150 mm, 5 um, 100 A",
      "4.6 x 150 x 5", "", ",", "4.6 x 150 uL, 5 um"],
 )  # fmt: skip
 def test_columns_that_are_refused(text):

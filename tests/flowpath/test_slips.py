@@ -69,7 +69,7 @@ def test_what_is_usual_has_no_warning():
         ({"detector": 'cell = "2.5 uL"'}, "filter"),
         ({"detector": 'cell = "500 uL", time_constant = "0.1 s"'}, "uL or mL"),
         ({"detector": 'cell = "0.05 uL", path_length = "50 mm", time_constant = "0.1 s"'}, "path length"),
-        ({"detector": 'cell = "2.5 uL", time_constant = "100 s"'}, "s or ms"),
+        ({"detector": 'cell = "2.5 uL", time_constant = "100 s"'}, "time_constant"),
         ({"detector": 'cell = "2.5 uL", time_constant = "0.1 s", max_pressure = "4 kPa"'}, "unit"),
         ({"behind": '{ tube = "1 m x 0.5 mm", name = "waste" },'}, "behind the last detector"),
         ({"viscosity": "0.05 mPa s", "tube": "30 cm x 0.06 mm", "flow": "5 mL/min"}, "Reynolds"),

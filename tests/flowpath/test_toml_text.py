@@ -6,9 +6,7 @@ from hypothesis import strategies as st
 
 from xcol.flowpath.toml_text import load
 
-GOOD = (
-    'path = [\n  { inject = "20 uL" },\n  { tube = "40 cm x 0.25 mm", name = "a" },\n]\nflow = "1 mL/min"\n'
-)
+GOOD = 'path = [\n  { inject = "20 uL" },\n  { tube = "40 cm x 0.25 mm", name = "a" },\n]\nflow = "1 mL/min"\n'
 DATA = {"path": [{"inject": "20 uL"}, {"tube": "40 cm x 0.25 mm", "name": "a"}], "flow": "1 mL/min"}
 
 

@@ -176,9 +176,7 @@ def _at_detector(instrument: Instrument, detector: Part) -> DetectorBudget:
     return DetectorBudget(detector, delay, tuple(peaks))
 
 
-def _own_bands(
-    instrument: Instrument, chain: tuple[Link, ...], peak: Peak
-) -> tuple[float, tuple[ColumnBand, ...]]:
+def _own_bands(instrument: Instrument, chain: tuple[Link, ...], peak: Peak) -> tuple[float, tuple[ColumnBand, ...]]:
     """Return retention time [s] in the chain's columns, and each one's own band.
 
     A peak's own ``plates`` are those of all columns of the path together; each column's variance
@@ -196,8 +194,7 @@ def _own_bands(
         scale = time**2 / peak.plates / variance
     passed = [(link.part, column_of(link.element)) for link in chain if isinstance(link.element, Bed)]
     bands = tuple(
-        ColumnBand(part, float(column.variance()) * scale, float(column.plates) / scale)
-        for part, column in passed
+        ColumnBand(part, float(column.variance()) * scale, float(column.plates) / scale) for part, column in passed
     )
     return sum(float(column.delay()) for _, column in passed), bands
 
@@ -229,7 +226,7 @@ class _Spread:
         for group in self._groups(range(len(self._chain))):
             filters = [filter_of(self._chain[index], self._flow, self._diffusion) for index in group]
             tubes = [part for part in filters if isinstance(part, Tube)]
-            run = sum((tube.t_star for tube in tubes), self.zero)
+            run = self.zero + sum(tube.t_star for tube in tubes)
             for index, part, variance in zip(group, filters, self._shares(group), strict=True):
                 link = self._chain[index]
                 if isinstance(part, Tube):
@@ -311,7 +308,6 @@ def _cautions(instrument: Instrument) -> tuple[str, ...]:
     if any(part.kind == "detector" and part.elements and part.elements[0].volume > 0
            for part in instrument.parts):  # fmt: skip
         found.append(
-            "A plugged waste line brings a cell to whatever pressure the pump allows, not to the figure "
-            "computed here."
+            "A plugged waste line brings a cell to whatever pressure the pump allows, not to the figure computed here."
         )
     return tuple(found)

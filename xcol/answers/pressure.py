@@ -13,6 +13,7 @@ if TYPE_CHECKING:
     from xcol.flowpath.model import Instrument, Part
 
 _NOTHING = exactly(0.0)
+HIGHEST_USUAL = 2000e5  # Pa
 
 
 @dataclass(frozen=True)
@@ -55,6 +56,11 @@ def pressures(instrument: Instrument) -> Pressures:
         rows = _down_from_pump(rows, instrument.pump_pressure)
     for row in rows:
         warnings += _limits(row)
+    if rows[0].inlet is not None and rows[0].inlet.value > HIGHEST_USUAL:
+        warnings.append(
+            f"{significant(rows[0].inlet.value / 1e5)} bar is more than any pump of the trade gives: a bore, a "
+            "length, the viscosity or the flow is not as entered?"
+        )
     return Pressures(tuple(rows), tuple(warnings))
 
 
@@ -163,8 +169,7 @@ def _limits(row: PressureRow) -> list[str]:
             found.append(f"{row.part.label}: limit of {shown} not checked, no {what} is computed")
         elif pressure.value > limit:
             found.append(
-                f"{row.part.label}: {what} {significant(pressure.value / 1e5)} bar is above its limit "
-                f"of {shown}"
+                f"{row.part.label}: {what} {significant(pressure.value / 1e5)} bar is above its limit of {shown}"
             )
         elif pressure.high > limit:
             found.append(

@@ -54,6 +54,10 @@ def main() -> None:
         # the reader of our output has gone; keep the interpreter from complaining at its exit
         os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
         sys.exit(0)
+    except OSError as error:  # a full disk behind standard output, for instance
+        print(f"xcol: the result could not be written: {error.strerror}", file=sys.stderr)
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+        sys.exit(2)
     except KeyboardInterrupt:
         sys.exit(130)
 

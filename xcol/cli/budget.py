@@ -33,12 +33,8 @@ Example, a path file of a few lines and the first screen of its budget:
 
 def budget(
     file: FileArgument,
-    peak: Annotated[
-        str | None, typer.Option("--peak", help="Peak of the first screen, by name or k.")
-    ] = None,
-    detector: Annotated[
-        str | None, typer.Option("--detector", help="Detector of the first screen, by name.")
-    ] = None,
+    peak: Annotated[str | None, typer.Option("--peak", help="Peak of the first screen, by name or k.")] = None,
+    detector: Annotated[str | None, typer.Option("--detector", help="Detector of the first screen, by name.")] = None,
     full: Annotated[bool, typer.Option("--full", help="Everything, not the first screen.")] = False,
     form: FormatOption = Format.TEXT,
     output: OutputOption = None,
@@ -85,9 +81,11 @@ def _chosen_detector(answer: Budget, name: str | None, file: str) -> DetectorBud
     """Return the detector of that name; the last one, which the whole path leads to, by default."""
     if name is None:
         return answer.detectors[-1]
-    found = [d for d in answer.detectors if d.detector.name.lower() == name.strip().lower()]
+    from xcol.report.labels import name_of
+
+    found = [d for d in answer.detectors if name_of(d.detector).lower() == name.strip().lower()]
     if not found:
-        known = ", ".join(f'"{d.detector.name}"' for d in answer.detectors)
+        known = ", ".join(f'"{name_of(d.detector)}"' for d in answer.detectors)
         raise _unknown(file, "--detector", name, f"one of {known}")
     return found[0]
 
@@ -99,11 +97,17 @@ def _chosen_peak(at: DetectorBudget, name: str | None, file: str) -> PeakBudget:
         return ordered[(len(ordered) - 1) // 2]
     word = name.strip().lower()
     for peak in at.peaks:
-        k = f"{peak.peak.k:g}" if peak.peak.k is not None else ""
-        if word in (peak.peak.name.lower(), k, f"k={k}", f"k = {k}"):
+        if word == peak.peak.name.lower():
+            return peak
+    try:
+        wanted = float(word.removeprefix("k").strip(" ="))
+    except ValueError:
+        wanted = None
+    for peak in at.peaks:  # k as it is shown has three digits
+        if wanted is not None and peak.peak.k is not None and abs(peak.peak.k - wanted) <= 5e-3 * wanted:
             return peak
     known = ", ".join(f'"{peak.peak.name}"' for peak in at.peaks)
-    raise _unknown(file, "--peak", name, f"one of {known}")
+    raise _unknown(file, "--peak", name, f"one of {known}, or a k that is shown")
 
 
 def _unknown(file: str, option: str, read: str, expected: str) -> InputError:

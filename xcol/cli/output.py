@@ -28,9 +28,7 @@ class Format(StrEnum):
 
 
 FormatOption = Annotated[Format, typer.Option("--format", help="Form of the result.")]
-OutputOption = Annotated[
-    str | None, typer.Option("--output", help="Write to this file; never over an existing one.")
-]
+OutputOption = Annotated[str | None, typer.Option("--output", help="Write to this file; never over an existing one.")]
 ForceOption = Annotated[bool, typer.Option("--force", help="Let --output replace a file.")]
 FileArgument = Annotated[str, typer.Argument(metavar="FILE", help='Path file; "-": standard input.')]
 
@@ -72,15 +70,18 @@ def emit(text: str, output: str | None, force: bool, source: str = "-") -> None:
     Raises ``InputError`` where the file exists (without ``force``), is the path file itself, or
     cannot be written.
     """
-    if output is None:
+    if output is None or output == "-":
         encoding = sys.stdout.encoding or "ascii"
         sys.stdout.write(text.encode(encoding, "replace").decode(encoding))
+        sys.stdout.flush()
         return
     target = Path(output)
     place = Place(file=output, key="--output")
     if target.is_dir():
         raise _refusal(place, "a directory", "the name of a file", f"{target / 'budget.txt'}")
-    if source != "-" and target.exists() and target.samefile(source):
+    if target.exists() and not target.is_file():
+        raise _refusal(place, "a device or pipe", "the name of a file", "standard output, redirected")
+    if source != "-" and target.exists() and Path(source).exists() and target.samefile(source):
         raise _refusal(place, "the path file itself", "another file", "another name for the result")
     if target.exists() and not force:
         raise _refusal(place, "a file that exists", "a new file", "another name, or --force")

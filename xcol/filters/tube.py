@@ -109,9 +109,7 @@ class TubeRun:
         stretches = np.asarray(spread(np.maximum(edges[ends] - edges[starts], 0.0)))
         v = {(int(i), int(j)): stretches[n] for n, (i, j) in enumerate(zip(starts, ends, strict=True))}
 
-        shares: list[Real] = [
-            units[i] ** 2 * v[i, i + 1] + tube.axial_variance() for i, tube in enumerate(self.tubes)
-        ]
+        shares: list[Real] = [units[i] ** 2 * v[i, i + 1] + tube.axial_variance() for i, tube in enumerate(self.tubes)]
         for i in range(count):
             for j in range(i + 1, count):
                 between = v[i + 1, j] if j > i + 1 else 0.0
@@ -127,8 +125,6 @@ class TubeRun:
 
     def transfer(self, omega: Real) -> Complex:
         """H(ω) of the laminar flow times that of axial diffusion, a Gaussian, and the delay."""
-        laminar = run_transfer(
-            [tube.t_star for tube in self.tubes], [tube.time_unit for tube in self.tubes], omega
-        )
+        laminar = run_transfer([tube.t_star for tube in self.tubes], [tube.time_unit for tube in self.tubes], omega)
         axial = sum(tube.axial_variance() for tube in self.tubes)
         return laminar * gaussian_transfer(self.delay(), axial, omega)

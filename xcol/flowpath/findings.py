@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING
 
 from xcol.errors import Fault, InputError, Place
 from xcol.flowpath.model import Assumption
+from xcol.units import plain, quote
 
 if TYPE_CHECKING:
     from xcol.flowpath.keys import Value
@@ -85,11 +86,11 @@ class Draft:
     def place(self, key: str = "") -> Place:
         """Return the place of a key, or of the part."""
         line = self.lines.get(key) or self.lines.get("")
-        return Place(self.file, line, self.label, key)
+        return Place(self.file, line, self.label, plain(key)[:60])
 
     def fault(self, key: str, expected: str, suggestion: str, read: str = "") -> None:
         """Add a fault at a key; ``read`` defaults to what was typed there."""
-        shown = read or (f'"{self.written[key]}"' if key in self.written else "nothing")
+        shown = read or (quote(self.written[key]) if key in self.written else "nothing")
         self.findings.fault(self.place(key), shown, expected, suggestion)
 
     def warn(self, text: str) -> None:

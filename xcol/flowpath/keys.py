@@ -8,7 +8,19 @@ from collections.abc import Callable
 from dataclasses import dataclass
 from typing import Protocol
 
-from xcol.units import RATIO, Quantity, UnitError, convert, missing_unit, parse, quote, split, write
+from xcol.units import (
+    LENGTH,
+    RATIO,
+    Quantity,
+    UnitError,
+    convert,
+    missing_unit,
+    parse,
+    plain,
+    quote,
+    split,
+    write,
+)
 
 Value = float | str | bool
 
@@ -44,12 +56,21 @@ class Measure:
     high: float
     zero: bool = False
     fraction: bool = False  # inch fractions, for port diameters
+    otherwise: str = ""  # the key for another quantity that is easily meant
 
     def __call__(self, raw: object) -> float:
         """Return the value in SI units."""
+        if isinstance(raw, int) and abs(raw) > 10**18:
+            raise UnitError(described(raw), f"{self.quantity.name} with its unit", "a smaller number")
         if isinstance(raw, int | float) and not isinstance(raw, bool) and self.quantity is not RATIO:
             raise missing_unit(raw, self.quantity, self._sensible(float(raw)))
-        value = parse(_text_or_number(raw, self.quantity), self.quantity, fraction=self.fraction)
+        try:
+            value = parse(_text_or_number(raw, self.quantity), self.quantity, fraction=self.fraction)
+        except UnitError as error:
+            if not self.otherwise:
+                raise
+            suggestion = f"{error.suggestion}; or {self.otherwise}"
+            raise UnitError(error.read, error.expected, suggestion) from None
         self.check(value, raw)
         return value
 
@@ -59,8 +80,13 @@ class Measure:
             return
         unit = self.quantity.likely[0]
         span = f"{write(self.low, unit, self.quantity)} to {write(self.high, unit, self.quantity)}"
+        shown = (
+            described(raw)
+            if self.quantity is RATIO
+            else (f"{described(raw)}, which is {write(value, unit, self.quantity)}")
+        )
         raise UnitError(
-            f"{described(raw)}, which is {write(value, unit, self.quantity)}",
+            shown,
             f"{self.quantity.name} of {span}" + (", or 0" if self.zero else ""),
             self._other_unit(value, str(raw)),
         )
@@ -68,23 +94,24 @@ class Measure:
     def _other_unit(self, value: float, text: str) -> str:
         """Propose the units in which the number that was typed would make sense."""
         if value < 0:
-            return "a size above zero"
-        typed = {
-            float(found.replace(",", ".")) for found in re.findall(r"\d+(?:[.,]\d+)?(?:[eE][+-]?\d+)?", text)
-        }
+            return "a value within that range"
+        typed = {float(found.replace(",", ".")) for found in re.findall(r"\d+(?:[.,]\d+)?(?:[eE][+-]?\d+)?", text)}
         for unit in self.quantity.likely:
             number = convert(value, unit, self.quantity)
             if any(math.isclose(number, known, rel_tol=1e-6) for known in typed):
-                options = [f'"{number:g} {other}"' for other in self._sensible(number)]
-                return f"did you mean {' or '.join(options)}?" if options else "a size within that range"
-        return "a size within that range"
+                options = [f'"{number:g} {other}"'.replace(' "', '"') for other in self._sensible(number)]
+                return f"did you mean {' or '.join(options)}?" if options else "a value within that range"
+        return "a value within that range"
 
     def _sensible(self, number: float) -> list[str]:
         """Return the usual units in which this number is within the range."""
+        units = self.quantity.likely
+        if self.quantity is LENGTH:
+            units = (*units, "thou")
         return [
             unit
-            for unit in self.quantity.likely
-            if self.low <= parse(f"{number:.17g} {unit}", self.quantity) <= self.high
+            for unit in units
+            if math.isfinite(number) and self.low <= _si(number, unit, self.quantity) <= self.high
         ]
 
 
@@ -101,20 +128,19 @@ class Number:
         """Return the number."""
         value = raw
         if isinstance(raw, str):
+            if re.fullmatch(r"\d{1,3}(?:[ ,.'][0-9]{3})+", raw.strip()) and "." not in raw:
+                raise UnitError(described(raw), self.what, re.sub(r"\D", "", raw))
             try:
                 value, unit = split(raw)
             except UnitError as error:
-                raise UnitError(error.read, self.what, "a number, without quotes") from None
+                raise UnitError(error.read, self.what, "the number alone, without quotes") from None
             if unit:
-                raise UnitError(f"{quote(raw)}, with the unit {quote(unit)}", self.what, f"{value:g} alone")
+                raise UnitError(described(raw), f"{self.what}, which has no unit", "the number alone")
         if isinstance(value, bool) or not isinstance(value, int | float):
             raise UnitError(described(raw), self.what, "a number, without quotes")
-        if not math.isfinite(value) or not self.low <= value <= self.high:
-            raise UnitError(
-                described(raw),
-                f"{self.what}, from {self.low:g} to {self.high:g}",
-                "check the number",
-            )
+        # compared before it becomes a float: TOML has whole numbers of any length
+        if not self.low <= value <= self.high:
+            raise UnitError(described(raw), f"{self.what}, from {self.low:g} to {self.high:g}", "check the number")
         if self.whole and value != int(value):
             raise UnitError(described(raw), f"{self.what}, a whole number", f"{round(value)}")
         return float(value)
@@ -129,8 +155,9 @@ class Text:
     def __call__(self, raw: object) -> str:
         """Return the text, on one line and without control characters."""
         if not isinstance(raw, str):
-            raise UnitError(described(raw), "a text in quotes", f'"{raw}"')
-        text = " ".join("".join(c if c.isprintable() else " " for c in raw).split())
+            number = isinstance(raw, int | float) and not isinstance(raw, bool)
+            raise UnitError(described(raw), "a text in quotes", f'"{described(raw)}"' if number else '"..."')
+        text = plain(raw)
         if len(text) > self.longest:
             raise UnitError(quote(raw), f"at most {self.longest} characters", "a shorter text")
         return text
@@ -182,6 +209,10 @@ class Only:
         return self.inner(raw)
 
 
+def _si(number: float, unit: str, quantity: Quantity) -> float:
+    return parse(f"{number:.17g} {unit}", quantity)
+
+
 def yes(raw: object) -> bool:
     """Return true: the reader of a key of which only ``true`` is computed yet."""
     return True
@@ -197,6 +228,8 @@ def described(raw: object) -> str:
         return "a list"
     if isinstance(raw, dict):
         return "a table"
+    if isinstance(raw, int) and abs(raw) > 10**18:
+        return "a whole number of very many digits"
     return str(raw)[:60]
 
 

@@ -41,9 +41,7 @@ class KeyLines:
         """Return the lines of the keys right below a path, and its own as ""."""
         depth = len(path)
         found = {
-            str(key[depth]): line
-            for key, line in self._lines.items()
-            if len(key) == depth + 1 and key[:depth] == path
+            str(key[depth]): line for key, line in self._lines.items() if len(key) == depth + 1 and key[:depth] == path
         }
         if path in self._lines:
             found[""] = self._lines[path]
@@ -101,6 +99,9 @@ class _Scan:
             if path in self._tables:
                 path = (*path, self._tables[path] - 1)
         path = (*path, *names[-1:])
+        end, self.at = self.at, line_at
+        self._note(path)
+        self.at = end
         if several:
             self._tables[path] = self._tables.get(path, 0) + 1
             path = (*path, self._tables[path] - 1)

@@ -10,7 +10,7 @@ from xcol.flowpath.findings import Draft, Findings
 from xcol.flowpath.keys import Key, Later, described, nearest
 from xcol.flowpath.kinds import KINDS, KINDS_LATER, Kind
 from xcol.flowpath.model import Part, Reading
-from xcol.units import UnitError
+from xcol.units import UnitError, plain
 
 ANY_KIND = (*KINDS, *KINDS_LATER)
 
@@ -32,8 +32,7 @@ def read_part(
     if kind is None:
         return next((word for word in raw if word in KINDS_LATER), ""), None
     draft.kind = kind.name
-    if isinstance(name := raw.get("name"), str):
-        draft.name = " ".join(name.split())
+    draft.name = _name(raw, kind)
     before = len(findings.faults)
     _read_keys(raw, kind, draft)
     _read_size(raw[kind.name], kind, draft)
@@ -69,23 +68,23 @@ def read_keys(raw: dict[str, object], keys: Iterable[Key], draft: Draft) -> None
             draft.findings.fault_of(draft.place(key.name), error)
 
 
-def refuse_unknown(
-    raw: dict[str, object], keys: Iterable[Key], others: tuple[str, ...], draft: Draft
-) -> None:
+def refuse_unknown(raw: dict[str, object], keys: Iterable[Key], others: tuple[str, ...], draft: Draft) -> None:
     """Report what is neither one of the keys nor one of the ``others``, with the nearest that is."""
     named = {key.name: key for key in keys}
     known = (*others, *named)
     for word in raw:
-        if word not in known:
-            plain = OTHER_WORDS.get(word) or OTHER_WORDS.get(word.lower(), "")
-            near = plain if plain in known else nearest(word.lower(), known)
-            listed = ", ".join(w for w in known if w in others or not isinstance(named[w].read, Later))
-            draft.fault(
-                word,
-                f"one of its keys: {listed}",
-                near or "leave it out, or put it into note",
-                f'the key "{word[:40]}", which is not known here',
-            )
+        if word in known:
+            continue
+        near = OTHER_WORDS.get(word) or OTHER_WORDS.get(word.lower(), "")
+        near = near if near in known else nearest(word.lower()[:60], known)
+        suggestion = near or "leave it out, or put it into note"
+        if near in named and isinstance(named[near].read, Later):
+            suggestion = f"{near}, which this version does not compute yet: leave it out"
+        elif word.lower() in ("radius", "r") and near == "bore":
+            suggestion = "bore, with twice the value: a bore is a diameter"
+        listed = ", ".join(w for w in known if w in others or not isinstance(named[w].read, Later))
+        shown = plain(word)[:40]
+        draft.fault(word, f"one of its keys: {listed}", suggestion, f'the key "{shown}", which is not known here')
 
 
 def _kind_of(raw: dict[str, object], draft: Draft) -> Kind | None:
@@ -110,15 +109,18 @@ def _kind_of(raw: dict[str, object], draft: Draft) -> Kind | None:
         )
         return None
     known = ", ".join(ANY_KIND)
-    plain = [(word, OTHER_WORDS.get(word.lower(), "")) for word in raw]
+    spoken = [(word, OTHER_WORDS.get(word.lower(), "")) for word in raw]
     guess = next(
-        (f'"{kind}" for "{word}"' for word, kind in plain if kind in ANY_KIND),
+        (f'"{kind}" for "{word}"' for word, kind in spoken if kind in ANY_KIND),
         next(
             (f'"{near}" for "{word}"' for word in raw if (near := nearest(word.lower(), ANY_KIND))),
             "",
         ),
     )
-    shown = ", ".join(f'"{word[:30]}"' for word in raw) or "an empty part"
+    owners = [kind for kind in KINDS.values() for word in raw if any(key.name == word for key in kind.keys)]
+    if not guess and len(owners) == 1:
+        guess = owners[0].example
+    shown = ", ".join(f'"{plain(word)[:30]}"' for word in raw) or "an empty part"
     draft.fault("", f"a part with its kind: {known}", guess or KINDS["tube"].example, shown)
     return None
 
@@ -148,7 +150,7 @@ def _read_size(raw: object, kind: Kind, draft: Draft) -> None:
             return
     begins_with_number = text.lstrip(" +-−≈~<>.,")[:1].isdigit()
     if isinstance(raw, str) and (given or not begins_with_number or kind.size is None):
-        draft.name = draft.name or " ".join(text.split())[:60]
+        draft.name = draft.name or plain(text)[:60]
         if kind.ways and not given:
             _size_is_missing(started, kind, draft)
         if len(given) > 1:
@@ -189,6 +191,16 @@ def _size_is_missing(started: set[str], kind: Kind, draft: Draft) -> None:
         return
     shown = draft.written[kind.name]
     draft.fault(kind.name, f"its size: {ways}", kind.example, f'"{shown}", a name, and no size')
+
+
+def _name(raw: dict[str, object], kind: Kind) -> str:
+    """Return the part's name, as far as it can be told before its size has been read."""
+    given, value = raw.get("name"), raw.get(kind.name)
+    if isinstance(given, str) and given.strip():
+        return plain(given)[:60]
+    if isinstance(value, str) and not value.lstrip(" +-.,")[:1].isdigit():
+        return plain(value)[:60]
+    return ""
 
 
 def _readings(kind: Kind, draft: Draft) -> Iterable[Reading]:

@@ -13,7 +13,7 @@ from xcol.flowpath.keys import described
 from xcol.flowpath.locate import KeyLines
 from xcol.flowpath.model import Instrument, Peak
 from xcol.flowpath.part_reader import read_keys, refuse_unknown
-from xcol.units import TIME, write
+from xcol.units import TIME, plain, write
 
 DEFAULT_K = (1.0, 2.0, 5.0, 10.0)
 _POSITIONS = ("k", "retention", "elution_volume")
@@ -34,7 +34,7 @@ def read_peaks(raw: object, file: str, lines: KeyLines, findings: Findings) -> l
             draft.fault("", "a peak in braces, { k = 2 }", "put the peak in { }", described(entry))
             continue
         if isinstance(name := entry.get("name"), str):
-            draft.name = " ".join(name.split())
+            draft.name = plain(name)[:60]
         read_keys(entry, PEAK_KEYS.values(), draft)
         refuse_unknown(entry, PEAK_KEYS.values(), (), draft)
         drafts.append(draft)
@@ -45,6 +45,8 @@ def check_positions(drafts: list[Draft], has_column: bool) -> None:
     """Report peaks without exactly one of k, retention and elution_volume."""
     for draft in drafts:
         given = [key for key in _POSITIONS if key in draft.written]
+        if not has_column:
+            given += ["plates"] if "plates" in draft.written else []
         if not has_column and given:
             draft.fault(
                 given[0],
@@ -113,6 +115,8 @@ def _peak(draft: Draft, instrument: Instrument, default: float | None) -> Peak |
         k = _k_from(retention, draft, instrument)
         if k is None:
             return None
+    if k is not None and k > 100:
+        draft.warn(f"k = {k:.4g} is unusual: is the unit of its retention, or the void volume, meant?")
     name = draft.name or (f"k = {k:.3g}" if k is not None else f"peak {draft.position}")
     return Peak(name, k, diffusion, draft.place(), plates, retention)
 

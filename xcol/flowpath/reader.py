@@ -19,7 +19,7 @@ from xcol.flowpath.peak_reader import check_positions, peaks_of, read_peaks
 from xcol.flowpath.source import read_text
 from xcol.flowpath.toml_text import load
 
-MOST_PARTS = 500
+MOST_PARTS = 100
 _DENSITY = 1000.0  # kg/m³, for the Reynolds number only
 
 
@@ -70,6 +70,7 @@ def _instrument(top: Draft, parts: tuple[Part, ...], drafts: list[Draft], findin
         peaks=(),
         place=Place(top.file),
     )
+    _notes_on_names(instrument, findings)
     slips.of_path(instrument, Place(top.file, top.lines.get("flow"), "", "flow"), findings)
     peaks = peaks_of(drafts, instrument, top.number("diffusion"), findings)
     _notes_on_beds(instrument, findings)
@@ -86,6 +87,15 @@ def _instrument(top: Draft, parts: tuple[Part, ...], drafts: list[Draft], findin
     )
 
 
+def _notes_on_names(instrument: Instrument, findings: Findings) -> None:
+    names = [part.name.lower() for part in instrument.detectors if part.name]
+    for name in sorted({name for name in names if names.count(name) > 1}):
+        findings.warn(f'{names.count(name)} detectors have the name "{name}": --detector finds the first')
+    for part in instrument.detectors:
+        if not any(element.contribution == "cell" for element in part.elements):
+            findings.assume("no cell", f"{part.label}: no cell entered, none counted")
+
+
 def _notes_on_beds(instrument: Instrument, findings: Findings) -> None:
     """Say what the columns' pressure drops rest on, where they are computed at all."""
     for part in instrument.parts:
@@ -94,8 +104,7 @@ def _notes_on_beds(instrument: Instrument, findings: Findings) -> None:
                 continue
             if bed.particle is None:
                 findings.warn(
-                    f"{part.label}: no particle size: its pressure drop is not computed (enter it, or a "
-                    "measured drop)"
+                    f"{part.label}: no particle size: its pressure drop is not computed (enter it, or a measured drop)"
                 )
             elif bed.porosity_is_assumed and instrument.viscosity is not None:
                 value, low, high = bed.porosity
@@ -121,9 +130,7 @@ def _ends_of_ranges(instrument: Instrument) -> list[Assumption]:
     return ends
 
 
-def _read_path(
-    data: dict[str, Any], file: str, lines: KeyLines, findings: Findings
-) -> tuple[list[str], list[Part]]:
+def _read_path(data: dict[str, Any], file: str, lines: KeyLines, findings: Findings) -> tuple[list[str], list[Part]]:
     """Return the kinds of all entries, in order, and the parts that could be read."""
     entries = data.get("path")
     place = Place(file, lines.line(("path",)), "", "path")
@@ -141,23 +148,25 @@ def _read_path(
             findings.fault(place, "nothing", "the parts in order of flow", example)
         return [], []
     if not isinstance(entries, list):
-        findings.fault(place, described(entries), "a list of parts", "path = [ { ... }, { ... } ]")
+        example = (
+            "[[path]], with two brackets, above each part"
+            if isinstance(entries, dict)
+            else ("path = [ { ... }, { ... } ]")
+        )
+        findings.fault(place, described(entries), "a list of parts", example)
         return [], []
     if len(entries) > MOST_PARTS:
         findings.fault(place, f"{len(entries)} parts", f"at most {MOST_PARTS}", "fewer parts")
         return [], []
     found = [
-        read_part(entry, index + 1, file, lines.of("path", index), findings)
-        for index, entry in enumerate(entries)
+        read_part(entry, index + 1, file, lines.of("path", index), findings) for index, entry in enumerate(entries)
     ]
     kinds = [kind for kind, _ in found]
     _check_kinds(kinds, entries, place, lines, findings)
     return kinds, [part for _, part in found if part is not None]
 
 
-def _check_kinds(
-    kinds: list[str], entries: list[Any], place: Place, lines: KeyLines, findings: Findings
-) -> None:
+def _check_kinds(kinds: list[str], entries: list[Any], place: Place, lines: KeyLines, findings: Findings) -> None:
     """Report a path without injection or detector, and a second injection.
 
     An entry whose kind is not known might be the one that is missed, so nothing is said then.

@@ -27,11 +27,12 @@ def tube_size(text: str) -> dict[str, float]:
         raise UnitError(quote(text), expected, _tube_advice(sizes))
     bare = [size for size in sizes if not split(size)[1]]
     if bare:
-        units = ("mm", "in") if split(bare[0])[0] < 1.5 else ("cm", "mm")
-        readings = (" x ".join(f"{s} {unit}" if s == bare[0] else s for s in sizes) for unit in units)
-        options = " or ".join(f'"{reading}"' for reading in readings)
-        raise UnitError(f"{quote(text)}: {bare[0]} without a unit", expected, options)
+        options = " or ".join(f'"{reading}"' for reading in _with_units(sizes))
+        missing = " and ".join(bare)
+        raise UnitError(f"{quote(text)}: {missing} without a unit", expected, options)
     small, large = sorted(parse(size, LENGTH) for size in sizes)
+    if small < 0:
+        raise UnitError(f"{quote(text)}, a size below zero", expected, "sizes above zero")
     if small == 0:  # no length, rather than no bore
         small, large = large, small
     return {"length": large, "bore": small}
@@ -51,7 +52,8 @@ def column_size(text: str) -> dict[str, float]:
     if len(sizes) == 3 and len(pieces) == 1:  # "4.6 x 150 mm x 5 um" reads one way only
         pieces.append(sizes.pop())
     if len(sizes) != 2 or len(pieces) > 2:
-        raise UnitError(quote(text), expected, '"4.6 x 150 mm, 5 um"')
+        advice = "in this form; a pore size and the like can go into note"
+        raise UnitError(quote(text), expected, advice)
     (first, first_unit), (second, second_unit) = (split(size) for size in sizes)
     if not second_unit:
         rest = f", {pieces[1]}" if len(pieces) == 2 else ""
@@ -59,6 +61,13 @@ def column_size(text: str) -> dict[str, float]:
             f"{quote(text)}: {second:g} without a unit",
             expected,
             f'"{first:g} x {second:g} mm{rest}"',
+        )
+    if not first_unit and second_unit != "mm":  # "2.1 x 5 cm" may mean 2.1 mm or 21 mm
+        rest = f", {pieces[1]}" if len(pieces) == 2 else ""
+        raise UnitError(
+            f"{quote(text)}: {first:g} without a unit, beside one in {second_unit}",
+            expected,
+            f'"{first:g} mm x {second:g} {second_unit}{rest}"',
         )
     if not first_unit:
         sizes[0] = f"{sizes[0]} {second_unit}"
@@ -95,7 +104,22 @@ def _sizes(text: str, expected: str) -> list[str]:
     return [_INSIDE.sub("", size).strip() for size in _BY.split(text.strip())]
 
 
+def _with_units(sizes: list[str]) -> list[str]:
+    """Return the likely readings of a tube's sizes of which one or both lack the unit."""
+    if not any(split(size)[1] for size in sizes):
+        large = max(sizes, key=lambda size: split(size)[0])
+        return [" x ".join(f"{s} {long if s is large else short}" for s in sizes)
+                for long, short in (("cm", "mm"), ("mm", "mm"))]  # fmt: skip
+    bare = next(size for size in sizes if not split(size)[1])
+    units = ("mm", "in") if split(bare)[0] < 1.5 else ("cm", "mm")
+    return [" x ".join(f"{s} {unit}" if s is bare else s for s in sizes) for unit in units]
+
+
 def _tube_advice(sizes: list[str]) -> str:
-    if len(sizes) == 1 and re.fullmatch(r"[\d.,]+\s*[A-Za-zµμ]+", sizes[0]):
+    try:
+        length = parse(sizes[0], LENGTH) if len(sizes) == 1 else 0.0
+    except UnitError:
+        length = 0.0
+    if length > 0:
         return f'"{sizes[0]} x 0.25 mm", with the tube\'s own bore'
-    return '"40 cm x 0.25 mm": two sizes with an x between them; anything else can go into note'
+    return 'two sizes with an x between them, as in "40 cm x 0.25 mm"; anything else can go into note'

@@ -12,7 +12,7 @@ from typing import TYPE_CHECKING
 from xcol.catalogs import tubing
 from xcol.flowpath.elements import Bed, Bore
 from xcol.flowpath.hydraulics import LAMINAR_LIMIT, reynolds_number
-from xcol.units import FLOW, LENGTH, PRESSURE, VOLUME, significant, write
+from xcol.units import FLOW, LENGTH, PRESSURE, VISCOSITY, VOLUME, significant, write
 
 if TYPE_CHECKING:
     from xcol.errors import Place
@@ -43,6 +43,9 @@ def of_path(instrument: Instrument, flow_place: Place, findings: Findings) -> No
     _flow_and_columns(instrument, flow_place, findings)
     _injection_and_columns(instrument, findings)
     _order(instrument, findings)
+    if instrument.viscosity is not None and not 1.5e-4 <= instrument.viscosity <= 5e-3:
+        shown = write(instrument.viscosity, "mPa s", VISCOSITY)
+        findings.warn(f"a viscosity of {shown} is unusual: 0.2 to 3 mPa s is usual; Pa s or mPa s?")
     if instrument.viscosity is None:
         findings.warn("no viscosity entered: pressures and Reynolds numbers are not computed")
         return
@@ -80,21 +83,19 @@ def _inject(draft: Draft) -> None:
 
 
 def _tube(draft: Draft) -> None:
-    bore, length = draft.number("bore"), draft.number("length")
+    bore, length, volume = draft.number("bore"), draft.number("length"), draft.number("volume")
     if bore is None:
         return
+    if length is None and volume is not None:
+        length = volume / (math.pi / 4 * bore**2)
     shown = f"bore {write(bore, 'mm', LENGTH)} ({write(bore, 'in', LENGTH)})"
-    outside = next(
-        (name for name, d in _OUTSIDE_DIAMETERS.items() if math.isclose(bore, d, rel_tol=0.012)), ""
-    )
+    outside = next((name for name, d in _OUTSIDE_DIAMETERS.items() if math.isclose(bore, d, rel_tol=0.012)), "")
     millimetres = bore * 1e3
     if outside:
         draft.warn(f"{shown} is the outside diameter of {outside} tubing: is the bore meant?")
     elif bore > WIDEST_USUAL_BORE:
         draft.warn(f"{shown} is wide for a connecting tube: o.d. for bore, or another unit?")
-    elif _says_millimetres(draft) and any(
-        math.isclose(millimetres, number, rel_tol=1e-6) for number in _REEL_NUMBERS
-    ):
+    elif _says_millimetres(draft) and any(math.isclose(millimetres, number, rel_tol=1e-6) for number in _REEL_NUMBERS):
         draft.warn(f"{shown}: reels show this number in inches; did you mean {millimetres:g} in?")
     else:
         stock = [row.bore for row in tubing()]
@@ -116,7 +117,7 @@ def _says_millimetres(draft: Draft) -> bool:
 
 
 def _fitting(draft: Draft) -> None:
-    _odd_volume(draft, draft.number("volume"), 2e-7)
+    _odd_volume(draft, draft.number("volume"), 2e-8)
 
 
 def _column(draft: Draft) -> None:
@@ -127,6 +128,9 @@ def _column(draft: Draft) -> None:
     if plates is not None and particle is not None:
         if plates_fault(draft, "plates", plates, length, particle):
             return
+        if length / plates < 1.4 * particle:
+            height = significant(length / plates / particle)
+            draft.warn(f"a reduced plate height of {height} is better than the best columns': per metre?")
         if length / plates > 50 * particle:
             reduced = length / plates / particle
             draft.warn(f"{plates:g} plates are few: a reduced plate height of {significant(reduced)}")
@@ -191,8 +195,8 @@ def _detector(draft: Draft) -> None:
         draft.warn("no filter setting (time_constant or rise_time): its filter is not counted")
     for key in ("time_constant", "rise_time"):
         seconds = draft.number(key)
-        if seconds is not None and seconds > 10:
-            draft.warn(f"{key} of {seconds:g} s is unusual: s or ms?")
+        if seconds is not None and seconds > 5:
+            draft.warn(f"{key} of {seconds:g} s is unusual: is the unit meant?")
 
 
 def _odd_volume(draft: Draft, volume: float | None, most: float) -> None:

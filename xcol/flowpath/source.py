@@ -24,8 +24,8 @@ def read_text(name: str) -> str:
         raise _refusal(place, "more than 1 MB", "a path file of a few kB", "the name of a path file")
     if data.startswith(_UTF16):
         raise _refusal(place, "text in UTF-16", "text in UTF-8", "save it again, with the encoding UTF-8")
-    if b"\x00" in data:
-        raise _refusal(place, "a binary file", "a path file: text in TOML", "xcol budget FILE.toml")
+    if zeros := data.count(b"\x00"):
+        raise _with_zeros(data, zeros, place)
     try:
         text = data.decode("utf-8-sig")
     except UnicodeDecodeError as error:
@@ -41,10 +41,27 @@ def read_text(name: str) -> str:
     return text.replace("\r\n", "\n").replace("\r", "\n")
 
 
+def _with_zeros(data: bytes, zeros: int, place: Place) -> InputError:
+    """Return the refusal of a text in UTF-16 without its mark, a stray zero byte, or a binary file."""
+    if zeros > 0.4 * len(data):
+        return _refusal(
+            place,
+            "text in UTF-16, or no text at all",
+            "text in UTF-8",
+            "save it again, with the encoding UTF-8",
+        )
+    if all(byte >= 32 or byte in b"\t\r\n\x00" for byte in data):
+        line = data.count(b"\n", 0, data.index(b"\x00")) + 1
+        return _refusal(Place(place.file, line), "a zero byte", "text", "type the line anew")
+    return _refusal(place, "a binary file", "a path file: text in TOML", "the name of a path file")
+
+
 def _bytes(name: str, place: Place) -> bytes:
     if name == "-":
         return sys.stdin.buffer.read(MOST_BYTES + 1)
     path = Path(name)
+    if not name.strip():
+        raise _refusal(Place("(no name)"), "an empty name", "the name of a path file", "xcol check FILE")
     try:
         if path.is_dir():
             raise _refusal(place, "a directory", "a path file", _files_in(path) or "the name of a path file")

@@ -87,6 +87,9 @@ def load(text: str, file: str) -> tuple[dict[str, Any] | None, str, list[Fault]]
             return None, text, faults
         except tomllib.TOMLDecodeError as error:
             spot = _spot(text, str(error))
+        except ValueError:  # a whole number of more digits than Python reads
+            faults.append(_too_many_digits(text, file))
+            return None, text, faults
         slip = next((found for rule in _RULES if (found := rule(spot))), None) or _unknown(spot)
         line = text.count("\n", 0, min(slip.at, max(len(text.rstrip()) - 1, 0))) + 1
         faults.append(Fault(Place(file, line), slip.read, slip.expected, slip.suggestion))
@@ -94,6 +97,12 @@ def load(text: str, file: str) -> tuple[dict[str, Any] | None, str, list[Fault]]
             return None, text, faults
         text = slip.mended
     return None, text, faults
+
+
+def _too_many_digits(text: str, file: str) -> Fault:
+    longest = max(re.finditer(r"\d+", text), key=lambda match: len(match[0]))
+    place = Place(file, text.count("\n", 0, longest.start()) + 1)
+    return Fault(place, f"a number of {len(longest[0])} digits", "a number", "fewer digits")
 
 
 def _spot(text: str, message: str) -> _Spot:
@@ -213,12 +222,40 @@ def _missing_comma_between_parts(spot: _Spot) -> _Slip | None:
     )
 
 
+def _foreign_sign(spot: _Spot) -> _Slip | None:
+    """A comment in the manner of other formats, or a space that is none."""
+    if spot.char == "\u00a0":
+        line = spot.line.replace("\u00a0", " ")
+        mended = spot.replaced(spot.start, spot.end, line)
+        read, expected = f"{quote(spot.line)}, with a no-break space", "plain spaces between words"
+        return _Slip(read, expected, "type the space anew", mended, spot.at)
+    before = spot.text[spot.start : spot.at]
+    if not (spot.text.startswith("//", spot.at) or (spot.char == ";" and not before.strip())):
+        return None
+    length = 2 if spot.char == "/" else 1
+    return _Slip(
+        f"{quote(spot.line)}, a comment that does not begin with #",
+        "comments that begin with #",
+        f"# {spot.text[spot.at + length : spot.end].strip()}",
+        spot.replaced(spot.at, spot.at + length, "#"),
+        spot.at,
+    )
+
+
 def _open_list(spot: _Spot) -> _Slip | None:
-    """A new statement where the list before it has not ended."""
+    """A new statement where the list before it has not ended, or a part without its opening brace."""
     if not spot.message.startswith(("Invalid value", "Unclosed array")):
         return None
     if spot.text[spot.start : spot.at].strip() or not (_KEY_AND_EQUALS.match(spot.line) or spot.char == "["):
         return None
+    if re.search(r"\}\s*,?\s*(?:#.*)?$", spot.line) and spot.line.count("{") < spot.line.count("}"):
+        return _Slip(
+            f'{quote(spot.line)}, a part without its opening "{{"',
+            'a part between "{" and "}"',
+            f"{{ {spot.line.strip()}",
+            spot.replaced(spot.at, spot.at, "{ "),
+            spot.at,
+        )
     before = len(spot.text[: spot.start].rstrip())
     return _Slip(
         f"{quote(spot.line)}, inside a list that has not ended",
@@ -360,6 +397,7 @@ def _key_before(before: str, equals: int) -> str:
 
 _RULES: tuple[Callable[[_Spot], _Slip | None], ...] = (
     _curly_quotes,
+    _foreign_sign,
     _end_of_document,
     _open_string,
     _comma_before_brace,

@@ -47,8 +47,13 @@ def budget_csv(answer: Budget) -> str:
     if lines:
         writer = csv.DictWriter(out, fieldnames=list(lines[0]), lineterminator="\n")
         writer.writeheader()
-        writer.writerows(lines)
+        writer.writerows({key: _cell(value) for key, value in line.items()} for line in lines)
     return out.getvalue()
+
+
+def _cell(value: Any) -> Any:
+    """Keep a spreadsheet from taking a name for a formula."""
+    return f"'{value}" if isinstance(value, str) and value[:1] in tuple("=+-@") else value
 
 
 def _pressure(row: PressureRow) -> dict[str, Any]:

@@ -126,7 +126,9 @@ def _warnings(answer: Budget, sheet: Sheet, room: int, into: Sheet | None = None
         trial = _like(sheet)
         _at_most(2, f"! {warning}", trial)
         tail = 1 if left > 1 else 0
-        if (into is None and not urgent) or used + trial.count() + tail > max(room, 3 if index == 0 else 0):
+        if (into is None and not urgent) or used + trial.count() + tail > (
+            max(room, 3) if urgent and not index else room
+        ):
             target.line(f"! {_counted(left, index > 0)}: --full", "yellow")
             return target
         _at_most(2, f"! {warning}", target, "yellow")

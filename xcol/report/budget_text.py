@@ -136,9 +136,7 @@ def _peak_line(peak: PeakBudget, answer: Budget) -> str:
     points = f", {significant(peak.points)} data points across 4σ" if peak.points is not None else ""
     from_retention = ""
     if peak.peak.retention is not None:
-        from_retention = (
-            f", from {significant(peak.peak.retention, 4)} s recorded less the transit outside the column"
-        )
+        from_retention = f", from {significant(peak.peak.retention, 4)} s recorded less the transit outside the column"
     k = f", k = {significant(peak.peak.k, 4)}{from_retention}" if peak.peak.k is not None else ""
     return (
         f'Peak "{peak.peak.name}"{k}, D = {significant(peak.peak.diffusion)} m²/s: '
@@ -150,8 +148,7 @@ def _peak_line(peak: PeakBudget, answer: Budget) -> str:
 def _pressure_line(answer: Budget) -> str:
     limited = [row for row in answer.pressure.rows if row.part.max_pressure is not None]
     checked = ", ".join(
-        f"{name_of(row.part)} {bars(row.inlet)} of {show(row.part.max_pressure or 0.0, PRESSURE)}"
-        for row in limited
+        f"{name_of(row.part)} {bars(row.inlet)} of {show(row.part.max_pressure or 0.0, PRESSURE)}" for row in limited
     )
     text = total_pressure(answer)
     if checked:

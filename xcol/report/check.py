@@ -117,8 +117,7 @@ def _grids(instrument: Instrument) -> list[tuple[str, Grid]]:
         ("pump pressure", instrument.pump_pressure, PRESSURE),
     ]
     flow = tuple(
-        (name, show(value, quantity, 4) if value is not None else "not entered")
-        for name, value, quantity in conditions
+        (name, show(value, quantity, 4) if value is not None else "not entered") for name, value, quantity in conditions
     )
     rows: list[tuple[str, ...]] = []
     for part in instrument.parts:

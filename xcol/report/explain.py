@@ -10,6 +10,7 @@ from xcol import __version__
 from xcol.errors import Fault, InputError, Place
 from xcol.flowpath.keys import nearest
 from xcol.report.topics import TOPICS, Topic
+from xcol.units import quote
 
 if TYPE_CHECKING:
     from xcol.report.sheet import Sheet
@@ -21,23 +22,28 @@ def find(word: str | None) -> tuple[Topic, ...]:
     """Return the topic of that name or other word; all topics without a word."""
     if word is None:
         return TOPICS
-    plain = " ".join(word.lower().replace("_", " ").split())
+    asked = _normal(word)
     for topic in TOPICS:
-        if plain in (topic.name, f"{topic.name}s"):
+        if asked in (topic.name, f"{topic.name}s"):
             return (topic,)
     for topic in TOPICS:
-        if plain in topic.words:
+        if asked in map(_normal, topic.words):
             return (topic,)
     names = tuple(topic.name for topic in TOPICS)
     words = {other: topic.name for topic in TOPICS for other in topic.words}
-    near = nearest(plain, (*names, *words))
+    near = nearest(asked, (*names, *words))
     fault = Fault(
         Place(key="TOPIC"),
-        f'"{word[:40]}"',
+        quote(word),
         f"one of {', '.join(names)}",
         f"xcol explain {words.get(near, near) or 'budget'}",
     )
     raise InputError((fault,))
+
+
+def _normal(word: str) -> str:
+    """Return a word in lower case, with plain spaces and a plain u for both micro signs."""
+    return " ".join(word.lower().replace("_", " ").replace("µ", "u").replace("μ", "u").split())
 
 
 def topics_text(topics: tuple[Topic, ...], sheet: Sheet, *, in_full: bool) -> None:

@@ -95,12 +95,13 @@ def name_of(part: Part) -> str:
 
 
 def contribution_label(part: Part, contribution: str) -> str:
-    """Return the line's label: 'injected 20 µL', 'UV filter 0.5 s', 'valve to column'."""
+    """Return the line's label: 'injected 20 µL', 'UV time constant 0.5 s', 'valve to column'."""
     values = {reading.key: reading for reading in part.readings}
-    size = next((show_reading(values[k]) for k in _SIZES.get(contribution, ()) if k in values), "")
+    key = next((key for key in _SIZES.get(contribution, ()) if key in values), "")
+    size = show_reading(values[key]) if key else ""
     if contribution == "injection":
         return f"injected {size}" + (f", {part.name}" if part.name else "")
     name = name_of(part)
-    if part.kind == "detector":
-        return f"{name} {contribution} {size}".strip()
+    if part.kind == "detector":  # a time constant is not a rise time: the key says which
+        return f"{name} {key.replace('_', ' ') or contribution} {size}".strip()
     return f"{name} {size}".strip()

@@ -11,9 +11,7 @@ from xcol.flowpath.kinds.table import COMMON, Kind
 
 __all__ = ["COMMON", "KINDS", "KINDS_LATER", "Kind"]
 
-KINDS: dict[str, Kind] = {
-    kind.name: kind for kind in (INJECT, TUBE, FITTING, MIXER, COLUMN, BLOCK, DETECTOR, OUTLET)
-}
+KINDS: dict[str, Kind] = {kind.name: kind for kind in (INJECT, TUBE, FITTING, MIXER, COLUMN, BLOCK, DETECTOR, OUTLET)}
 
 # Kinds that the format has and that this version does not compute yet.
 KINDS_LATER = ("split", "addition", "switch")

@@ -24,9 +24,7 @@ def _column(draft: Draft) -> Elements:
         )
     written = draft.written["column"]
     if "bore" not in draft.written and length_first(written):
-        draft.warn(
-            f'"{written}" has the length first: read as bore {bore * 1e3:g} mm, length {length * 1e3:g} mm'
-        )
+        draft.warn(f'"{written}" has the length first: read as bore {bore * 1e3:g} mm, length {length * 1e3:g} mm')
     usual = packings()["fully porous"]
     void, total = draft.number("void_volume"), draft.number("total_porosity")
     if void is not None and total is not None:

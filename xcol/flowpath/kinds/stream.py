@@ -158,8 +158,7 @@ def _block(draft: Draft) -> Elements:
     if measured_at is not None:
         draft.assume(
             "blocks constant in uL2",
-            f"its variance, measured at {write(measured_at, 'mL/min', FLOW)}, taken as the same in "
-            "µL² at this flow",
+            f"its variance, measured at {write(measured_at, 'mL/min', FLOW)}, taken as the same in µL² at this flow",
         )
         return (Block(must(draft, "variance"), volume),)
     draft.assume("blocks constant in uL2", "its variance in µL² taken as the same at every flow")

@@ -54,7 +54,7 @@ QUANTITIES = (
         "Isocratic elution; parts that are linear and independent of each other, runs of tubes aside.",
         ("additivity of the cumulants of independent delays",),
         _budget,
-        ("sum", "share", "of added", "n if gone", "µl²", "ul2", "s²"),
+        ("sum", "share", "of added", "n if gone", "µL²", "uL2", "s²"),
     ),
     Topic(
         "pressure",

@@ -1,0 +1,208 @@
+"""What a review found wrong once."""
+
+import pytest
+
+from xcol.answers.budget import budget
+from xcol.flowpath.reader import parse
+
+HEAD = 'flow = "1 mL/min"\nviscosity = "0.9 mPa s"\n'
+COLUMN = '{ column = "4.6 x 150 mm, 5 um", plates = 11000, total_porosity = 0.65 }'
+
+
+def answer_of(parts, peaks="", head=HEAD):
+    text = head + "path = [\n" + ",\n".join(parts) + "\n]\n" + (peaks or 'diffusion = "1e-9 m^2/s"\n')
+    return budget(parse(text, "f"))
+
+
+def peaks(entry):
+    return f'peaks = [ {{ name = "a", diffusion = "1e-9 m^2/s", {entry} }} ]\n'
+
+
+BETWEEN = ['{ inject = "20 uL" }', COLUMN, '{ detector = "UV", cell = "10 uL" }', '{ tube = "30 cm x 0.2 mm" }', COLUMN,
+           '{ detector = "RI", cell = "10 uL" }']  # fmt: skip
+
+
+def test_a_column_may_have_a_name_and_its_sizes_in_keys():
+    named = COLUMN.replace('"4.6 x 150 mm, 5 um"', '"main", bore = "4.6 mm", length = "150 mm", particle = "5 um"')
+    by_name = answer_of(['{ inject = "20 uL" }', named, '{ detector = "UV" }'])
+    short = answer_of(['{ inject = "20 uL" }', COLUMN, '{ detector = "UV" }'])
+    for one, other in zip(by_name.detectors[0].peaks, short.detectors[0].peaks, strict=True):
+        assert one.plates_observed == pytest.approx(other.plates_observed)
+
+
+def test_retention_at_a_first_detector_between_two_columns():
+    first = answer_of(BETWEEN, peaks("k = 2")).detectors[0].peaks[0]
+    again = answer_of(BETWEEN, peaks(f'retention = "{first.retention!r} s"'))
+    assert again.detectors[0].peaks[0].peak.k == pytest.approx(2)
+
+
+def test_retention_at_a_detector_before_the_column_is_refused(faults_of):
+    parts = ['{ inject = "20 uL" }', '{ detector = "a" }', COLUMN, '{ detector = "b" }']
+    (fault,) = faults_of(HEAD + "path = [\n" + ",\n".join(parts) + "\n]\n" + peaks('retention = "6 min"'))
+    assert fault.place.key == "retention"
+
+
+def test_a_peak_s_plates_are_shared_by_columns_of_which_a_detector_sees_some():
+    first, last = answer_of(BETWEEN, peaks("k = 1, plates = 20000")).detectors
+    assert last.peaks[0].plates_column == pytest.approx(20000)
+    assert first.peaks[0].plates_column == pytest.approx(10000)
+
+
+def test_a_block_s_volume_delays_and_changes_no_variance():
+    def with_volume(text):
+        block = f'{{ block = "4 uL^2"{text} }}'
+        tube = '{ tube = "10 cm x 0.25 mm" }'
+        return answer_of(['{ inject = "20 uL" }', tube, block, tube, COLUMN, '{ detector = "UV" }']).detectors[0]
+
+    without, some = with_volume(""), with_volume(', volume = "8 uL"')
+    assert some.delay - without.delay == pytest.approx(0.48)
+    assert some.peaks[0].variance_extra == pytest.approx(without.peaks[0].variance_extra)
+
+
+def test_no_length_in_the_short_form_is_no_length():
+    tube = parse(
+        HEAD + 'diffusion = "1e-9 m^2/s"\npath = [{inject = "1 uL"}, {tube = "0 cm x 0.25 mm"}, {detector = "UV"}]', "f"
+    )
+    assert tube.parts[1].elements[0].length == 0
+    assert tube.parts[1].elements[0].bore == pytest.approx(0.25e-3)
+
+
+BARE = '{ column = "4.6 x 100 mm", plates = 9000 }'
+
+
+def test_a_column_without_particle_takes_what_is_left_of_the_pump_pressure():
+    parts = ['{ inject = "20 uL" }', COLUMN, BARE, '{ detector = "UV", cell = "1 uL", time_constant = "0.1 s" }']
+    found = answer_of(parts, head=HEAD + 'pump_pressure = "120 bar"\n')
+    first, second = (row.drop.value for row in found.pressure.rows if row.part.kind == "column")
+    alone = answer_of([*parts[:2], parts[3]]).pressure.total.value
+    assert first == pytest.approx(alone)
+    assert first + second == pytest.approx(120e5)
+    assert not found.warnings
+    assert not any("bed" in assumption.short for assumption in found.instrument.assumed)
+
+
+def test_two_of_them_share_it_by_length_and_say_so():
+    short = BARE.replace("100 mm", "50 mm").replace("9000", "4500")
+    found = answer_of(
+        ['{ inject = "20 uL" }', BARE, short, '{ detector = "UV" }'], head=HEAD + 'pump_pressure = "120 bar"\n'
+    )
+    first, second = (row.drop.value for row in found.pressure.rows if row.part.kind == "column")
+    assert first == pytest.approx(2 * second)
+    assert any("share" in warning for warning in found.warnings)
+
+
+def test_the_pump_pressure_is_the_first_inlet_where_nothing_else_is_known():
+    column = COLUMN.replace("0.65 }", '0.65, max_pressure = "100 bar" }')
+    head = 'flow = "1 mL/min"\npump_pressure = "120 bar"\n'
+    found = answer_of(
+        ['{ inject = "20 uL" }', column, '{ detector = "UV", cell = "1 uL", time_constant = "1 s" }'], head=head
+    )
+    assert found.pressure.rows[1].inlet.value == pytest.approx(120e5)
+    assert any("above its limit" in warning for warning in found.warnings)
+
+
+def test_a_cut_tube_is_no_more_unmixed_than_the_whole():
+    def warnings(*tubes):
+        peak = peaks("k = 1").replace("1e-9", "2e-11")
+        parts = ['{ inject = "20 uL" }', *tubes, COLUMN, '{ detector = "UV", cell = "1 uL", time_constant = "1 s" }']
+        return [w for w in answer_of(parts, peak).warnings if "unmixed" in w]
+
+    assert not warnings('{ tube = "40 cm x 0.25 mm" }')
+    assert not warnings('{ tube = "20 cm x 0.25 mm" }', '{ tube = "20 cm x 0.25 mm" }')
+    assert warnings('{ tube = "10 cm x 0.25 mm" }')
+
+
+def test_numbers_without_end_are_refused(faults_of):
+    for digits in (400, 5000):
+        for key in ("plates", "k"):
+            column = COLUMN.replace("11000", "9" * digits) if key == "plates" else COLUMN
+            tail = peaks(f"k = {'9' * digits}") if key == "k" else peaks("k = 1")
+            faults = faults_of(
+                HEAD + f'path = [\n{{ inject = "2 uL" }},\n{column},\n{{ detector = "UV" }},\n]\n' + tail
+            )
+            assert len(faults) == 1
+            assert faults[0].place.line
+            assert len(str(faults[0])) < 400
+    (fault,) = faults_of(
+        f"flow = {'9' * 400}\npath = [ {{ inject = '2 uL' }}, {{ detector = 'UV' }} ]\ndiffusion = '1e-9 m^2/s'"
+    )
+    assert fault.place.key == "flow"
+
+
+def test_names_lose_their_control_characters():
+    text = (
+        HEAD
+        + 'diffusion = "1e-9 m^2/s"\n'
+        + 'path = [{inject = "1 uL", name = "a\\u001b[2Jb"}, {detector = "c\\u0000\\u009b31m"}]'
+    )
+    assert [part.name for part in parse(text, "f").parts] == ["a [2Jb", "c 31m"]
+
+
+def test_long_words_are_cut(faults_of):
+    for text in (f"{'x' * 50000} = 1\n", f'title = "{"x" * 50000}"\n'):
+        faults = faults_of(
+            text + 'flow = "1 mL/min"\npath = [{ inject = "1 uL" }, { detector = "UV" }]\ndiffusion = "1e-9 m^2/s"\n'
+        )
+        assert max(len(str(fault)) for fault in faults) < 800
+
+
+@pytest.mark.parametrize(
+    ("old", "new", "proposed"),
+    [
+        ('"20 cm x 0.2 mm"', '"25 cm x 5 in"', "5 thou"),
+        ('"20 cm x 0.2 mm"', '"25 x 0.12"', "25 cm x 0.12 mm"),
+        ('"20 cm x 0.2 mm"', '"25 cm x 5/1000 in"', "5 thou"),
+        ('tube = "20 cm x 0.2 mm"', 'tube = "a", length = "20 cm", radius = "0.1 mm"', "twice"),
+        ('"1 s"', '"1 s", rate = "0.05 s"', "cycle"),
+        ('"1 s"', '"1 s", cycle = "20 Hz"', "rate"),
+        ("11000", '"9 000"', "9000"),
+        ("11000", '"9,000"', "9000"),
+        ("4.6 x 150 mm, 5 um", "2.1 x 50 cm, 2.5 um", "2.1 mm x 50 cm"),
+        ("4.6 x 150 mm, 5 um", "4.6 x 150 mm, 5", '"5 um"'),
+        ('{ tube = "20 cm x 0.2 mm" }', '{ loop = "3 uL" }', "inject"),
+        ('"20 cm x 0.2 mm" }', '"20 cm x 0.2 mm", bends = 3 }', "not compute"),
+    ],
+)
+def test_suggestions_lead_on(old, new, proposed, faults_of):
+    detector = '{ detector = "UV", cell = "1 uL", time_constant = "1 s" }'
+    parts = ['{ inject = "2 uL" }', '{ tube = "20 cm x 0.2 mm" }', COLUMN, detector]
+    text = HEAD + "path = [\n" + ",\n".join(parts) + "\n]\n" + peaks("k = 1")
+    assert old in text
+    faults = faults_of(text.replace(old, new, 1))
+    assert any(proposed in fault.suggestion for fault in faults), [fault.suggestion for fault in faults]
+
+
+def test_microlitres_as_clinics_write_them():
+    text = HEAD + 'diffusion = "1e-9 m^2/s"\npath = [{inject = "3 mcL"}, {detector = "UV"}]'
+    assert parse(text, "f").parts[0].elements[0].volume == pytest.approx(3e-9)
+
+
+@pytest.mark.parametrize(
+    ("head", "parts", "word"),
+    [
+        (HEAD.replace("0.9 mPa s", "0.8 Pa s"), [], "viscosity"),
+        (HEAD, ['{ tube = "a", volume = "5 mL", bore = "0.12 mm" }'], "long"),
+        (HEAD, ['{ fitting = "100 uL" }'], "uL or mL"),
+        (HEAD, ['{ detector = "UV", cell = "1 uL", time_constant = "1 s" }'], "name"),
+        (HEAD, ['{ column = "2.1 x 250 mm, 5 um", plates = 40000 }'], "per metre"),
+    ],
+)
+def test_more_slips(head, parts, word):
+    parts = ['{ inject = "2 uL" }', *parts, COLUMN, '{ detector = "UV", cell = "1 uL", time_constant = "1 s" }']
+    assert any(word in warning for warning in answer_of(parts, head=head).warnings)
+
+
+def test_a_detector_without_a_cell_is_said_to_have_none():
+    found = answer_of(['{ inject = "2 uL" }', COLUMN, '{ detector = "MS", rate = "5 Hz" }'])
+    assert any("no cell" in assumption.short for assumption in found.instrument.assumed)
+    assert not any("filter is not counted" in warning for warning in found.warnings)
+
+
+def test_an_outlet_behind_the_last_detector_is_how_a_path_ends():
+    parts = [
+        '{ inject = "2 uL" }',
+        COLUMN,
+        '{ detector = "UV", cell = "1 uL", time_constant = "1 s" }',
+        '{ outlet = "waste" }',
+    ]
+    assert not answer_of(parts).warnings

@@ -1,0 +1,108 @@
+"""The first screen: 24 lines of 80 columns, whatever the path."""
+
+import pytest
+from hypothesis import given, settings
+from hypothesis import strategies as st
+
+from xcol.answers.budget import budget
+from xcol.flowpath.reader import parse, read
+from xcol.report.budget_screen import first_screen
+from xcol.report.sheet import Sheet
+
+
+def screen_of(answer, at=-1, peak=0, **sheet):
+    found = answer.detectors[at]
+    made = Sheet(**sheet)
+    first_screen(answer, found, found.peaks[peak], made)
+    return made.text()
+
+
+def fits(text):
+    lines = text.splitlines()
+    return len(lines) <= 24 and max(map(len, lines)) <= 80
+
+
+@pytest.mark.parametrize("ascii_only", [False, True])
+def test_every_example_fits(examples, ascii_only):
+    for file in examples.glob("*.toml"):
+        answer = budget(read(str(file)))
+        for at, found in enumerate(answer.detectors):
+            for peak in range(len(found.peaks)):
+                text = screen_of(answer, at, peak, ascii_only=ascii_only)
+                assert fits(text), text
+                assert text.isascii() or not ascii_only
+
+
+def big(parts, peaks, name="", limit="", detectors=1, columns=1):
+    lines = [
+        'flow = "0.5 mL/min"',
+        'viscosity = "0.9 mPa s"',
+        'diffusion = "1e-9 m^2/s"',
+        f'title = "{name * 2}"',
+        "path = [",
+    ]
+    lines.append('  { inject = "2 uL" },')
+    for n in range(parts):
+        lines.append(f'  {{ tube = "{10 + n} cm x 0.{1 + n % 3} mm", name = "{name}{n}"{limit} }},')
+        lines.append(f'  {{ fitting = "{name}union {n}", volume = "0.{1 + n % 9} uL"{limit} }},')
+    for n in range(columns):
+        lines.append(f'  {{ column = "2.1 x 50 mm, 3 um", plates = 6000, name = "{name}{n}"{limit} }},')
+    for n in range(detectors):
+        lines.append('  { tube = "30 cm x 0.2 mm" },')
+        lines.append(
+            f'  {{ detector = "{name} UV {n}", cell = "2 uL", time_constant = "0.1 s", rate = "1 Hz"{limit} }},'
+        )
+    lines += ['  { tube = "1 m x 0.1 mm", name = "waste" },', '  { outlet = "waste" },', "]", "peaks = ["]
+    k = "k = {}" if columns else 'name = "peak {}"'
+    lines += [f"  {{ {k.format(1 + n)} }}," for n in range(peaks)] + ["]"]
+    return budget(parse("\n".join(lines), "f"))
+
+
+@settings(max_examples=40)
+@given(
+    parts=st.integers(0, 14), peaks=st.integers(1, 9), name=st.sampled_from(["", "a", "long " * 11]),
+    limit=st.sampled_from(["", ', max_pressure = "1 bar"', ', max_pressure = "900 bar", max_drop = "0.5 bar"']),
+    detectors=st.integers(1, 3), columns=st.integers(0, 5), ascii_only=st.booleans(),
+)  # fmt: skip
+def test_any_path_fits(parts, peaks, name, limit, detectors, columns, ascii_only):
+    text = screen_of(big(parts, peaks, name, limit, detectors, columns), ascii_only=ascii_only)
+    assert fits(text), text
+
+
+def test_an_exceeded_limit_is_always_shown():
+    for parts in (0, 3, 14):
+        text = screen_of(big(parts, 5, "name", ', max_pressure = "1 bar"', detectors=2))
+        assert "limit" in text
+        assert "above" in text
+
+
+def test_what_does_not_fit_is_counted():
+    text = screen_of(big(10, 9))
+    assert "more peaks" in text
+    assert "others" in text
+
+
+def test_up_to_seven_rows_are_shown_as_they_are(examples):
+    answer = budget(read(str(examples / "brewery-narrow.toml")))
+    text = screen_of(answer, peak=1)
+    for words in ("3100", "12000", "26 %", "33.3", "37.9", "26.7", "8.33", "2.78", "71.8", "58.0-112", "not checked"):
+        assert words in text, words
+    assert "others" not in text
+
+
+def test_folded_rows_carry_their_sum():
+    answer = big(4, 1)
+    peak = answer.detectors[0].peaks[0]
+    assert len(peak.rows) > 7
+    lines = screen_of(answer).splitlines()
+    table = lines[lines.index("") + 1 : lines.index("", lines.index("") + 1)]
+    rows = [line for line in table if "[" not in line][1:]
+    assert len(rows) <= 8
+
+
+def test_what_is_assumed_is_listed_and_nothing_is_called_safe(examples):
+    for file in examples.glob("*.toml"):
+        text = screen_of(budget(read(str(file))))
+        assert "Assumed: " in text
+        assert "safe" not in text.lower()
+        assert "pressure at zero" in text
