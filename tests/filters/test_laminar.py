@@ -100,3 +100,26 @@ def test_the_third_moment_of_a_cut_tube_is_that_of_the_whole():
     whole = laminar.run_third_moment([0.2], [3.0])
     assert laminar.run_third_moment([0.05, 0.15], [3.0, 3.0]) == pytest.approx(whole, rel=1e-10)
     assert laminar.run_third_moment([0.0, 0.2], [5.0, 3.0]) == pytest.approx(whole, rel=1e-10)
+
+
+@pytest.mark.parametrize("t_star", [30.0, 39.0, 41.0, 1e3, 1e6])
+def test_the_transfer_function_of_long_tubes(t_star):
+    """In the long limit it tends to a Gaussian; at any t* its curvature is the variance."""
+    variance = float(laminar.spread(t_star))
+    sigma = variance**0.5
+    omega = np.array([-2.0, -1.0, 0.0, 1.0, 2.0]) * 0.05 / sigma
+    log = np.log(laminar.run_transfer([t_star], [1.0], omega))
+    step = omega[3]
+    second = -(log[4] * -1 + 16 * log[3] - 30 * log[2] + 16 * log[1] - log[0]) / (12 * step**2)
+    third = (log[4] - 2 * log[3] + 2 * log[1] - log[0]) / (2 * step**3)
+    assert second.real == pytest.approx(variance, rel=1e-5)
+    skew = float(laminar.run_third_moment([t_star], [1.0])) / sigma**3
+    assert third.imag / sigma**3 == pytest.approx(skew, rel=0.02, abs=2e-4)
+    h = laminar.run_transfer([t_star], [1.0], np.array([1.0, 2.0]) / sigma)
+    assert np.abs(h) == pytest.approx(np.exp([-0.5, -2.0]), abs=0.3 / t_star)
+
+
+def test_both_ways_through_a_tube_agree_where_they_meet():
+    omega = np.linspace(0.01, 0.5, 9)
+    short, long = (laminar.run_transfer([t], [1.0], omega) for t in (39.999, 40.001))
+    assert np.allclose(np.log(short) * 40.001 / 39.999, np.log(long), rtol=1e-4)

@@ -71,8 +71,8 @@ def half_height_variance(t_star):
     tube = Tube(t_star / math.pi, 2.0, 1.0, 1.0)  # D = F = a = 1: time in a²/D
     sigma = math.sqrt(tube.variance() - tube.axial_variance())
     # a faint Gaussian smooths the front, which is a step, without widening the peak at half height
-    smooth = t_star / 1500
-    span, points = 60 * sigma + 20 * t_star, 2**15
+    smooth = t_star / 300
+    span, points = 30 * sigma + 2 * t_star, 2**13
     omega = 2 * math.pi * np.fft.rfftfreq(points, span / points)
     # what is above this frequency has been smoothed away
     kept = omega < 6 / smooth

@@ -125,7 +125,7 @@ def budget(instrument: Instrument) -> Budget:
     >>> text += '{tube = "30 cm x 0.010 in"}, {detector = "10 uL", time_constant = "0.5 s"}]'
     >>> peak = budget(parse(text, "example")).detectors[0].peaks[1]
     >>> peak.peak.k, round(peak.plates_observed)
-    (2.0, 10203)
+    (2.0, 10153)
     """
     profile = pressures(instrument)
     detectors = tuple(_at_detector(instrument, detector) for detector in instrument.detectors)

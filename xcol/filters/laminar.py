@@ -33,6 +33,10 @@ if TYPE_CHECKING:
 POLYNOMIALS = 40
 # Below this the entrance and axial diffusion blur the picture: the flow is nearly unmixed.
 UNMIXED_BELOW = 1e-3
+# From this t* on, and below this dimensionless frequency, the slowest mode alone is left (the next
+# one has decayed to e^−500 of it).
+SLOW_BEYOND, SLOW_BELOW = 40.0, 5.0
+FAST_BEYOND = 1e6  # decay constants times t* from which a mode follows the others at once
 
 
 def solve_modes(polynomials: int) -> tuple[Matrix, Matrix]:
@@ -133,19 +137,70 @@ def run_transfer(t_stars: list[Real], time_units: list[Real], omega: Real) -> np
     ``t_stars`` [-] and ``time_units`` a²/D [s] one entry a tube, of one common shape S; ``omega``
     [rad/s]. Applies exp(−(Λ + iωwC)t*) of each tube to the constant, the last tube first.
     """
-    eigenvalues, coupling = modes()
+    eigenvalues, _ = modes()
     shape = np.broadcast_shapes(*(np.shape(t) for t in [*t_stars, *time_units]))
     frequencies = np.atleast_1d(np.asarray(omega, dtype=np.float64)).ravel()
     stretch = [np.broadcast_to(np.asarray(t, dtype=np.float64), shape).ravel() for t in t_stars]
     units = [np.broadcast_to(np.asarray(w, dtype=np.float64), shape).ravel() for w in time_units]
     result = np.empty((int(np.prod(shape)), frequencies.size), dtype=np.complex128)
     for index in range(result.shape[0]):
-        state = np.zeros((frequencies.size, len(eigenvalues), 1), dtype=np.complex128)
+        state = np.zeros((frequencies.size, len(eigenvalues)), dtype=np.complex128)
         state[:, 0] = 1.0
         for t, w in zip(reversed(stretch), reversed(units), strict=True):
-            rate = np.diag(eigenvalues) + 1j * w[index] * frequencies[:, None, None] * coupling
-            roots, vectors = np.linalg.eig(rate)
-            weights = np.linalg.solve(vectors, state)
-            state = vectors @ (np.exp(-roots * t[index])[..., None] * weights)
-        result[index] = state[:, 0, 0]
+            state = _through_tube(float(t[index]), float(w[index]) * frequencies, state)
+        result[index] = state[:, 0]
     return result.reshape(shape + np.shape(omega))
+
+
+def _through_tube(t_star: float, frequencies: Matrix, state: npt.NDArray[np.complex128]) -> npt.NDArray[np.complex128]:
+    """Apply exp(−(Λ + iΩC)t*) to the state of each frequency Ω [-], shape (frequencies, modes)."""
+    slow = (np.abs(frequencies) <= SLOW_BELOW) & (t_star > SLOW_BEYOND)
+    result = np.empty_like(state)
+    if slow.any():
+        result[slow] = _by_slowest_mode(t_star, frequencies[slow], state[slow])
+    if not slow.all():
+        result[~slow] = _by_all_modes(t_star, frequencies[~slow], state[~slow])
+    return result
+
+
+def _by_all_modes(t_star: float, frequencies: Matrix, state: npt.NDArray[np.complex128]) -> npt.NDArray[np.complex128]:
+    """Do the same by the eigenvalues of Λ + iΩC.
+
+    Modes that decay within a millionth of the tube follow the others at once, x_f = −R_ff⁻¹R_fs x_s.
+    Leaving them in would cost digits: eigenvalues come out to 1e-16 of the largest.
+    """
+    eigenvalues, coupling = modes()
+    rates = np.diag(eigenvalues) + 1j * frequencies[:, None, None] * coupling
+    kept = int(np.count_nonzero(eigenvalues * t_star <= FAST_BEYOND))
+    follow = -np.linalg.solve(rates[:, kept:, kept:], rates[:, kept:, :kept])
+    reduced = rates[:, :kept, :kept] + rates[:, :kept, kept:] @ follow
+    roots, vectors = np.linalg.eig(reduced)
+    weights = np.linalg.solve(vectors, state[:, :kept, None])
+    inner = vectors @ (np.exp(-roots * t_star)[..., None] * weights)
+    result: npt.NDArray[np.complex128] = np.concatenate([inner, follow @ inner], axis=1)[..., 0]
+    return result
+
+
+def _by_slowest_mode(
+    t_star: float, frequencies: Matrix, state: npt.NDArray[np.complex128]
+) -> npt.NDArray[np.complex128]:
+    """Do the same for a long tube, where all modes but the slowest have decayed.
+
+    A general eigenvalue routine finds the slowest mode to 1e-16 of the fastest, which is 1e9 times
+    faster: too coarse once it is multiplied by a long t*. Here it comes from its own equations,
+    scaled with Λ: (Λ + iΩC − μ)x = −iΩβ, μ = iΩβ·x, iterated from μ = 0.
+    """
+    eigenvalues, coupling = modes()
+    roots = np.sqrt(eigenvalues[1:])
+    scaled = coupling[1:, 1:] / np.multiply.outer(roots, roots)
+    beta = coupling[0, 1:] / roots
+    turn = 1j * frequencies
+    matrix = np.eye(len(roots)) + turn[:, None, None] * scaled
+    mu = np.zeros(len(frequencies), dtype=np.complex128)
+    for _ in range(12):  # the error falls by more than 20 times at each step
+        shifted = matrix - mu[:, None, None] * np.diag(1 / eigenvalues[1:])
+        inner = np.linalg.solve(shifted, -turn[:, None, None] * beta[:, None])[..., 0]
+        mu = turn * (inner @ beta)
+    mode = np.concatenate([np.ones((len(frequencies), 1)), inner / roots], axis=1)
+    share = (mode * state).sum(axis=1) / (mode * mode).sum(axis=1) * np.exp(-mu * t_star)
+    return mode * share[:, None]

@@ -25,8 +25,8 @@ class Plug:
     Source: variance of a rectangular distribution, (V/F)²/12 (Sternberg, Adv. Chromatogr. 2
     (1966) 205, from memory).
 
-    >>> Plug(volume=20e-9, flow=1e-6 / 60).variance() * (1e-6 / 60) ** 2 * 1e18  # µL², 20 µL
-    33.33333333333333
+    >>> round(Plug(volume=20e-9, flow=1e-6 / 60).variance() * (1e-6 / 60) ** 2 * 1e18, 3)  # µL²
+    33.333
     """
 
     volume: Real
