@@ -203,4 +203,5 @@ def _by_slowest_mode(
         mu = turn * (inner @ beta)
     mode = np.concatenate([np.ones((len(frequencies), 1)), inner / roots], axis=1)
     share = (mode * state).sum(axis=1) / (mode * mode).sum(axis=1) * np.exp(-mu * t_star)
-    return mode * share[:, None]
+    result: npt.NDArray[np.complex128] = mode * share[:, None]
+    return result
