@@ -264,9 +264,22 @@ def test_all_faults_come_together_in_the_order_of_the_file(faults_of):
         '  { column = "2.1 x 100 mm, 3 um", plates = 12000, porosity = 0.6 }\n', DETECTOR.replace("s\"", "mm\""),
         head="flow = 1.0 mL/min\n",
     )  # fmt: skip
-    lines = [fault.place.line for fault in faults_of(text)]
+    faults = faults_of(text)
+    assert faults[0].place.key == "diffusion"  # nowhere, so it has no line
+    lines = [fault.place.line for fault in faults[1:]]
     assert lines == sorted(lines)
     assert lines == [1, 3, 4, 5, 6, 6, 7]
+
+
+def test_a_flow_that_cannot_be_is_found_beside_other_faults(faults_of):
+    text = path(INJECT, '  { tube = "30 cm" },\n', COLUMN, DETECTOR).replace("0.5 mL/min", "300 mL/min")
+    assert {fault.place.key for fault in faults_of(text)} == {"flow", "tube"}
+
+
+def test_no_peaks_are_no_peaks_however_they_are_written(faults_of):
+    assert len(parse(path(INJECT, COLUMN, DETECTOR, tail="peaks = []\n"), "f").peaks) == 4
+    bare = path(INJECT, COLUMN, DETECTOR, head='flow = "0.5 mL/min"\n', tail="peaks = []\n")
+    assert [fault.place.key for fault in faults_of(bare)] == ["diffusion"]
 
 
 def test_near_words_are_proposed(faults_of):

@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
-
 from xcol.flowpath import slips
 from xcol.flowpath.chain import dead_time, transit
 from xcol.flowpath.elements import Bed
@@ -64,24 +62,25 @@ def check_positions(drafts: list[Draft], has_column: bool) -> None:
             )
 
 
-def peaks_of(
-    drafts: list[Draft], instrument: Instrument, diffusion: float | None, findings: Findings
-) -> tuple[Peak, ...]:
+def check_diffusion(drafts: list[Draft], has_peaks: bool, top: Draft) -> None:
+    """Report peaks without a diffusion coefficient, in a file that gives none for all of them."""
+    expected = "the solute's diffusion coefficient, here or once at the top of the file"
+    suggestion = 'diffusion = "1.0e-9 m^2/s" (small molecules in water: 0.5 to 1.5e-9)'
+    if not has_peaks:
+        top.fault("diffusion", expected, suggestion, "neither peaks nor a diffusion coefficient")
+    for draft in drafts:
+        if not {"diffusion", "solute", "molar_mass"} & set(draft.written):
+            draft.fault("diffusion", expected, suggestion)
+
+
+def peaks_of(drafts: list[Draft], instrument: Instrument, diffusion: float, findings: Findings) -> tuple[Peak, ...]:
     """Return the peaks, those given by their recorded place with the transit taken off.
 
-    ``diffusion`` [m²/s] serves the peaks that have none. Without drafts the peaks are k = 1, 2, 5,
-    10, or one unnamed band where there is no column.
+    ``diffusion`` [m²/s] serves the peaks that have none (``check_diffusion`` has seen to it that there
+    is one). Without drafts the peaks are k = 1, 2, 5, 10, or one unnamed band where there is no column.
     """
     has_column = any(part.kind == "column" for part in instrument.parts)
     if not drafts:
-        if diffusion is None:
-            findings.fault(
-                replace(instrument.place, key="diffusion"),
-                "neither peaks nor a diffusion coefficient",
-                "the solutes' diffusion coefficient",
-                'diffusion = "1.0e-9 m^2/s" at the top (small molecules in water: 0.5 to 1.5e-9)',
-            )
-            return ()
         if not has_column:
             return (Peak("band", None, diffusion, instrument.place),)
         findings.assume("peaks k 1, 2, 5, 10", "no peaks entered: k = 1, 2, 5 and 10 are shown")
@@ -90,17 +89,10 @@ def peaks_of(
     return tuple(peak for peak in peaks if peak is not None)
 
 
-def _peak(draft: Draft, instrument: Instrument, default: float | None) -> Peak | None:
+def _peak(draft: Draft, instrument: Instrument, default: float) -> Peak | None:
     diffusion = draft.number("diffusion")
     if diffusion is None:
         diffusion = default
-    if diffusion is None:
-        draft.fault(
-            "diffusion",
-            "the solute's diffusion coefficient, here or once at the top of the file",
-            'diffusion = "1.0e-9 m^2/s" (small molecules in water: 0.5 to 1.5e-9)',
-        )
-        return None
     if diffusion < 1e-12:
         draft.warn(f"diffusion {diffusion:g} m²/s is very slow: m^2/s or cm^2/s?")
     plates = draft.number("plates")

@@ -15,7 +15,7 @@ from xcol.flowpath.keys import described
 from xcol.flowpath.locate import KeyLines, key_lines
 from xcol.flowpath.model import Assumption, Instrument, Part
 from xcol.flowpath.part_reader import read_keys, read_part, refuse_unknown
-from xcol.flowpath.peak_reader import check_positions, peaks_of, read_peaks
+from xcol.flowpath.peak_reader import check_diffusion, check_positions, peaks_of, read_peaks
 from xcol.flowpath.source import read_text
 from xcol.flowpath.toml_text import load
 
@@ -50,6 +50,11 @@ def parse(text: str, file: str) -> Instrument:
     kinds, parts = _read_path(data, file, lines, findings)
     drafts = read_peaks(data.get("peaks"), file, lines, findings)
     check_positions(drafts, "column" in kinds or not kinds)
+    if "diffusion" not in data:
+        check_diffusion(drafts, data.get("peaks") not in (None, []), top)
+    flow = top.number("flow")
+    if flow is not None and findings.faults:  # what can be told all the same
+        slips.flow_in_columns(flow, parts, top.place("flow"), findings)
     findings.raise_faults()
     return _instrument(top, tuple(parts), drafts, findings)
 
@@ -71,8 +76,8 @@ def _instrument(top: Draft, parts: tuple[Part, ...], drafts: list[Draft], findin
         place=Place(top.file),
     )
     _notes_on_names(instrument, findings)
-    slips.of_path(instrument, Place(top.file, top.lines.get("flow"), "", "flow"), findings)
-    peaks = peaks_of(drafts, instrument, top.number("diffusion"), findings)
+    slips.of_path(instrument, top.place("flow"), findings)
+    peaks = peaks_of(drafts, instrument, top.number("diffusion") or 0.0, findings)
     _notes_on_beds(instrument, findings)
     findings.assume(
         "viscosity and D as entered",

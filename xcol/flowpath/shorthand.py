@@ -47,7 +47,7 @@ def column_size(text: str) -> dict[str, float]:
     {'bore': 2.1, 'length': 50.0, 'particle': 0.0018}
     """
     expected = 'bore x length and particle, as in "4.6 x 150 mm, 5 um"'
-    pieces = [piece for piece in _THEN.split(text.strip()) if piece]
+    pieces = _pieces(text)
     sizes = _sizes(pieces[0], expected) if pieces else []
     if len(sizes) == 3 and len(pieces) == 1:  # "4.6 x 150 mm x 5 um" reads one way only
         pieces.append(sizes.pop())
@@ -87,9 +87,13 @@ def length_first(text: str) -> bool:
     >>> length_first("150 x 4.6 mm, 5 um"), length_first("4.6 x 150 mm, 5 um")
     (True, False)
     """
-    first, second = (split(size) for size in _sizes(_THEN.split(text.strip())[0], "")[:2])
+    first, second = (split(size) for size in _sizes(_pieces(text)[0], "")[:2])
     unit = second[1] or first[1]
     return parse(f"{first[0]} {first[1] or unit}", LENGTH) > parse(f"{second[0]} {unit}", LENGTH)
+
+
+def _pieces(text: str) -> list[str]:
+    return [piece for piece in _THEN.split(text.strip()) if piece]
 
 
 def _sizes(text: str, expected: str) -> list[str]:

@@ -6,7 +6,7 @@ What is certainly wrong is a fault, what is only odd a warning.
 from __future__ import annotations
 
 import math
-from collections.abc import Callable
+from collections.abc import Callable, Iterable
 from typing import TYPE_CHECKING
 
 from xcol.catalogs import tubing
@@ -17,7 +17,7 @@ from xcol.units import FLOW, LENGTH, PRESSURE, VISCOSITY, VOLUME, significant, w
 if TYPE_CHECKING:
     from xcol.errors import Place
     from xcol.flowpath.findings import Draft, Findings
-    from xcol.flowpath.model import Instrument
+    from xcol.flowpath.model import Instrument, Part
 
 _OUTSIDE_DIAMETERS = {"1/32 in": 0.0254 / 32, "1/16 in": 0.0254 / 16, "1/8 in": 0.0254 / 8}
 _REEL_NUMBERS = (0.0025, 0.004, 0.005, 0.007, 0.010, 0.020, 0.030, 0.040)  # in, as printed on reels
@@ -40,7 +40,7 @@ def of_part(draft: Draft) -> None:
 
 def of_path(instrument: Instrument, flow_place: Place, findings: Findings) -> None:
     """Look for slips between parts."""
-    _flow_and_columns(instrument, flow_place, findings)
+    flow_in_columns(instrument.flow, instrument.parts, flow_place, findings)
     _injection_and_columns(instrument, findings)
     _order(instrument, findings)
     if instrument.viscosity is not None and not 1.5e-4 <= instrument.viscosity <= 5e-3:
@@ -53,6 +53,23 @@ def of_path(instrument: Instrument, flow_place: Place, findings: Findings) -> No
         for element in part.elements:
             if isinstance(element, Bore):
                 _reynolds(instrument, part.label, element, findings)
+
+
+def flow_in_columns(flow: float, parts: Iterable[Part], place: Place, findings: Findings) -> None:
+    """Report a flow that is certainly wrong for a column, and warn of one that is odd."""
+    for bed in (element for part in parts for element in part.elements if isinstance(element, Bed)):
+        velocity = bed.length * flow / bed.void_volume
+        shown = f"{significant(velocity * 1e3)} mm/s in the {bed.bore * 1e3:g} mm column"
+        if not SLOWEST <= velocity <= FASTEST:
+            factor, unit = (1e-3, "uL/min") if velocity > FASTEST else (1e3, "mL/min")
+            findings.fault(
+                place,
+                f"{write(flow, 'mL/min', FLOW)}, which is {shown}",
+                "a flow that gives 0.01 to 30 mm/s in the column",
+                f'flow = "{write(flow * factor, unit, FLOW)}"',
+            )
+        elif not SLOW <= velocity <= FAST:
+            findings.warn(f"flow {write(flow, 'mL/min', FLOW)} is {shown}, which is unusual: mL/min or uL/min?")
 
 
 def plates_fault(draft: Draft, key: str, plates: float, length: float, particle: float) -> bool:
@@ -212,31 +229,6 @@ _CHECKS: dict[str, Callable[[Draft], None]] = {
     "block": _block,
     "detector": _detector,
 }
-
-
-def _flow_and_columns(instrument: Instrument, flow_place: Place, findings: Findings) -> None:
-    for part in instrument.parts:
-        for bed in part.elements:
-            if not isinstance(bed, Bed):
-                continue
-            velocity = bed.length * instrument.flow / bed.void_volume
-            shown = f"{significant(velocity * 1e3)} mm/s"
-            size = f"{bed.bore * 1e3:g} mm column"
-            if not SLOWEST <= velocity <= FASTEST:
-                factor = 1e-3 if velocity > FASTEST else 1e3
-                unit = "uL/min" if velocity > FASTEST else "mL/min"
-                other = write(instrument.flow * factor, unit, FLOW)
-                findings.fault(
-                    flow_place,
-                    f"{write(instrument.flow, 'mL/min', FLOW)}, which is {shown} in the {size}",
-                    "a flow that gives 0.01 to 30 mm/s in the column",
-                    f'flow = "{other}"',
-                )
-            elif not SLOW <= velocity <= FAST:
-                findings.warn(
-                    f"flow {write(instrument.flow, 'mL/min', FLOW)} is {shown} in the {size}, which "
-                    "is unusual: mL/min or uL/min?"
-                )
 
 
 def _injection_and_columns(instrument: Instrument, findings: Findings) -> None:
