@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass, field
+from dataclasses import dataclass
 
 
 @dataclass(frozen=True)
@@ -39,12 +39,18 @@ class Fault:
         return f"{self.place}\n  read:      {self.read}\n  expected:  {self.expected}\n  try:       {self.suggestion}"
 
 
-@dataclass
 class InputError(Exception):
     """The input cannot be used; ``faults`` lists everything that was found wrong with it."""
 
-    faults: tuple[Fault, ...] = field(default_factory=tuple)
+    def __init__(self, faults: tuple[Fault, ...]) -> None:
+        super().__init__(faults)
+        self.faults = faults
 
     def __str__(self) -> str:
         """Return all messages, in the order of the input."""
         return "\n\n".join(str(fault) for fault in self.faults)
+
+
+def refusal(place: Place, read: str, expected: str, suggestion: str) -> InputError:
+    """Return the error of one fault."""
+    return InputError((Fault(place, read, expected, suggestion),))

@@ -151,7 +151,7 @@ dalton = 1e-3 * kilogram / mole = Da
 _NUMBER = re.compile(r"[+-]?(?:\d+(?:[.,]\d*)?|[.,]\d+)(?:[eE][+-]?\d{1,3})?(?![\d.,])")
 _FRACTION = re.compile(r"(?:(\d{1,2})\s+)?(\d{1,2})\s*/\s*(\d{1,4})\s*(?:in|inch|inches)\.?")
 _UNIT_NAME = r"[A-Za-z]+(?:\^-?[1-9])?"
-_UNIT = re.compile(rf"(?:1|{_UNIT_NAME})(?:[ /]{_UNIT_NAME}){{0,3}}")
+_UNIT = re.compile(rf"1/{_UNIT_NAME}|{_UNIT_NAME}(?:[ /]{_UNIT_NAME}){{0,3}}")
 _TIMES_TEN = re.compile(r"([+-]?[\d.,]+)\s*(?:x|×|\*|·)\s*10\s*\^?\s*([-+−⁻⁺]?[\d⁰¹²³⁴-⁹]+)\s*(.*)")
 _SUPERSCRIPTS = str.maketrans("⁰¹²³⁴⁵⁶⁷⁸⁹⁻⁺−", "0123456789-+-")
 

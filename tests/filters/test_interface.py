@@ -5,7 +5,6 @@ import pytest
 
 from xcol.filters.block import MeasuredBlock
 from xcol.filters.column import Column
-from xcol.filters.interface import chain_transfer
 from xcol.filters.signal import Boxcar, FirstOrder, GaussianFilter
 from xcol.filters.tube import Tube, TubeRun
 from xcol.filters.volumes import Plug, TanksInSeries
@@ -102,13 +101,6 @@ def test_arrays_of_two_axes_and_a_single_frequency():
     assert tanks.variance().shape == (2, 3)
     assert tanks.transfer(0.7).shape == (2, 3)
     assert tanks.transfer(np.zeros((4, 5))).shape == (2, 3, 4, 5)
-
-
-def test_a_chain_multiplies():
-    omega = np.linspace(0, 3, 9)
-    chain = [FILTERS["plug"], FILTERS["tube"], FILTERS["first order"]]
-    product = chain[0].transfer(omega) * chain[1].transfer(omega) * chain[2].transfer(omega)
-    assert np.allclose(chain_transfer(chain, omega), product)
 
 
 def test_nothing_is_added_by_what_has_no_size():

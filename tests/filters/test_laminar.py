@@ -22,7 +22,7 @@ def test_the_table_is_what_its_script_makes(root):
     t = np.logspace(-4, 2, 30)
     x = np.multiply.outer(t, made["EIGENVALUES"])
     again = ((x + np.expm1(-x)) / made["EIGENVALUES"] ** 2) @ (2 * made["WEIGHTS"])
-    assert again == pytest.approx(laminar.spread(t), rel=1e-7)
+    assert again == pytest.approx(laminar.dimensionless_variance(t), rel=1e-7)
 
 
 def test_the_first_eigenvalue_and_the_sums_of_the_constants():
@@ -38,7 +38,7 @@ def test_the_number_of_polynomials_does_not_matter():
         rates, coupling = laminar.solve_modes(polynomials)
         x = np.multiply.outer(t, rates[1:])
         v = ((x + np.expm1(-x)) / rates[1:] ** 2) @ (2 * coupling[0, 1:] ** 2)
-        assert v == pytest.approx(laminar.spread(t), rel=2e-6)
+        assert v == pytest.approx(laminar.dimensionless_variance(t), rel=2e-6)
 
 
 def test_a_long_tube_has_the_two_closed_terms():
@@ -93,7 +93,7 @@ def test_second_and_third_moment_against_finite_volumes(t_stars, units):
     variance, third = finite_volumes(t_stars, units)
     assert laminar.run_third_moment(t_stars, units) == pytest.approx(third, rel=5e-3)
     if len(t_stars) == 1:
-        assert units[0] ** 2 * laminar.spread(t_stars[0]) == pytest.approx(variance, rel=2e-3)
+        assert units[0] ** 2 * laminar.dimensionless_variance(t_stars[0]) == pytest.approx(variance, rel=2e-3)
 
 
 def test_the_third_moment_of_a_cut_tube_is_that_of_the_whole():
@@ -105,7 +105,7 @@ def test_the_third_moment_of_a_cut_tube_is_that_of_the_whole():
 @pytest.mark.parametrize("t_star", [30.0, 39.0, 41.0, 1e3, 1e6])
 def test_the_transfer_function_of_long_tubes(t_star):
     """In the long limit it tends to a Gaussian; at any t* its curvature is the variance."""
-    variance = float(laminar.spread(t_star))
+    variance = float(laminar.dimensionless_variance(t_star))
     sigma = variance**0.5
     omega = np.array([-2.0, -1.0, 0.0, 1.0, 2.0]) * 0.05 / sigma
     log = np.log(laminar.run_transfer([t_star], [1.0], omega))

@@ -3,7 +3,7 @@
 import numpy as np
 import pytest
 
-from xcol.flowpath.hydraulics import Drop, bed_drop, exactly, reynolds_number, tube_drop
+from xcol.flowpath.hydraulics import PressureRange, bed_drop, exactly, reynolds_number, tube_drop
 
 
 def test_doubling_the_bore_divides_the_drop_by_sixteen():
@@ -28,4 +28,4 @@ def test_arrays():
 
 
 def test_ranges_add():
-    assert Drop(2, 1, 3) + exactly(5.0) == Drop(7, 6, 8)
+    assert PressureRange(2, 1, 3) + exactly(5.0) == PressureRange(7, 6, 8)

@@ -59,7 +59,7 @@ def test_fittings():
 
 def test_mixer_block_injection():
     assert part_of('{ mixer = "3 uL", tanks = 2.5 }').elements[0].tanks == 2.5
-    assert part_of('{ block = "4 uL^2" }').elements[0].spread == pytest.approx(4e-18)
+    assert part_of('{ block = "4 uL^2" }').elements[0].measured == pytest.approx(4e-18)
     (block,) = part_of('{ block = "autosampler", variance = "4 uL2", volume = "8 uL" }').elements
     assert isinstance(block, Block)
     assert block.volume == pytest.approx(8e-9)

@@ -6,7 +6,7 @@ from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
 
 from xcol.flowpath.elements import Bed, Bore
-from xcol.flowpath.hydraulics import Drop, exactly, reynolds_number
+from xcol.flowpath.hydraulics import PressureRange, exactly, reynolds_number
 from xcol.units import PRESSURE, significant, write
 
 if TYPE_CHECKING:
@@ -22,8 +22,8 @@ class PressureRow:
 
     part: Part
     flow: float
-    drop: Drop | None
-    inlet: Drop | None
+    drop: PressureRange | None
+    inlet: PressureRange | None
     reynolds: float | None = None  # of a tube, the narrowest of the part
 
 
@@ -35,7 +35,7 @@ class Pressures:
     warnings: tuple[str, ...]
 
     @property
-    def total(self) -> Drop | None:
+    def total(self) -> PressureRange | None:
         """Pressure at the inlet of the first part [Pa]."""
         return self.rows[0].inlet
 
@@ -46,7 +46,7 @@ def pressures(instrument: Instrument) -> Pressures:
     drops = [_drop(part, instrument) for part in instrument.parts]
     if instrument.pump_pressure is not None:
         drops = _with_pump_pressure(instrument, drops, instrument.pump_pressure, warnings)
-    inlet: Drop | None = _NOTHING
+    inlet: PressureRange | None = _NOTHING
     rows: list[PressureRow] = []
     for part, drop in zip(reversed(instrument.parts), reversed(drops), strict=True):
         inlet = None if drop is None or inlet is None else drop + inlet
@@ -66,7 +66,7 @@ def pressures(instrument: Instrument) -> Pressures:
 
 def _down_from_pump(rows: list[PressureRow], pump: float) -> list[PressureRow]:
     """Fill in inlet pressures from the pump on, as far as the drops are known."""
-    inlet: Drop | None = exactly(pump)
+    inlet: PressureRange | None = exactly(pump)
     filled = []
     for row in rows:
         filled.append(replace(row, inlet=row.inlet if inlet is None else inlet))
@@ -75,11 +75,11 @@ def _down_from_pump(rows: list[PressureRow], pump: float) -> list[PressureRow]:
     return filled
 
 
-def _drop(part: Part, instrument: Instrument) -> Drop | None:
+def _drop(part: Part, instrument: Instrument) -> PressureRange | None:
     """Return the measured drop where there is one, otherwise what the elements make of it."""
     if part.drop is not None:
         return exactly(part.drop)
-    total: Drop | None = _NOTHING
+    total: PressureRange | None = _NOTHING
     for element in part.elements:
         if isinstance(element, Bore | Bed):
             viscosity = instrument.viscosity
@@ -96,8 +96,8 @@ def _reynolds(part: Part, instrument: Instrument) -> float | None:
 
 
 def _with_pump_pressure(
-    instrument: Instrument, drops: list[Drop | None], pump: float, warnings: list[str]
-) -> list[Drop | None]:
+    instrument: Instrument, drops: list[PressureRange | None], pump: float, warnings: list[str]
+) -> list[PressureRange | None]:
     """Give the columns what the rest of the path does not explain of the measured pressure."""
     shown = write(pump, "bar", PRESSURE)
     unmeasured = [i for i, part in enumerate(instrument.parts) if part.kind == "column" and part.drop is None]
@@ -135,18 +135,18 @@ def _with_pump_pressure(
     return [exactly(rest * weights[i] / total) if i in weights else drop for i, drop in enumerate(drops)]
 
 
-def _sum(drops: list[Drop | None]) -> float:
+def _sum(drops: list[PressureRange | None]) -> float:
     return sum(drop.value for drop in drops if drop is not None)
 
 
-def _weight(part: Part, drop: Drop | None) -> float:
+def _weight(part: Part, drop: PressureRange | None) -> float:
     """Return a column's weight in sharing a drop: its computed one, or length over bore squared."""
     if drop is not None:
         return drop.value
     return sum(bed.length / bed.bore**2 for bed in part.elements if isinstance(bed, Bed))
 
 
-def _compare_with_beds(rest: float, beds: list[Drop], warnings: list[str]) -> None:
+def _compare_with_beds(rest: float, beds: list[PressureRange], warnings: list[str]) -> None:
     low, high = sum(bed.low for bed in beds), sum(bed.high for bed in beds)
     if not low / 1.5 <= rest <= high * 1.5:
         warnings.append(

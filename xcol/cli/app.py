@@ -45,6 +45,9 @@ def options(
 
 def main() -> None:
     """Run the command line; exit 0 fine, 1 a requirement is not met, 2 bad input or usage."""
+    if sys.stdout is None:  # closed by whoever started the program
+        print("xcol: there is no standard output to write to", file=sys.stderr)
+        sys.exit(2)
     try:
         app()
     except InputError as error:

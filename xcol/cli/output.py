@@ -12,7 +12,7 @@ from typing import TYPE_CHECKING, Annotated, TextIO
 
 import typer
 
-from xcol.errors import Fault, InputError, Place
+from xcol.errors import Place, refusal
 
 if TYPE_CHECKING:
     from xcol.report.sheet import Sheet
@@ -78,18 +78,18 @@ def emit(text: str, output: str | None, force: bool, source: str = "-") -> None:
     target = Path(output)
     place = Place(file=output, key="--output")
     if target.is_dir():
-        raise _refusal(place, "a directory", "the name of a file", f"{target / 'budget.txt'}")
+        raise refusal(place, "a directory", "the name of a file", f"{target / 'budget.txt'}")
     if target.exists() and not target.is_file():
-        raise _refusal(place, "a device or pipe", "the name of a file", "standard output, redirected")
+        raise refusal(place, "a device or pipe", "the name of a file", "standard output, redirected")
     if source != "-" and target.exists() and Path(source).exists() and target.samefile(source):
-        raise _refusal(place, "the path file itself", "another file", "another name for the result")
+        raise refusal(place, "the path file itself", "another file", "another name for the result")
     if target.exists() and not force:
-        raise _refusal(place, "a file that exists", "a new file", "another name, or --force")
+        raise refusal(place, "a file that exists", "a new file", "another name, or --force")
     try:
         _write_whole(target, text)
     except OSError as error:
         words = (error.strerror or str(error)).lower()
-        raise _refusal(place, words, "a file that can be written", "check folder and rights") from None
+        raise refusal(place, words, "a file that can be written", "check folder and rights") from None
 
 
 def _write_whole(target: Path, text: str) -> None:
@@ -110,7 +110,3 @@ def _umask() -> int:
     current = os.umask(0)
     os.umask(current)
     return current
-
-
-def _refusal(place: Place, read: str, expected: str, suggestion: str) -> InputError:
-    return InputError((Fault(place, read, expected, suggestion),))

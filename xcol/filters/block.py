@@ -13,16 +13,16 @@ if TYPE_CHECKING:
 
 @dataclass(frozen=True)
 class MeasuredBlock:
-    """A block of measured variance ``spread`` [m⁶] and held ``volume`` [m³] at ``flow`` [m³/s].
+    """A block of variance ``measured`` [m⁶] and held ``volume`` [m³] at ``flow`` [m³/s].
 
     The variance is taken as constant in volume units (what mixing volumes and short tubes do), and
     the form, which nobody measured, as Gaussian.
 
-    >>> MeasuredBlock(spread=4e-18, volume=0.0, flow=1e-8).variance()
+    >>> MeasuredBlock(measured=4e-18, volume=0.0, flow=1e-8).variance()
     0.04
     """
 
-    spread: Real
+    measured: Real
     volume: Real
     flow: Real
 
@@ -32,7 +32,7 @@ class MeasuredBlock:
 
     def variance(self) -> Real:
         """Variance [s²]: the measured one over the flow squared."""
-        return self.spread / self.flow**2
+        return self.measured / self.flow**2
 
     def third_moment(self) -> Real:
         """Third central moment [s³]: none, the form is taken as Gaussian."""

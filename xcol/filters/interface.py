@@ -14,8 +14,6 @@ from typing import TYPE_CHECKING, Protocol
 import numpy as np
 
 if TYPE_CHECKING:
-    from collections.abc import Iterable
-
     import numpy.typing as npt
 
     Real = float | npt.NDArray[np.float64]
@@ -62,11 +60,3 @@ def gaussian_transfer(delay: Real, variance: Real, omega: Real) -> Complex:
     square = np.asarray(omega, dtype=np.float64) ** 2
     result: Complex = np.exp(-1j * outer(delay, omega) - outer(variance, square) / 2)
     return result
-
-
-def chain_transfer(filters: Iterable[Filter], omega: Real) -> Complex:
-    """Transfer function of filters that follow each other: the product of theirs."""
-    product: Complex = np.ones(np.shape(omega), dtype=np.complex128)
-    for part in filters:
-        product = product * part.transfer(omega)
-    return product

@@ -9,7 +9,7 @@ from typing import TYPE_CHECKING
 import numpy as np
 
 from xcol.filters.interface import gaussian_transfer
-from xcol.filters.laminar import run_third_moment, run_transfer, spread
+from xcol.filters.laminar import dimensionless_variance, run_third_moment, run_transfer
 
 if TYPE_CHECKING:
     from xcol.filters.interface import Complex, Real
@@ -59,7 +59,7 @@ class Tube:
         """Variance by the long-tube formula [s²], π·a⁴·L·F/(24·D) over F², and the axial term.
 
         For comparison only: at t* of 0.01 to 0.5, where ordinary connecting tubes are, it is 8 to
-        1.2 times too large. Source: Taylor 1953, Aris 1956, Golay 1958 (from memory).
+        1.1 times too large. Source: Taylor 1953, Aris 1956, Golay 1958 (from memory).
         """
         radius = self.bore / 2
         convective = math.pi * radius**4 * self.length / (24 * self.diffusion * self.flow)
@@ -106,7 +106,7 @@ class TubeRun:
         edges = np.concatenate([np.zeros((1, *t_stars[0].shape)), np.cumsum(t_stars, axis=0)])
         # V over every stretch from edge i to edge j: one call, whatever the number of tubes
         starts, ends = np.triu_indices(count + 1, k=1)
-        stretches = np.asarray(spread(np.maximum(edges[ends] - edges[starts], 0.0)))
+        stretches = np.asarray(dimensionless_variance(np.maximum(edges[ends] - edges[starts], 0.0)))
         v = {(int(i), int(j)): stretches[n] for n, (i, j) in enumerate(zip(starts, ends, strict=True))}
 
         shares: list[Real] = [units[i] ** 2 * v[i, i + 1] + tube.axial_variance() for i, tube in enumerate(self.tubes)]

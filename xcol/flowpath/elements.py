@@ -14,7 +14,7 @@ from xcol.filters.block import MeasuredBlock
 from xcol.filters.column import Column
 from xcol.filters.tube import Tube
 from xcol.filters.volumes import Plug, TanksInSeries
-from xcol.flowpath.hydraulics import Drop, bed_drop, exactly, tube_drop
+from xcol.flowpath.hydraulics import PressureRange, bed_drop, exactly, tube_drop
 
 if TYPE_CHECKING:
     from xcol.filters.interface import Filter, Real
@@ -101,7 +101,7 @@ class Bore:
         """Return the tube."""
         return Tube(self.length, self.bore, stream.flow, stream.diffusion)
 
-    def drop(self, flow: float, viscosity: float) -> Drop:
+    def drop(self, flow: float, viscosity: float) -> PressureRange:
         """Pressure drop [Pa]."""
         return exactly(float(tube_drop(flow, self.length, self.bore, viscosity)))
 
@@ -167,9 +167,9 @@ class Electronics:
 
 @dataclass(frozen=True)
 class Block:
-    """A module of measured variance ``spread`` [m⁶] and held ``volume`` [m³]."""
+    """A module of variance ``measured`` [m⁶] and held ``volume`` [m³]."""
 
-    spread: float
+    measured: float
     volume: float
     contribution: str = "block"
     of_signal: bool = False
@@ -177,11 +177,11 @@ class Block:
     @property
     def remixes(self) -> bool:
         """Whether it spreads anything: then its inside is taken to mix the stream."""
-        return self.spread > 0
+        return self.measured > 0
 
     def filter(self, stream: Stream, *, read_here: bool) -> Filter:
         """Return the block."""
-        return MeasuredBlock(self.spread, self.volume, stream.flow)
+        return MeasuredBlock(self.measured, self.volume, stream.flow)
 
 
 @dataclass(frozen=True)
@@ -224,7 +224,7 @@ class Bed:
         """Return the column's filter for a band of this retention factor and plate number."""
         return Column(self.void_volume / stream.flow, retention_factor, plates)
 
-    def drop(self, flow: float, viscosity: float) -> Drop | None:
+    def drop(self, flow: float, viscosity: float) -> PressureRange | None:
         """Pressure drop [Pa]; None without a particle size."""
         if self.particle is None:
             return None
@@ -232,4 +232,4 @@ class Bed:
             float(bed_drop(flow, self.length, self.bore, viscosity, self.particle, porosity))
             for porosity in self.porosity
         )
-        return Drop(at, loosest, tightest)
+        return PressureRange(at, loosest, tightest)

@@ -13,21 +13,21 @@ LAMINAR_LIMIT = 2000.0  # Reynolds number above which the tube formulas do not h
 
 
 @dataclass(frozen=True)
-class Drop:
+class PressureRange:
     """A pressure drop [Pa] with the range that what is not known leaves open."""
 
     value: float
     low: float
     high: float
 
-    def __add__(self, other: Drop) -> Drop:
+    def __add__(self, other: PressureRange) -> PressureRange:
         """Add drops in series: the ends add, since one bed porosity is likely off like the next."""
-        return Drop(self.value + other.value, self.low + other.low, self.high + other.high)
+        return PressureRange(self.value + other.value, self.low + other.low, self.high + other.high)
 
 
-def exactly(value: float) -> Drop:
+def exactly(value: float) -> PressureRange:
     """Return a drop [Pa] that carries no range of its own."""
-    return Drop(value, value, value)
+    return PressureRange(value, value, value)
 
 
 def tube_drop(flow: Real, length: Real, bore: Real, viscosity: Real) -> Real:

@@ -233,6 +233,11 @@ def described(raw: object) -> str:
     return str(raw)[:60]
 
 
+def as_typed(raw: object) -> str:
+    """Return a value as text: what was typed, where it was a text or a number of sane size."""
+    return raw if isinstance(raw, str) else described(raw)
+
+
 def nearest(word: str, known: tuple[str, ...]) -> str:
     """Return the known word that is closest to this one, or ''."""
     import difflib  # noqa: PLC0415  (only on the way to an error)

@@ -7,7 +7,7 @@ from collections.abc import Iterable
 from xcol.flowpath import slips
 from xcol.flowpath.file_keys import OTHER_WORDS
 from xcol.flowpath.findings import Draft, Findings
-from xcol.flowpath.keys import Key, Later, described, nearest
+from xcol.flowpath.keys import Key, Later, Measure, as_typed, described, nearest
 from xcol.flowpath.kinds import KINDS, KINDS_LATER, Kind
 from xcol.flowpath.model import Part, Reading
 from xcol.units import UnitError, plain
@@ -61,7 +61,7 @@ def read_keys(raw: dict[str, object], keys: Iterable[Key], draft: Draft) -> None
     for key in keys:
         if key.name not in raw:
             continue
-        draft.written[key.name] = str(raw[key.name])
+        draft.written[key.name] = as_typed(raw[key.name])
         try:
             draft.values[key.name] = key.read(raw[key.name])
         except UnitError as error:
@@ -134,11 +134,11 @@ def _read_size(raw: object, kind: Kind, draft: Draft) -> None:
     """Read the kind key's value: a size when it reads as one, otherwise the part's name."""
     given = [way for way in kind.ways if all(key in draft.written for key in way)]
     started = {key for way in kind.ways for key in way if key in draft.written}
-    draft.written[kind.name] = str(raw)
-    if not isinstance(raw, str | int | float) or isinstance(raw, bool) or not str(raw).strip():
+    draft.written[kind.name] = as_typed(raw)
+    if not isinstance(raw, str | int | float) or isinstance(raw, bool) or not as_typed(raw).strip():
         draft.fault(kind.name, f"a size or a name, as in {kind.example}", kind.example, described(raw))
         return
-    text = str(raw)
+    text = as_typed(raw)
     error = None
     if kind.size is not None:
         try:
@@ -173,10 +173,9 @@ def _take_sizes(sizes: dict[str, float], started: set[str], kind: Kind, draft: D
             draft.fault(other, f"the size once: {kind.name} = {text!r} has it already", "leave it out")
             continue
         key = kind.key(name)
-        check = getattr(key.read, "check", None) if key else None
         try:
-            if check:
-                check(value, text)
+            if key and isinstance(key.read, Measure):
+                key.read.check(value, text)
         except UnitError as error:
             draft.findings.fault(place, f"{name} in {error.read}", error.expected, error.suggestion)
         draft.values[name] = value

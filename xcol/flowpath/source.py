@@ -5,7 +5,7 @@ from __future__ import annotations
 import sys
 from pathlib import Path
 
-from xcol.errors import Fault, InputError, Place
+from xcol.errors import InputError, Place, refusal
 
 MOST_BYTES = 1_000_000  # a path file has a few thousand
 
@@ -21,30 +21,30 @@ def read_text(name: str) -> str:
     place = Place(file="standard input" if name == "-" else name)
     data = _bytes(name, place)
     if len(data) > MOST_BYTES:
-        raise _refusal(place, "more than 1 MB", "a path file of a few kB", "the name of a path file")
+        raise refusal(place, "more than 1 MB", "a path file of a few kB", "the name of a path file")
     if data.startswith(_UTF16):
-        raise _refusal(place, "text in UTF-16", "text in UTF-8", "save it again, with the encoding UTF-8")
+        raise refusal(place, "text in UTF-16", "text in UTF-8", "save it again, with the encoding UTF-8")
     if zeros := data.count(b"\x00"):
         raise _with_zeros(data, zeros, place)
     try:
         text = data.decode("utf-8-sig")
     except UnicodeDecodeError as error:
         line = data.count(b"\n", 0, error.start) + 1
-        raise _refusal(
+        raise refusal(
             Place(place.file, line),
             f"the byte {data[error.start]:#04x}, which is not UTF-8",
             "text in UTF-8",
             "save it again, with the encoding UTF-8 (a µ or ° is the usual cause)",
         ) from None
     if not text.strip():
-        raise _refusal(place, "an empty file", "a flow, a path and peaks", 'begin with flow = "1.0 mL/min"')
+        raise refusal(place, "an empty file", "a flow, a path and peaks", 'begin with flow = "1.0 mL/min"')
     return text.replace("\r\n", "\n").replace("\r", "\n")
 
 
 def _with_zeros(data: bytes, zeros: int, place: Place) -> InputError:
     """Return the refusal of a text in UTF-16 without its mark, a stray zero byte, or a binary file."""
     if zeros > 0.4 * len(data):
-        return _refusal(
+        return refusal(
             place,
             "text in UTF-16, or no text at all",
             "text in UTF-8",
@@ -52,27 +52,29 @@ def _with_zeros(data: bytes, zeros: int, place: Place) -> InputError:
         )
     if all(byte >= 32 or byte in b"\t\r\n\x00" for byte in data):
         line = data.count(b"\n", 0, data.index(b"\x00")) + 1
-        return _refusal(Place(place.file, line), "a zero byte", "text", "type the line anew")
-    return _refusal(place, "a binary file", "a path file: text in TOML", "the name of a path file")
+        return refusal(Place(place.file, line), "a zero byte", "text", "type the line anew")
+    return refusal(place, "a binary file", "a path file: text in TOML", "the name of a path file")
 
 
 def _bytes(name: str, place: Place) -> bytes:
     if name == "-":
+        if sys.stdin is None:
+            raise refusal(place, "nothing: it is closed", "a path file", "xcol check FILE")
         return sys.stdin.buffer.read(MOST_BYTES + 1)
     path = Path(name)
     if not name.strip():
-        raise _refusal(Place("(no name)"), "an empty name", "the name of a path file", "xcol check FILE")
+        raise refusal(Place("(no name)"), "an empty name", "the name of a path file", "xcol check FILE")
     try:
         if path.is_dir():
-            raise _refusal(place, "a directory", "a path file", _files_in(path) or "the name of a path file")
+            raise refusal(place, "a directory", "a path file", _files_in(path) or "the name of a path file")
         with path.open("rb") as stream:
             return stream.read(MOST_BYTES + 1)
     except FileNotFoundError:
         near = _near(path)
-        raise _refusal(place, "no such file", "a path file", near or "check the name") from None
+        raise refusal(place, "no such file", "a path file", near or "check the name") from None
     except (OSError, ValueError) as error:
         words = error.strerror if isinstance(error, OSError) and error.strerror else str(error)
-        raise _refusal(place, words.lower(), "a file that can be read", "check name and rights") from None
+        raise refusal(place, words.lower(), "a file that can be read", "check name and rights") from None
 
 
 def _files_in(folder: Path) -> str:
@@ -89,7 +91,3 @@ def _near(path: Path) -> str:
         return ""
     near = nearest(path.name, names)
     return str(path.with_name(near)) if near else ""
-
-
-def _refusal(place: Place, read: str, expected: str, suggestion: str) -> InputError:
-    return InputError((Fault(place, read, expected, suggestion),))

@@ -12,7 +12,7 @@ from xcol import __version__
 if TYPE_CHECKING:
     from xcol.answers.budget import Budget, DetectorBudget, PeakBudget, Row
     from xcol.answers.pressure import PressureRow
-    from xcol.flowpath.hydraulics import Drop
+    from xcol.flowpath.hydraulics import PressureRange
 
 SCHEMA = "xcol.budget/1"
 _HALF = 2 * math.sqrt(2 * math.log(2))  # width at half height of a Gaussian, in σ
@@ -73,7 +73,7 @@ def _pressure(row: PressureRow) -> dict[str, Any]:
     }
 
 
-def _bar(drop: Drop | None) -> float | None:
+def _bar(drop: PressureRange | None) -> float | None:
     return drop.value / 1e5 if drop is not None else None
 
 

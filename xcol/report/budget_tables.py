@@ -12,7 +12,7 @@ from xcol.units import significant
 
 if TYPE_CHECKING:
     from xcol.answers.budget import Budget, ColumnBand, DetectorBudget, PeakBudget, Row
-    from xcol.flowpath.hydraulics import Drop
+    from xcol.flowpath.hydraulics import PressureRange
 
 HALF = 2 * math.sqrt(2 * math.log(2))
 MOST_ROWS = 7  # of parts on the first screen; with more, the small ones fold
@@ -151,12 +151,12 @@ def plates(number: float | None) -> str:
     return three(number) if number is not None else "-"
 
 
-def bars(drop: Drop | None) -> str:
+def bars(drop: PressureRange | None) -> str:
     """Return a pressure in bar, '-' where it is not computed."""
     return three(drop.value / 1e5) if drop is not None else "-"
 
 
-def span(drop: Drop | None) -> str:
+def span(drop: PressureRange | None) -> str:
     """Return the range of a pressure in bar, '' where it has none."""
     if drop is None or math.isclose(drop.low, drop.high, rel_tol=0.01):
         return ""
@@ -171,7 +171,7 @@ def _or_dash(value: float | None, factor: float = 1.0) -> str:
     return three(value * factor) if value is not None else "-"
 
 
-def _part_line(row: Row, peak: PeakBudget, inlet: Drop | None, square: float, most: float) -> tuple[str, ...]:
+def _part_line(row: Row, peak: PeakBudget, inlet: PressureRange | None, square: float, most: float) -> tuple[str, ...]:
     gone = None
     if peak.plates_column is not None and row.plates_kept_without is not None:
         gone = peak.plates_column * row.plates_kept_without
@@ -186,7 +186,7 @@ def _part_line(row: Row, peak: PeakBudget, inlet: Drop | None, square: float, mo
     )
 
 
-def _column_line(band: ColumnBand, peak: PeakBudget, inlet: Drop | None, square: float) -> tuple[str, ...]:
+def _column_line(band: ColumnBand, peak: PeakBudget, inlet: PressureRange | None, square: float) -> tuple[str, ...]:
     """Return a column's line; the first of more than three stands for all of them."""
     if len(peak.columns) > 3:
         label, own, number = f"[ {len(peak.columns)} columns ]", peak.variance_column, peak.plates_column

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING
 
+from xcol.flowpath.kinds import KINDS
 from xcol.units import (
     DENSITY,
     DIFFUSION,
@@ -38,15 +39,6 @@ _UNITS: dict[str, tuple[tuple[float, str], ...]] = {
     DIFFUSION.name: ((0.0, "m^2/s"),),
     DENSITY.name: ((0.0, "kg/m^3"),),
     VARIANCE.name: ((0.0, "uL^2"),),
-}
-# The keys that say how large a contribution is, for its line in the table.
-_SIZES = {
-    "injection": ("volume",),
-    "cell": ("cell",),
-    "filter": ("time_constant", "rise_time"),
-    "rate": ("rate", "cycle"),
-    "fitting": ("volume", "gap", "length"),
-    "mixer": ("volume",),
 }
 
 
@@ -97,7 +89,7 @@ def name_of(part: Part) -> str:
 def contribution_label(part: Part, contribution: str) -> str:
     """Return the line's label: 'injected 20 µL', 'UV time constant 0.5 s', 'valve to column'."""
     values = {reading.key: reading for reading in part.readings}
-    key = next((key for key in _SIZES.get(contribution, ()) if key in values), "")
+    key = next((key for key in KINDS[part.kind].sizes.get(contribution, ()) if key in values), "")
     size = show_reading(values[key]) if key else ""
     if contribution == "injection":
         return f"injected {size}" + (f", {part.name}" if part.name else "")

@@ -67,4 +67,5 @@ COLUMN = Kind(
     ways=(("bore", "length"),),
     size=column_size,
     elements=_column,
+    sizes={},
 )

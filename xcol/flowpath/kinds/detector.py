@@ -17,7 +17,7 @@ from xcol.flowpath.elements import Cell, Electronics, Element
 from xcol.flowpath.findings import Draft
 from xcol.flowpath.keys import Choice, Key, Later, Measure, Number
 from xcol.flowpath.kinds.table import DROP, TANKS, VOLUMES, Elements, Kind, one_size
-from xcol.units import FREQUENCY, LENGTH, TIME
+from xcol.units import FREQUENCY, LENGTH, TIME, VOLUME
 
 if TYPE_CHECKING:
     from xcol.filters.interface import Filter
@@ -116,6 +116,7 @@ DETECTOR = Kind(
         Key("filters", Later("time_constant or rise_time"), "several filters"),
     ),
     ways=(),
-    size=one_size("cell", VOLUMES),
+    size=one_size("cell", VOLUME),
     elements=_detector,
+    sizes={"cell": ("cell",), "filter": ("time_constant", "rise_time"), "rate": ("rate", "cycle")},
 )

@@ -20,7 +20,7 @@ from xcol.flowpath.kinds.table import (
     one_size,
 )
 from xcol.flowpath.shorthand import tube_size
-from xcol.units import FLOW, LENGTH, VARIANCE, write
+from xcol.units import FLOW, LENGTH, VARIANCE, VOLUME, write
 
 
 def _inject(draft: Draft) -> Elements:
@@ -48,8 +48,9 @@ INJECT = Kind(
         Key("loop_in_line", Later(), "loop that stays in line"),
     ),
     ways=(("volume",),),
-    size=one_size("volume", VOLUMES),
+    size=one_size("volume", VOLUME),
     elements=_inject,
+    sizes={"injection": ("volume",)},
 )
 
 
@@ -77,6 +78,7 @@ TUBE = Kind(
     ways=(("length", "bore"), ("volume", "bore")),
     size=tube_size,
     elements=_tube,
+    sizes={},
 )
 
 
@@ -121,8 +123,9 @@ FITTING = Kind(
         DROP,
     ),
     ways=(("volume",), ("bore", "length"), ("gap",)),
-    size=one_size("volume", VOLUMES),
+    size=one_size("volume", VOLUME),
     elements=_fitting,
+    sizes={"fitting": ("volume", "gap", "length")},
 )
 
 
@@ -143,8 +146,9 @@ MIXER = Kind(
         DROP,
     ),
     ways=(("volume",),),
-    size=one_size("volume", VOLUMES),
+    size=one_size("volume", VOLUME),
     elements=_mixer,
+    sizes={"mixer": ("volume",)},
 )
 
 
@@ -176,8 +180,9 @@ BLOCK = Kind(
         DROP,
     ),
     ways=(("variance",),),
-    size=one_size("variance", Measure(VARIANCE, 0, 1)),
+    size=one_size("variance", VARIANCE),
     elements=_block,
+    sizes={"block": ("variance",)},
 )
 
 
@@ -193,4 +198,5 @@ OUTLET = Kind(
     ways=(),
     size=None,
     elements=_outlet,
+    sizes={},
 )

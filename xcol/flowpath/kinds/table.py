@@ -8,7 +8,7 @@ from dataclasses import dataclass
 from xcol.flowpath.elements import Element
 from xcol.flowpath.findings import Draft
 from xcol.flowpath.keys import Key, Later, Measure, Number, Text
-from xcol.units import LENGTH, PRESSURE, VOLUME, parse
+from xcol.units import LENGTH, PRESSURE, VOLUME, Quantity, parse
 
 Elements = tuple[Element, ...]
 
@@ -50,6 +50,7 @@ class Kind:
     ways: tuple[tuple[str, ...], ...]
     size: Callable[[str], dict[str, float]] | None
     elements: Callable[[Draft], Elements]
+    sizes: dict[str, tuple[str, ...]]  # for each contribution the keys that say how large it is
 
     def key(self, name: str) -> Key | None:
         """Return the key of this name, None where this kind has none."""
@@ -61,9 +62,9 @@ class Kind:
         return (*self.keys, *COMMON)
 
 
-def one_size(key: str, measure: Measure) -> Callable[[str], dict[str, float]]:
+def one_size(key: str, quantity: Quantity) -> Callable[[str], dict[str, float]]:
     """Return the reader of a size that is one quantity."""
-    return lambda text: {key: parse(text, measure.quantity)}
+    return lambda text: {key: parse(text, quantity)}
 
 
 def must(draft: Draft, key: str) -> float:

@@ -110,7 +110,7 @@ PARTS = (
         "Laminar flow: the middle of the stream runs ahead, diffusion across the bore evens it out. "
         "The exact variance at the outlet comes from the moment equations of that problem. It hangs "
         "on t* = D·t/a² = π·D·L/F, in which the bore does not appear. The textbook formula is the "
-        "limit for long t*; connecting tubes have t* of 0.01 to 0.5, where it is 8 to 1.2 times too "
+        "limit for long t*; connecting tubes have t* of 0.01 to 0.5, where it is 8 to 1.1 times too "
         "large. A short tube's variance grows as L² and hardly with flow or D; a long one's as L, F "
         "and 1/D. At any t* it grows as the fourth power of the bore, axial diffusion left out.",
         (
