@@ -28,14 +28,13 @@ def test_the_shipped_catalogs_are_read_and_every_row_has_a_source():
     assert all(row.source for row in catalogs.tubing())
 
 
-def test_a_stock_bore_s_label_is_its_bore():
-    for row in catalogs.tubing():
-        number, unit = row.label.split()[:2]
-        factor = {"mm": 1e-3, "in": 0.0254}[unit]
-        assert float(number) * factor == pytest.approx(row.bore, rel=0.02)
+def test_the_inches_on_a_reel_are_its_bore():
+    reels = [row for row in catalogs.tubing() if row.reel_inches]
+    assert len(reels) >= 6
+    assert all(row.reel_inches * 0.0254 == pytest.approx(row.bore, rel=0.02) for row in reels)
 
 
-GOOD = '[[tubing]]\nbore_mm = 0.1\nlabel = "0.10 mm"\nsource = "a test"\n'
+GOOD = '[[tubing]]\nbore_mm = 0.1\nreel_in = 0.004\nsource = "a test"\n'
 
 
 @pytest.mark.parametrize(
@@ -44,7 +43,7 @@ GOOD = '[[tubing]]\nbore_mm = 0.1\nlabel = "0.10 mm"\nsource = "a test"\n'
         ("0.1\n", '"0.1 mm"\n', "bore_mm"),
         ("0.1\n", "-1\n", "bore_mm"),
         ("0.1\n", "true\n", "bore_mm"),
-        ('label = "0.10 mm"\n', "", "label"),
+        ("0.004", "0", "reel_in"),
         ('"a test"', '" "', "source"),
     ],
 )

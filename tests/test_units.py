@@ -143,6 +143,9 @@ def test_what_people_type(text, quantity, value):
         ("__import__('os') mm", LENGTH),
         ("5 mm; 6 mm", LENGTH),
         ("5 degC", LENGTH),
+        ("1e-9 1/m^2 s", DIFFUSION),
+        ("2 1/mL min", FLOW),
+        ("1 \u0441P", VISCOSITY),
         ("5 %", LENGTH),
         ("5 lambda", LENGTH),
         ("5 mm\x00", LENGTH),
@@ -241,3 +244,15 @@ def test_significant_digits_are_within_half_a_step(value):
 def test_writing_has_the_unit():
     assert write(1e-6 / 60, "mL/min", FLOW) == "1 mL/min"
     assert write(0.65, "", RATIO) == "0.65"
+
+
+def test_a_letter_of_another_alphabet_is_named():
+    with pytest.raises(UnitError) as caught:
+        parse("1 \u0441P", VISCOSITY)
+    assert "cyrillic" in caught.value.read
+
+
+def test_a_fraction_without_a_unit_is_offered_with_one():
+    with pytest.raises(UnitError) as caught:
+        parse("1/16", LENGTH, fraction=True)
+    assert caught.value.suggestion == '"1/16 in"'

@@ -30,10 +30,10 @@ class Packing:
 
 @dataclass(frozen=True)
 class Tubing:
-    """A stock bore [m] of connecting tubing, with the label that stands on reels."""
+    """A stock bore [m] of connecting tubing, and the inches that reels carry (None: they do not)."""
 
     bore: float
-    label: str
+    reel_inches: float | None
     source: str
 
 
@@ -44,6 +44,11 @@ def folder() -> Path:
             return candidate
     place = Place(file="catalogs")
     raise InputError((Fault(place, "nothing", "the catalogs that ship with xcol", "install xcol again"),))
+
+
+def usual_packing() -> Packing:
+    """Return what is assumed of a column whose packing nobody described."""
+    return packings()["fully porous"]
 
 
 @cache
@@ -66,7 +71,14 @@ def packings() -> dict[str, Packing]:
 def tubing() -> tuple[Tubing, ...]:
     """Return the stock bores, narrowest first."""
     rows = (_Row(*row) for row in _rows("tubing.toml", "tubing"))
-    records = [Tubing(r.positive("bore_mm") * 1e-3, r.text("label"), r.text("source")) for r in rows]
+    records = [
+        Tubing(
+            r.positive("bore_mm") * 1e-3,
+            r.positive("reel_in") if "reel_in" in r.values else None,
+            r.text("source"),
+        )
+        for r in rows
+    ]
     return tuple(sorted(records, key=lambda record: record.bore))
 
 

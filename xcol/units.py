@@ -236,7 +236,9 @@ def parse(text: str, quantity: Quantity, *, fraction: bool = False) -> float:
             f"{quantity.name} as one decimal number; an inch fraction names an outside or port diameter",
             'a bore (inside diameter), as in "0.010 in"; an outside diameter can go into note',
         )
-    value, unit = split(text, f"1 {quantity.likely[0]}".strip())
+    if fraction and re.fullmatch(r"\d{1,2}\s*/\s*\d{1,2}", text.strip()):
+        raise UnitError(f"{quote(text)}, without a unit", f"{quantity.name} with its unit", f'"{text.strip()} in"')
+    value, unit = split(text, "0.65" if quantity is RATIO else f"1 {quantity.likely[0]}")
     if not unit and quantity is not RATIO:
         raise missing_unit(text.strip(), quantity)
     factor, zero = _factor(unit, quantity, text)
@@ -335,13 +337,24 @@ def registry() -> pint.UnitRegistry[float]:
     return made
 
 
+def _options(quantity: Quantity) -> str:
+    """Return the usual units of a quantity, for a message."""
+    return '0.65 or "65 %"' if quantity is RATIO else ", ".join(quantity.likely)
+
+
 def _wrong_kind(text: str, unit: str, kind: str, quantity: Quantity) -> UnitError:
-    options = ", ".join(option or "no unit" for option in quantity.likely)
+    """Return the error for a unit of another kind of quantity."""
     return UnitError(
-        f"{quote(text)}, and {unit or 'no unit'} is {kind}" if unit else quote(text),
-        f"{quantity.name}, for instance in {options}",
-        f"a unit of {quantity.name.split(' ', 1)[1]}: {options}",
+        f"{quote(text)}, and {unit} is {kind}" if unit else quote(text),
+        f"{quantity.name}, for instance {'' if quantity is RATIO else 'in '}{_options(quantity)}",
+        _in_options(quantity),
     )
+
+
+def _in_options(quantity: Quantity) -> str:
+    if quantity is RATIO:
+        return _options(quantity)
+    return f"a unit of {quantity.name.split(' ', 1)[1]}: {_options(quantity)}"
 
 
 def _unknown(text: str, unit: str, quantity: Quantity, near: str = "") -> UnitError:
@@ -349,9 +362,14 @@ def _unknown(text: str, unit: str, quantity: Quantity, near: str = "") -> UnitEr
 
     A unit that differs by one letter may differ by a factor of 1000.
     """
-    options = ", ".join(option or "no unit" for option in quantity.likely)
+    read = f"{quote(text)}, with the unit {quote(unit)}"
+    odd = [c for c in unit if not c.isascii() and c not in "µμ°²³·×"]
+    if odd:  # a letter of another alphabet, or one without width, looks like nothing is wrong
+        import unicodedata  # noqa: PLC0415
+
+        read += f", in which there is the character {unicodedata.name(odd[0], 'without a name').lower()}"
     return UnitError(
-        f"{quote(text)}, with the unit {quote(unit)}",
-        f"{quantity.name}, for instance in {options}",
-        f'"{near}"' if near else f"a unit of {quantity.name.split(' ', 1)[1]}: {options}",
+        read,
+        f"{quantity.name}, for instance {'' if quantity is RATIO else 'in '}{_options(quantity)}",
+        f'"{near}"' if near else _in_options(quantity),
     )

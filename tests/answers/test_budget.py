@@ -1,7 +1,5 @@
 """The budget: worked scenarios, and what a budget must hold."""
 
-import math
-
 import pytest
 
 from xcol.answers.budget import budget
@@ -219,8 +217,3 @@ def test_limits_not_entered_are_not_checked_and_never_called_good(plain):
     answer = budget(parse(plain, "f"))
     assert any("not checked" in caution for caution in answer.cautions)
     assert any("pressure at zero" in caution for caution in answer.cautions)
-
-
-def test_the_gaussian_widths():
-    peak = budget(parse(RUN, "f")).detectors[0].peaks[0]
-    assert peak.sigma == pytest.approx(math.sqrt(peak.variance_column + peak.variance_extra))

@@ -80,20 +80,20 @@ def test_a_pump_pressure_that_cannot_be_is_said_to_be_one(head, column, word):
 
 def test_a_part_above_its_limit_is_named():
     found = profile(detector=', max_pressure = "1 bar"')
-    assert len(found.warnings) == 1
-    assert "limit" in found.warnings[0]
-    assert '"UV"' in found.warnings[0]
-    assert not profile(detector=', max_pressure = "100 bar"').warnings
+    assert len(found.limits) == 1
+    assert "limit" in found.limits[0]
+    assert '"UV"' in found.limits[0]
+    assert not profile(detector=', max_pressure = "100 bar"').limits
 
 
 def test_a_limit_within_the_range_may_be_exceeded():
     limit = (BED + BEHIND + WASTE) * 1.1 / 1e5
-    (warning,) = profile(column=f', max_pressure = "{limit} bar"').warnings
+    (warning,) = profile(column=f', max_pressure = "{limit} bar"').limits
     assert "may be above its limit" in warning
 
 
 def test_the_drop_has_a_limit_of_its_own():
-    (warning,) = profile(waste=', max_drop = "2 bar"').warnings
+    (warning,) = profile(waste=', max_drop = "2 bar"').limits
     assert "drop" in warning
     assert "limit" in warning
 

@@ -208,10 +208,26 @@ def test_explain(run):
 
 
 def test_a_reader_that_goes_away_is_no_error(examples, root):
-    command = f'"{sys.executable}" -m xcol budget "{examples / "brewery-narrow.toml"}" --full | head -1'
     environment = os.environ | {"PYTHONPATH": str(root), "PYTHONIOENCODING": "utf-8"}
-    done = subprocess.run(command, shell=True, capture_output=True, env=environment, timeout=60, check=False)
+    command = [sys.executable, "-m", "xcol", "budget", str(examples / "brewery-narrow.toml"), "--full"]
+    reading, writing = os.pipe()
+    os.close(reading)  # nobody is there to read, from the start
+    done = subprocess.run(command, stdout=writing, stderr=subprocess.PIPE, env=environment, timeout=60, check=False)
+    os.close(writing)
+    assert done.returncode == 0
     assert not done.stderr
+
+
+@pytest.mark.skipif(os.name == "nt", reason="a shell that closes streams")
+@pytest.mark.parametrize("closing", ["<&-", ">&-"])
+def test_closed_streams_are_no_traceback(examples, root, closing):
+    name = "-" if closing == "<&-" else f'"{examples / "brewery-narrow.toml"}"'
+    environment = os.environ | {"PYTHONPATH": str(root)}
+    command = f'"{sys.executable}" -m xcol budget {name} {closing}'
+    done = subprocess.run(command, shell=True, stderr=subprocess.PIPE, env=environment, timeout=60, check=False)
+    assert done.returncode == 2
+    assert done.stderr
+    assert b"Traceback" not in done.stderr
 
 
 @pytest.mark.skipif(not os.path.exists("/dev/full"), reason="no full device here")

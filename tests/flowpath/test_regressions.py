@@ -182,7 +182,7 @@ def test_microlitres_as_clinics_write_them():
     [
         (HEAD.replace("0.9 mPa s", "0.8 Pa s"), [], "viscosity"),
         (HEAD, ['{ tube = "a", volume = "5 mL", bore = "0.12 mm" }'], "long"),
-        (HEAD, ['{ fitting = "100 uL" }'], "uL or mL"),
+        (HEAD, ['{ fitting = "100 uL" }'], "unusual here"),
         (HEAD, ['{ detector = "UV", cell = "1 uL", time_constant = "1 s" }'], "name"),
         (HEAD, ['{ column = "2.1 x 250 mm, 5 um", plates = 40000 }'], "per metre"),
     ],
@@ -206,3 +206,103 @@ def test_an_outlet_behind_the_last_detector_is_how_a_path_ends():
         '{ outlet = "waste" }',
     ]
     assert not answer_of(parts).warnings
+
+
+GOOD = ['{ inject = "2 uL" }', '{ tube = "20 cm x 0.2 mm" }', COLUMN,
+        '{ detector = "UV", cell = "1 uL", time_constant = "1 s" }']  # fmt: skip
+
+
+def text_of(parts, tail="", head=HEAD):
+    return head + "path = [\n" + ",\n".join(parts) + "\n]\n" + (tail or 'diffusion = "1e-9 m^2/s"\n')
+
+
+def test_two_peaks_of_one_name_are_warned_of():
+    two = 'peaks = [ { name = "Late", k = 2 }, { name = "late", k = 5 } ]\n'
+    answer = answer_of(GOOD, two, head=HEAD + 'diffusion = "1e-9 m^2/s"\n')
+    assert any('"Late"' in warning and "--peak" in warning for warning in answer.warnings)
+
+
+def test_a_slow_flow_may_be_a_bore_in_the_wrong_unit(faults_of):
+    text = text_of([GOOD[0], '{ column = "75 x 150 mm, 3 um", plates = 9000 }', GOOD[3]]).replace("1 mL", "300 nL")
+    assert "75 um" in faults_of(text)[0].suggestion
+
+
+def test_keys_of_the_file_below_the_parts_are_sent_up(faults_of):
+    tables = '[[path]]\ninject = "2 uL"\n[[path]]\ndetector = "UV"\nflow = "1 mL/min"\nviscosity = "0.9 cP"\n'
+    faults = faults_of(tables + 'diffusion = "1e-9 m^2/s"\npeaks = [ { name = "a" } ]\n')
+    assert all("above the first part" in f.suggestion for f in faults if f.place.key in ("viscosity", "peaks"))
+    assert {f.place.key for f in faults} >= {"flow", "viscosity", "peaks"}
+
+
+def test_a_header_that_nobody_needs_is_to_be_deleted(faults_of):
+    faults = faults_of("[conditions]\n" + text_of(GOOD))
+    assert any("delete the header" in fault.suggestion for fault in faults)
+    assert not any(fault.read == "nothing" and fault.place.key == "flow" for fault in faults)
+
+
+def test_a_retention_that_is_too_early_names_what_delays_most(faults_of):
+    slow = GOOD[3].replace('"1 s"', '"90 s"')
+    (fault,) = faults_of(text_of([*GOOD[:3], slow], peaks('retention = "1 min"')))
+    assert 'detector "UV"' in fault.expected
+
+
+def test_a_column_written_without_its_comma():
+    column = COLUMN.replace("4.6 x 150 mm, 5 um", "4.6 x 150 mm 5 um")
+    assert parse(text_of([GOOD[0], column, GOOD[3]]), "f").parts[1].elements[0].particle == pytest.approx(5e-6)
+
+
+@pytest.mark.parametrize(
+    ("old", "new", "proposed"),
+    [
+        ("11000", '"18k"', "18000"),
+        ("4.6 x 150 mm, 5 um", "C18 4.6 x 150 mm, 5 um", 'column = "4.6 x 150 mm, 5 um", name = "C18"'),
+        ("4.6 x 150 mm, 5 um", "4.6x150, 5", '"4.6 x 150 mm, 5 um"'),
+        ('{ tube = "20 cm x 0.2 mm" }', '{ fitting = "0.5 mm" }', "gap"),
+        ('{ tube = "20 cm x 0.2 mm" }', '{ tube = "5 uL" }', "volume and bore"),
+        ('{ inject = "2 uL" }', '{ inject = "2 uL", drop = "2 bar" }', "leave it out"),
+        ("total_porosity = 0.65", 'total_porosity = "ca. 0.55"', "0.65"),
+        ("total_porosity = 0.65", "total_porosity = 0.55, interstitial_porosity = 0.58", "leave it out"),
+    ],
+)
+def test_more_suggestions_lead_on(old, new, proposed, faults_of):
+    text = text_of(GOOD)
+    assert old in text
+    faults = faults_of(text.replace(old, new, 1))
+    assert any(proposed in fault.suggestion for fault in faults), [fault.suggestion for fault in faults]
+
+
+@pytest.mark.parametrize(
+    ("parts", "tail"),
+    [
+        ([*GOOD[1:], GOOD[0]], ""),
+        (GOOD, peaks('rt = "2 min"')),
+        ([GOOD[0], '{ tube = "a", length = "20 cm", id = "0.2 mm" }', *GOOD[2:]], ""),
+    ],
+)
+def test_a_fault_has_no_echo(parts, tail, faults_of):
+    assert len(faults_of(text_of(parts, tail))) == 1
+
+
+def test_a_huge_number_in_any_notation_is_a_fault(faults_of):
+    (fault,) = faults_of(text_of(GOOD).replace('"1 mL/min"', "0x" + "f" * 5000, 1))
+    assert fault.place.key == "flow"
+
+
+@pytest.mark.parametrize(
+    ("part", "word"),
+    [
+        ('{ block = "4 uL^2", at_flow = "10 mL/min" }', "measured at"),
+        ('{ tube = "valve", name = "line", length = "1 cm", bore = "0.2 mm" }', "second name"),
+        ('{ detector = "big", cell = "800 uL", time_constant = "1 s" }', "large for a column"),
+    ],
+)
+def test_slips_of_the_second_trial(part, word):
+    warnings = answer_of([*GOOD[:3], part, GOOD[3]]).warnings
+    assert any(word in warning for warning in warnings), warnings
+
+
+def test_a_measured_total_has_no_range():
+    bare = '{ column = "4.6 x 100 mm", plates = 9000 }'
+    found = answer_of([GOOD[0], COLUMN, bare, GOOD[3]], head=HEAD + 'pump_pressure = "120 bar"\n')
+    total = found.pressure.total
+    assert total.low == pytest.approx(total.high) == pytest.approx(120e5)

@@ -93,11 +93,36 @@ def test_up_to_seven_rows_are_shown_as_they_are(examples):
 def test_folded_rows_carry_their_sum():
     answer = big(4, 1)
     peak = answer.detectors[0].peaks[0]
-    assert len(peak.rows) > 7
     lines = screen_of(answer).splitlines()
-    table = lines[lines.index("") + 1 : lines.index("", lines.index("") + 1)]
-    rows = [line for line in table if "[" not in line][1:]
-    assert len(rows) <= 8
+    table = lines[lines.index("") + 2 : lines.index("", lines.index("") + 1)]
+    rows = [line for line in table if "[" not in line]
+    assert len(rows) <= 8 < len(peak.rows)
+    (others,) = [line for line in rows if " others, " in line]
+    count = int(others.split()[0])
+    assert count == len(peak.rows) - len(rows) + 1
+    folded = sorted(peak.rows, key=lambda row: row.variance)[:count]
+    total = sum(row.variance for row in folded)
+    assert f" {answer.in_uL2(total):.3g}" in others
+    assert f" {100 * total / peak.variance_extra:.0f} %" in others
+
+
+def test_a_name_with_the_word_limit_in_it_is_no_limit():
+    text = "\n".join(
+        ['flow = "1 mL/min"', 'viscosity = "0.9 mPa s"', 'diffusion = "1e-9 m^2/s"', "path = [", '{ inject = "2 uL" },']
+        + [f'{{ tube = "{n + 1} cm x 1.59 mm", name = "limiter {n}" }},' for n in range(6)]
+        + ['{ column = "4.6 x 150 mm, 3 um", plates = 9000, name = "column", max_pressure = "10 bar" },']
+        + ['{ detector = "UV", cell = "2 uL", time_constant = "0.1 s" },', "]"]
+    )
+    assert "above its limit of 10 bar" in " ".join(screen_of(budget(parse(text, "f"))).split())
+
+
+def test_a_contradiction_of_the_pump_pressure_is_always_shown():
+    text = (
+        'flow = "1 mL/min"\nviscosity = "0.9 mPa s"\ndiffusion = "1e-9 m^2/s"\npump_pressure = "1 bar"\npath = [\n'
+        '{ inject = "2 uL" },\n{ tube = "2 m x 0.12 mm" },\n{ column = "4.6 x 150 mm, 3 um", plates = 9000 },\n'
+        '{ detector = "UV", cell = "2 uL", time_constant = "0.1 s" },\n{ tube = "1 m x 0.5 mm", name = "waste" },\n]\n'
+    )
+    assert "contradicts" in screen_of(budget(parse(text, "f")))
 
 
 def test_what_is_assumed_is_listed_and_nothing_is_called_safe(examples):

@@ -22,7 +22,7 @@ def test_a_topic_has_all_that_is_promised(topic):
     assert re.search(r"\d", topic.worked())
     assert find(topic.name) == (topic,)
     for word in topic.words:
-        assert find(word.upper())
+        assert find(word.upper()) == (topic,)
 
 
 def test_no_two_topics_have_the_same_name_or_word():

@@ -16,7 +16,7 @@ from xcol.filters.column import Column
 from xcol.filters.laminar import UNMIXED_BELOW
 from xcol.filters.tube import Tube
 from xcol.flowpath.chain import Link, filter_of, links, run_of, segments, transit
-from xcol.flowpath.elements import Bed, Stream
+from xcol.flowpath.elements import Bed, Electronics, Stream
 
 if TYPE_CHECKING:
     from collections.abc import Iterator, Sequence
@@ -27,6 +27,7 @@ if TYPE_CHECKING:
 
     Values = npt.NDArray[np.float64]
 
+HALF_WIDTH = 2 * math.sqrt(2 * math.log(2))  # width at half height of a Gaussian, in σ
 FEW_POINTS = 10  # across 4σ: fewer, and the averaging between points adds more than 1.3 %
 
 
@@ -95,6 +96,16 @@ class PeakBudget:
         """Standard deviation of the recorded peak [s]."""
         return math.sqrt(self.variance_total)
 
+    @property
+    def width_half(self) -> float:
+        """Width at half height of the recorded peak [s], as a Gaussian."""
+        return HALF_WIDTH * self.sigma
+
+    @property
+    def width_half_column(self) -> float:
+        """Width at half height [s] that the columns alone would give."""
+        return HALF_WIDTH * math.sqrt(self.variance_column)
+
 
 @dataclass(frozen=True)
 class DetectorBudget:
@@ -115,6 +126,15 @@ class Budget:
     warnings: tuple[str, ...]
     cautions: tuple[str, ...]
 
+    def in_uL2(self, variance: float) -> float:
+        """Return a variance [s²] in µL²: times the square of the column's flow."""
+        return variance * (self.instrument.flow * 1e9) ** 2
+
+    @property
+    def unchecked(self) -> tuple[Part, ...]:
+        """Columns and detectors for which no pressure limit was entered."""
+        return _unchecked(self.instrument)
+
 
 def budget(instrument: Instrument) -> Budget:
     """Return the budget of every peak at every detector.
@@ -129,7 +149,7 @@ def budget(instrument: Instrument) -> Budget:
     """
     profile = pressures(instrument)
     detectors = tuple(_at_detector(instrument, detector) for detector in instrument.detectors)
-    warnings = [*instrument.warnings, *profile.warnings, *_remarks(detectors)]
+    warnings = [*profile.limits, *profile.warnings, *instrument.warnings, *_remarks(detectors)]
     return Budget(instrument, profile, detectors, tuple(warnings), _cautions(instrument))
 
 
@@ -170,7 +190,7 @@ def _at_detector(instrument: Instrument, detector: Part) -> DetectorBudget:
                     for i, row in rows.items()
                 ),
                 columns=bands,
-                points=_points(chain, instrument, total),
+                points=_points(chain, total),
             )
         )
     return DetectorBudget(detector, delay, tuple(peaks))
@@ -259,12 +279,11 @@ class _Spread:
         return self._known[group]
 
 
-def _points(chain: tuple[Link, ...], instrument: Instrument, variance: float) -> float | None:
+def _points(chain: tuple[Link, ...], variance: float) -> float | None:
     """Return the data points across 4σ, None where no rate was entered."""
     for link in chain:
-        if link.element.contribution == "rate":
-            period = 2 * float(filter_of(link, instrument.flow, 1e-9).delay())
-            return 4 * math.sqrt(variance) / period
+        if isinstance(link.element, Electronics) and link.element.period:
+            return 4 * math.sqrt(variance) / link.element.period
     return None
 
 
@@ -294,10 +313,7 @@ def _remarks(detectors: tuple[DetectorBudget, ...]) -> list[str]:
 
 
 def _cautions(instrument: Instrument) -> tuple[str, ...]:
-    unchecked = [
-        part.label for part in instrument.parts
-        if part.kind in ("column", "detector") and part.max_pressure is None
-    ]  # fmt: skip
+    unchecked = [part.label for part in _unchecked(instrument)]
     found = [
         "Before opening a line: pump off, pressure at zero, eye protection; check that tubing and seals "
         "suit solvent and pressure. The instrument's documents, local rules and licensed practice come "
@@ -311,3 +327,7 @@ def _cautions(instrument: Instrument) -> tuple[str, ...]:
             "A plugged waste line brings a cell to whatever pressure the pump allows, not to the figure computed here."
         )
     return tuple(found)
+
+
+def _unchecked(instrument: Instrument) -> tuple[Part, ...]:
+    return tuple(part for part in instrument.parts if part.kind in ("column", "detector") and part.max_pressure is None)

@@ -32,6 +32,7 @@ class Pressures:
     """The pressure profile of the path, and what it says against the limits."""
 
     rows: tuple[PressureRow, ...]
+    limits: tuple[str, ...]  # what is, or may be, above a limit that was entered
     warnings: tuple[str, ...]
 
     @property
@@ -54,24 +55,24 @@ def pressures(instrument: Instrument) -> Pressures:
     rows.reverse()
     if rows[0].inlet is None and instrument.pump_pressure is not None:
         rows = _down_from_pump(rows, instrument.pump_pressure)
-    for row in rows:
-        warnings += _limits(row)
+    limits = [text for row in rows for text in _limits(row)]
+    if any(row.inlet is None and row.part.max_pressure is not None for row in rows):
+        warnings.append("pressure limits are not checked where no inlet pressure is computed")
     if rows[0].inlet is not None and rows[0].inlet.value > HIGHEST_USUAL:
         warnings.append(
             f"{significant(rows[0].inlet.value / 1e5)} bar is more than any pump of the trade gives: a bore, a "
             "length, the viscosity or the flow is not as entered?"
         )
-    return Pressures(tuple(rows), tuple(warnings))
+    return Pressures(tuple(rows), tuple(limits), tuple(warnings))
 
 
 def _down_from_pump(rows: list[PressureRow], pump: float) -> list[PressureRow]:
     """Fill in inlet pressures from the pump on, as far as the drops are known."""
-    inlet: PressureRange | None = exactly(pump)
     filled = []
+    inlet: PressureRange | None = exactly(pump)
     for row in rows:
-        filled.append(replace(row, inlet=row.inlet if inlet is None else inlet))
-        known = inlet is not None and row.drop is not None
-        inlet = exactly(inlet.value - row.drop.value) if known and inlet and row.drop else None
+        filled.append(replace(row, inlet=inlet or row.inlet))
+        inlet = exactly(inlet.value - row.drop.value) if inlet and row.drop else None
     return filled
 
 
@@ -81,10 +82,8 @@ def _drop(part: Part, instrument: Instrument) -> PressureRange | None:
         return exactly(part.drop)
     total: PressureRange | None = _NOTHING
     for element in part.elements:
-        if isinstance(element, Bore | Bed):
-            viscosity = instrument.viscosity
-            drop = None if viscosity is None else element.drop(instrument.flow, viscosity)
-            total = None if drop is None or total is None else total + drop
+        drop = element.drop(instrument.flow, instrument.viscosity)
+        total = None if drop is None or total is None else total + drop
     return total
 
 
@@ -132,7 +131,9 @@ def _with_pump_pressure(
     taking = unknown or unmeasured
     weights = {i: _weight(instrument.parts[i], None if unknown else drops[i]) for i in taking}
     total = sum(weights.values())
-    return [exactly(rest * weights[i] / total) if i in weights else drop for i, drop in enumerate(drops)]
+    shared = {i: rest * weight / total for i, weight in weights.items()}
+    shared |= {i: drop.value for i in unmeasured if i not in weights and (drop := drops[i])}
+    return [exactly(shared[i]) if i in shared else drop for i, drop in enumerate(drops)]
 
 
 def _sum(drops: list[PressureRange | None]) -> float:
@@ -150,7 +151,7 @@ def _compare_with_beds(rest: float, beds: list[PressureRange], warnings: list[st
     low, high = sum(bed.low for bed in beds), sum(bed.high for bed in beds)
     if not low / 1.5 <= rest <= high * 1.5:
         warnings.append(
-            f"pump_pressure leaves {write(rest, 'bar', PRESSURE)} for the column, where its bed should take "
+            f"pump_pressure leaves {write(rest, 'bar', PRESSURE)} for the column bed, which should take "
             f"{write(low, 'bar', PRESSURE)} to {write(high, 'bar', PRESSURE)}: a blocked frit, or a particle "
             "size or viscosity that is not as entered?"
         )
@@ -162,12 +163,10 @@ def _limits(row: PressureRow) -> list[str]:
         ("inlet pressure", row.inlet, row.part.max_pressure),
         ("pressure drop", row.drop, row.part.max_drop),
     ):
-        if limit is None:
+        if limit is None or pressure is None:
             continue
         shown = write(limit, "bar", PRESSURE)
-        if pressure is None:
-            found.append(f"{row.part.label}: limit of {shown} not checked, no {what} is computed")
-        elif pressure.value > limit:
+        if pressure.value > limit:
             found.append(
                 f"{row.part.label}: {what} {significant(pressure.value / 1e5)} bar is above its limit of {shown}"
             )

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import os
 import sys
 from typing import Annotated
 
@@ -10,7 +9,7 @@ import typer
 
 from xcol import __version__
 from xcol.cli import budget, check, explain
-from xcol.cli.output import can_show_symbols
+from xcol.cli.output import can_show_symbols, silence_output
 from xcol.errors import InputError
 
 app = typer.Typer(
@@ -53,13 +52,9 @@ def main() -> None:
     except InputError as error:
         _complain(error)
         sys.exit(2)
-    except BrokenPipeError:
-        # the reader of our output has gone; keep the interpreter from complaining at its exit
-        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
-        sys.exit(0)
     except OSError as error:  # a full disk behind standard output, for instance
         print(f"xcol: the result could not be written: {error.strerror}", file=sys.stderr)
-        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+        silence_output()
         sys.exit(2)
     except KeyboardInterrupt:
         sys.exit(130)

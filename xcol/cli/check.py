@@ -28,23 +28,20 @@ def check(
     force: ForceOption = False,
 ) -> None:
     """Show what was understood of a path file, in metric and inch, and what was assumed."""
-    from dataclasses import replace
-
     from xcol.answers.budget import budget
     from xcol.flowpath.reader import read
     from xcol.report.check import check_csv, check_markdown, check_record, check_text
 
-    instrument = read(file)
     # what only the computation shows is a slip as well: a limit, a pump pressure, too few points
-    instrument = replace(instrument, warnings=budget(instrument).warnings)
+    answer = budget(read(file))
     if form is Format.JSON:
-        text = as_json(check_record(instrument), output)
+        text = as_json(check_record(answer), output)
     elif form is Format.CSV:
-        text = check_csv(instrument)
+        text = check_csv(answer)
     elif form is Format.MARKDOWN:
-        text = check_markdown(instrument)
+        text = check_markdown(answer)
     else:
         sheet = new_sheet(output)
-        check_text(instrument, sheet)
+        check_text(answer, sheet)
         text = sheet.text()
     emit(text, output, force, file)

@@ -72,8 +72,11 @@ def emit(text: str, output: str | None, force: bool, source: str = "-") -> None:
     """
     if output is None or output == "-":
         encoding = sys.stdout.encoding or "ascii"
-        sys.stdout.write(text.encode(encoding, "replace").decode(encoding))
-        sys.stdout.flush()
+        try:
+            sys.stdout.write(text.encode(encoding, "replace").decode(encoding))
+            sys.stdout.flush()
+        except BrokenPipeError:  # the reader has what it wanted, or has gone: no error of ours
+            silence_output()
         return
     target = Path(output)
     place = Place(file=output, key="--output")
@@ -90,6 +93,11 @@ def emit(text: str, output: str | None, force: bool, source: str = "-") -> None:
     except OSError as error:
         words = (error.strerror or str(error)).lower()
         raise refusal(place, words, "a file that can be written", "check folder and rights") from None
+
+
+def silence_output() -> None:
+    """Send what is still to be written nowhere, so that the interpreter's last flush is no error."""
+    os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
 
 
 def _write_whole(target: Path, text: str) -> None:

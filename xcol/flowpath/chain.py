@@ -87,14 +87,19 @@ def run_of(chain: Sequence[Link], group: Sequence[int], flow: float, diffusion: 
     return TubeRun(tuple(tube for tube in tubes if isinstance(tube, Tube)))
 
 
+def delays(instrument: Instrument, detector: Part) -> list[tuple[Part, float]]:
+    """Return the mean delay [s] of every link outside the columns, with its part."""
+    # no part's mean delay depends on diffusion
+    return [
+        (link.part, float(filter_of(link, instrument.flow, 1e-9).delay()))
+        for link in links(instrument, detector)
+        if not isinstance(link.element, Bed)
+    ]
+
+
 def transit(instrument: Instrument, detector: Part) -> float:
     """Mean delay [s] of everything outside the columns, from the valve's turn to the record."""
-    total = 0.0
-    for link in links(instrument, detector):
-        if not isinstance(link.element, Bed):
-            # no part's mean delay depends on diffusion
-            total += float(filter_of(link, instrument.flow, 1e-9).delay())
-    return total
+    return sum(delay for _, delay in delays(instrument, detector))
 
 
 def dead_time(instrument: Instrument, detector: Part) -> float:

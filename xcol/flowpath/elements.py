@@ -55,9 +55,21 @@ class Element(Protocol):
         """Return the filter it is for this stream; ``read_here`` in the detector that records."""
         ...
 
+    def drop(self, flow: float, viscosity: float | None) -> PressureRange | None:
+        """Pressure drop [Pa] at this flow [m³/s] and viscosity [Pa s]; None: cannot be computed."""
+        ...
+
+
+class WithoutDrop:
+    """What has no pressure drop unless one is entered for its part."""
+
+    def drop(self, flow: float, viscosity: float | None) -> PressureRange | None:
+        """Return no drop."""
+        return exactly(0.0)
+
 
 @dataclass(frozen=True)
-class Injected:
+class Injected(WithoutDrop):
     """The injected ``volume`` [m³], as a plug."""
 
     volume: float
@@ -101,13 +113,15 @@ class Bore:
         """Return the tube."""
         return Tube(self.length, self.bore, stream.flow, stream.diffusion)
 
-    def drop(self, flow: float, viscosity: float) -> PressureRange:
-        """Pressure drop [Pa]."""
+    def drop(self, flow: float, viscosity: float | None) -> PressureRange | None:
+        """Pressure drop [Pa]; None without a viscosity."""
+        if viscosity is None:
+            return None
         return exactly(float(tube_drop(flow, self.length, self.bore, viscosity)))
 
 
 @dataclass(frozen=True)
-class Mixed:
+class Mixed(WithoutDrop):
     """A mixing ``volume`` [m³] of this many ``tanks`` in series: a fitting, a mixer."""
 
     volume: float
@@ -126,7 +140,7 @@ class Mixed:
 
 
 @dataclass(frozen=True)
-class Cell:
+class Cell(WithoutDrop):
     """A detector cell of this ``volume`` [m³]: a plug, or ``tanks`` in series where given."""
 
     volume: float
@@ -147,11 +161,15 @@ class Cell:
 
 
 @dataclass(frozen=True)
-class Electronics:
-    """A filter of the recorded signal: ``made`` needs no stream."""
+class Electronics(WithoutDrop):
+    """A filter of the recorded signal: ``made`` needs no stream.
+
+    ``period`` [s] is the time between data points, of the element that averages between them.
+    """
 
     made: Filter
     contribution: str
+    period: float | None = None
     volume: float = 0.0
     of_signal: bool = True
 
@@ -166,7 +184,7 @@ class Electronics:
 
 
 @dataclass(frozen=True)
-class Block:
+class Block(WithoutDrop):
     """A module of variance ``measured`` [m⁶] and held ``volume`` [m³]."""
 
     measured: float
@@ -224,9 +242,9 @@ class Bed:
         """Return the column's filter for a band of this retention factor and plate number."""
         return Column(self.void_volume / stream.flow, retention_factor, plates)
 
-    def drop(self, flow: float, viscosity: float) -> PressureRange | None:
-        """Pressure drop [Pa]; None without a particle size."""
-        if self.particle is None:
+    def drop(self, flow: float, viscosity: float | None) -> PressureRange | None:
+        """Pressure drop [Pa]; None without a particle size or a viscosity."""
+        if self.particle is None or viscosity is None:
             return None
         at, tightest, loosest = (
             float(bed_drop(flow, self.length, self.bore, viscosity, self.particle, porosity))

@@ -130,6 +130,9 @@ class Number:
         if isinstance(raw, str):
             if re.fullmatch(r"\d{1,3}(?:[ ,.'][0-9]{3})+", raw.strip()) and "." not in raw:
                 raise UnitError(described(raw), self.what, re.sub(r"\D", "", raw))
+            if match := re.fullmatch(r"(\d{1,6}(?:[.,]\d+)?)\s*[kK]", raw.strip()):
+                number = float(match[1].replace(",", ".")) * 1000
+                raise UnitError(described(raw), self.what, f"{number:.0f}")
             try:
                 value, unit = split(raw)
             except UnitError as error:

@@ -2,15 +2,16 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterable
 
 from xcol.flowpath import slips
-from xcol.flowpath.file_keys import OTHER_WORDS
+from xcol.flowpath.file_keys import FILE_KEYS, OTHER_WORDS
 from xcol.flowpath.findings import Draft, Findings
 from xcol.flowpath.keys import Key, Later, Measure, as_typed, described, nearest
 from xcol.flowpath.kinds import KINDS, KINDS_LATER, Kind
 from xcol.flowpath.model import Part, Reading
-from xcol.units import UnitError, plain
+from xcol.units import UnitError, plain, quote
 
 ANY_KIND = (*KINDS, *KINDS_LATER)
 
@@ -78,7 +79,11 @@ def refuse_unknown(raw: dict[str, object], keys: Iterable[Key], others: tuple[st
         near = OTHER_WORDS.get(word) or OTHER_WORDS.get(word.lower(), "")
         near = near if near in known else nearest(word.lower()[:60], known)
         suggestion = near or "leave it out, or put it into note"
-        if near in named and isinstance(named[near].read, Later):
+        if word == "drop":  # a measured drop is no limit
+            suggestion = "leave it out: this kind of part has none"
+        elif word in FILE_KEYS or word == "peaks":
+            suggestion = f"move it above the first part: {word} belongs to the file"
+        elif near in named and isinstance(named[near].read, Later):
             suggestion = f"{near}, which this version does not compute yet: leave it out"
         elif word.lower() in ("radius", "r") and near == "bore":
             suggestion = "bore, with twice the value: a bore is a diameter"
@@ -108,7 +113,7 @@ def _kind_of(raw: dict[str, object], draft: Draft) -> Kind | None:
             f"{words} in one part",
         )
         return None
-    known = ", ".join(ANY_KIND)
+    known = ", ".join(KINDS)
     spoken = [(word, OTHER_WORDS.get(word.lower(), "")) for word in raw]
     guess = next(
         (f'"{kind}" for "{word}"' for word, kind in spoken if kind in ANY_KIND),
@@ -150,6 +155,8 @@ def _read_size(raw: object, kind: Kind, draft: Draft) -> None:
             return
     begins_with_number = text.lstrip(" +-−≈~<>.,")[:1].isdigit()
     if isinstance(raw, str) and (given or not begins_with_number or kind.size is None):
+        if draft.name and plain(text) != draft.name and "name" in draft.written:
+            draft.warn(f"{quote(text)} is a second name: left out")
         draft.name = draft.name or plain(text)[:60]
         if kind.ways and not given:
             _size_is_missing(started, kind, draft)
@@ -159,6 +166,9 @@ def _read_size(raw: object, kind: Kind, draft: Draft) -> None:
         return
     if error is not None:
         suggestion = error.suggestion
+        if len(kind.ways) > 1:
+            others = " or ".join(" and ".join(way) for way in kind.ways)
+            suggestion += f"; or a name here, and the size as {others}"
         if not kind.ways:  # a size is not needed, so this may be a name
             suggestion += f', or name = "{text[:40]}" if it is the name'
         draft.findings.fault(draft.place(kind.name), error.read, error.expected, suggestion)
@@ -183,13 +193,29 @@ def _take_sizes(sizes: dict[str, float], started: set[str], kind: Kind, draft: D
 
 def _size_is_missing(started: set[str], kind: Kind, draft: Draft) -> None:
     ways = ", or ".join(" and ".join(way) for way in kind.ways)
+    if any(fault.place.part == draft.label for fault in draft.findings.faults):
+        return  # a key that was not understood may be the one that is missed
     if started:
         missing = sorted({key for way in kind.ways for key in way if way[0] in started} - started)
         read = f"{' and '.join(sorted(started))} alone"
         draft.fault("", f"its size: {ways}", f"add {' and '.join(missing) or ways}", read)
         return
     shown = draft.written[kind.name]
-    draft.fault(kind.name, f"its size: {ways}", kind.example, f'"{shown}", a name, and no size')
+    suggestion = _size_within(shown, kind) or kind.example
+    draft.fault(kind.name, f"its size: {ways}", suggestion, f"{quote(shown)}, a name, and no size")
+
+
+def _size_within(text: str, kind: Kind) -> str:
+    """Propose to part a size from the name that stands before it, as in "C18 3.0 x 100 mm"."""
+    for match in re.finditer(r"(?<=\s)\d", text):
+        size, name = text[match.start() :].strip(), text[: match.start()].strip(" ,;")
+        try:
+            if kind.size:
+                kind.size(size)
+                return f'{kind.name} = "{size}", name = "{name}"'
+        except UnitError:
+            continue
+    return ""
 
 
 def _name(raw: dict[str, object], kind: Kind) -> str:

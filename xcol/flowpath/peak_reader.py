@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from xcol.flowpath import slips
-from xcol.flowpath.chain import dead_time, transit
+from xcol.flowpath.chain import dead_time, delays, transit
 from xcol.flowpath.elements import Bed
 from xcol.flowpath.file_keys import PEAK_KEYS
 from xcol.flowpath.findings import Draft, Findings
@@ -52,7 +52,7 @@ def check_positions(drafts: list[Draft], has_column: bool) -> None:
                 'add { column = "4.6 x 150 mm, 5 um", plates = 11000 }, or leave the key out '
                 "(a union in place of the column)",
             )
-        elif has_column and len(given) != 1:
+        elif has_column and len(given) != 1 and (given or not _has_fault(draft)):
             read = " and ".join(given) if given else "none of them"
             draft.fault(
                 given[-1] if given else "",
@@ -60,6 +60,11 @@ def check_positions(drafts: list[Draft], has_column: bool) -> None:
                 "k = 2" if not given else "leave the others out",
                 read,
             )
+
+
+def _has_fault(draft: Draft) -> bool:
+    """Whether the peak has a fault already: the key that is missed may be the one that is not known."""
+    return any(fault.place.part == draft.label for fault in draft.findings.faults)
 
 
 def check_diffusion(drafts: list[Draft], has_peaks: bool, top: Draft) -> None:
@@ -132,11 +137,12 @@ def _k_from(retention: float, draft: Draft, instrument: Instrument) -> float | N
     expected = f"at least {write(least, 's', TIME, 4)} ({write(least, 'min', TIME, 4)})"
     if key == "elution_volume":
         expected = f"at least {least * instrument.flow * 1e6:.4g} mL"
+    slowest = max(delays(instrument, first), key=lambda pair: pair[1])
     draft.fault(
         key,
-        f"{expected}: the transit outside the column, {write(delay, 's', TIME)}, and its hold-up, "
-        f"{write(hold_up, 's', TIME)}",
-        "check retention, void volume and flow (an excluded peak needs its own void_volume)",
+        f"{expected}: {write(hold_up, 's', TIME)} of hold-up, and {write(delay, 's', TIME)} outside the column, "
+        f"most of it in {slowest[0].label} ({write(slowest[1], 's', TIME)})",
+        "check retention and flow, the column's void volume, and the size of that part",
     )
     return None
 

@@ -5,10 +5,10 @@ from __future__ import annotations
 from dataclasses import replace
 from typing import Any
 
-from xcol.catalogs import packings
+from xcol.catalogs import usual_packing
 from xcol.errors import InputError, Place
 from xcol.flowpath import slips
-from xcol.flowpath.elements import Bed
+from xcol.flowpath.elements import Bed, Cell
 from xcol.flowpath.file_keys import FILE_KEYS
 from xcol.flowpath.findings import Draft, Findings
 from xcol.flowpath.keys import described
@@ -44,8 +44,7 @@ def parse(text: str, file: str) -> Instrument:
     read_keys(data, FILE_KEYS.values(), top)
     refuse_unknown(data, FILE_KEYS.values(), ("path", "peaks"), top)
     if "flow" not in data:
-        place = Place(file, None, "", "flow")
-        findings.fault(place, "nothing", "the flow rate", 'flow = "1.0 mL/min"')
+        _report_missing_flow(data, file, lines, findings)
 
     kinds, parts = _read_path(data, file, lines, findings)
     drafts = read_peaks(data.get("peaks"), file, lines, findings)
@@ -57,6 +56,22 @@ def parse(text: str, file: str) -> Instrument:
         slips.flow_in_columns(flow, parts, top.place("flow"), findings)
     findings.raise_faults()
     return _instrument(top, tuple(parts), drafts, findings)
+
+
+def _report_missing_flow(data: dict[str, Any], file: str, lines: KeyLines, findings: Findings) -> None:
+    """Report that there is no flow, or where it has gone: below a header that took it."""
+    if any(isinstance(table, dict) and "flow" in table for table in data.values()):
+        return  # the header is reported as what is wrong
+    for index, entry in enumerate(_list(data.get("path"))):
+        if isinstance(entry, dict) and "flow" in entry:
+            place = Place(file, lines.line(("path", index, "flow")), "", "flow")
+            findings.fault(place, "flow inside a part", "flow above the parts", "move it above the first part")
+            return
+    findings.fault(Place(file, None, "", "flow"), "nothing", "the flow rate", 'flow = "1.0 mL/min"')
+
+
+def _list(value: object) -> list[Any]:
+    return value if isinstance(value, list) else []
 
 
 def _instrument(top: Draft, parts: tuple[Part, ...], drafts: list[Draft], findings: Findings) -> Instrument:
@@ -78,6 +93,7 @@ def _instrument(top: Draft, parts: tuple[Part, ...], drafts: list[Draft], findin
     _notes_on_names(instrument, findings)
     slips.of_path(instrument, top.place("flow"), findings)
     peaks = peaks_of(drafts, instrument, top.number("diffusion") or 0.0, findings)
+    _warn_of_twins([peak.name for peak in peaks], "peaks", findings)
     _notes_on_beds(instrument, findings)
     findings.assume(
         "viscosity and D as entered",
@@ -93,12 +109,18 @@ def _instrument(top: Draft, parts: tuple[Part, ...], drafts: list[Draft], findin
 
 
 def _notes_on_names(instrument: Instrument, findings: Findings) -> None:
-    names = [part.name.lower() for part in instrument.detectors if part.name]
-    for name in sorted({name for name in names if names.count(name) > 1}):
-        findings.warn(f'{names.count(name)} detectors have the name "{name}": --detector finds the first')
+    _warn_of_twins([part.name for part in instrument.detectors if part.name], "detectors", findings)
     for part in instrument.detectors:
-        if not any(element.contribution == "cell" for element in part.elements):
+        if not any(isinstance(element, Cell) for element in part.elements):
             findings.assume("no cell", f"{part.label}: no cell entered, none counted")
+
+
+def _warn_of_twins(names: list[str], what: str, findings: Findings) -> None:
+    lower = [name.lower() for name in names]
+    for name in dict.fromkeys(name for name in names if lower.count(name.lower()) > 1):
+        option = what.removesuffix("s")
+        findings.warn(f'{lower.count(name.lower())} {what} have the name "{name}": --{option} finds the first')
+        return
 
 
 def _notes_on_beds(instrument: Instrument, findings: Findings) -> None:
@@ -116,7 +138,7 @@ def _notes_on_beds(instrument: Instrument, findings: Findings) -> None:
                 findings.assume(
                     f"bed {value:g}",
                     f"{part.label}: interstitial porosity {value:g} ({low:g} to {high:g}), for the pressure "
-                    f"drop only; {packings()['fully porous'].source}",
+                    f"drop only; {usual_packing().source}",
                 )
 
 
@@ -142,13 +164,14 @@ def _read_path(data: dict[str, Any], file: str, lines: KeyLines, findings: Findi
     if entries is None:
         under = next((k for k, v in data.items() if isinstance(v, dict) and "path" in v), None)
         if under:
+            move = f"move path above [{under}], or write {under} = {{ ... }} on one line"
             findings.fault(
                 Place(file, lines.line((under, "path")), "", "path"),
                 f"path under the header [{under}], which takes all keys below it",
                 "path above the first [header]",
-                f"move path above [{under}], or write {under} = {{ ... }} on one line",
+                move if under in FILE_KEYS else f"delete the header [{under}]",
             )
-        else:
+        elif not any(word.lower() in ("path", "paths", "part", "parts") for word in data):
             example = 'path = [ { inject = "20 uL" }, { column = ... }, { detector = "UV" } ]'
             findings.fault(place, "nothing", "the parts in order of flow", example)
         return [], []
@@ -195,7 +218,7 @@ def _check_kinds(kinds: list[str], entries: list[Any], place: Place, lines: KeyL
         if last < first:
             findings.fault(place, "all detectors before the injection", "parts in order of flow",
                            "begin with the injection")  # fmt: skip
-        for index, kind in enumerate(kinds):
+        for index, kind in enumerate(kinds if first < last else []):
             if kind == "column" and not first < index < last:
                 where = Place(place.file, lines.line(("path", index)), f"part {index + 1} (column)")
                 findings.fault(where, "a column that is not between injection and last detector",

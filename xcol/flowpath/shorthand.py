@@ -9,7 +9,7 @@ from xcol.units import LENGTH, UnitError, missing_unit, parse, quote, split
 # "x" separates sizes only before a number, so that no unit is ever cut; a comma separates unless
 # it is a decimal comma, which has a digit on either side.
 _BY = re.compile(r"\s*[xX×*]\s*(?=[\d.,+\-])")
-_THEN = re.compile(r"\s*(?:;|,(?!\d)|(?<!\d),)\s*")
+_THEN = re.compile(r"\s*(?:;|,(?!\d)|(?<!\d),)\s*|(?<=[A-WYZa-wyzµμ])\s+(?=\d)")
 _INSIDE = re.compile(r"\s*(?:\bi\.?d\.?|\binside diameter|\bbore|\blong|\bparticles?)\s*$", re.I)
 _OUTSIDE = re.compile(r"(?:\bo\.?d\.?(?![a-z])|\boutside diameter|\bouter diameter)", re.I)
 _RADIUS = re.compile(r"\bradius\b", re.I)
@@ -56,14 +56,16 @@ def column_size(text: str) -> dict[str, float]:
         raise UnitError(quote(text), expected, advice)
     (first, first_unit), (second, second_unit) = (split(size) for size in sizes)
     if not second_unit:
-        rest = f", {pieces[1]}" if len(pieces) == 2 else ""
+        rest = _particle(pieces)
         raise UnitError(
             f"{quote(text)}: {second:g} without a unit",
             expected,
             f'"{first:g} x {second:g} mm{rest}"',
         )
+    if second_unit not in LENGTH.everyday:
+        raise UnitError(quote(text), expected, "in this form, with a comma before the particle")
     if not first_unit and second_unit != "mm":  # "2.1 x 5 cm" may mean 2.1 mm or 21 mm
-        rest = f", {pieces[1]}" if len(pieces) == 2 else ""
+        rest = _particle(pieces)
         raise UnitError(
             f"{quote(text)}: {first:g} without a unit, beside one in {second_unit}",
             expected,
@@ -79,6 +81,13 @@ def column_size(text: str) -> dict[str, float]:
             raise missing_unit(particle, LENGTH, ("um",))
         result["particle"] = parse(particle, LENGTH)
     return result
+
+
+def _particle(pieces: list[str]) -> str:
+    """Return what follows bore and length, with its unit, to be offered again."""
+    if len(pieces) < 2:
+        return ""
+    return f", {pieces[1]}" + ("" if re.search(r"[A-Za-zµμ]", pieces[1]) else " um")
 
 
 def length_first(text: str) -> bool:

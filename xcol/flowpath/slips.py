@@ -9,8 +9,8 @@ import math
 from collections.abc import Callable, Iterable
 from typing import TYPE_CHECKING
 
-from xcol.catalogs import tubing
-from xcol.flowpath.elements import Bed, Bore
+from xcol.catalogs import tubing, usual_packing
+from xcol.flowpath.elements import Bed, Bore, Cell
 from xcol.flowpath.hydraulics import LAMINAR_LIMIT, reynolds_number
 from xcol.units import FLOW, LENGTH, PRESSURE, VISCOSITY, VOLUME, significant, write
 
@@ -20,7 +20,6 @@ if TYPE_CHECKING:
     from xcol.flowpath.model import Instrument, Part
 
 _OUTSIDE_DIAMETERS = {"1/32 in": 0.0254 / 32, "1/16 in": 0.0254 / 16, "1/8 in": 0.0254 / 8}
-_REEL_NUMBERS = (0.0025, 0.004, 0.005, 0.007, 0.010, 0.020, 0.030, 0.040)  # in, as printed on reels
 _COLUMN_RADII = {1.05e-3: 2.1e-3, 1.6e-3: 3.2e-3, 2.3e-3: 4.6e-3}
 
 WIDEST_USUAL_BORE = 1.2e-3
@@ -42,6 +41,8 @@ def of_path(instrument: Instrument, flow_place: Place, findings: Findings) -> No
     """Look for slips between parts."""
     flow_in_columns(instrument.flow, instrument.parts, flow_place, findings)
     _injection_and_columns(instrument, findings)
+    _cells_and_columns(instrument, findings)
+    _blocks(instrument, findings)
     _order(instrument, findings)
     if instrument.viscosity is not None and not 1.5e-4 <= instrument.viscosity <= 5e-3:
         shown = write(instrument.viscosity, "mPa s", VISCOSITY)
@@ -61,12 +62,18 @@ def flow_in_columns(flow: float, parts: Iterable[Part], place: Place, findings: 
         velocity = bed.length * flow / bed.void_volume
         shown = f"{significant(velocity * 1e3)} mm/s in the {bed.bore * 1e3:g} mm column"
         if not SLOWEST <= velocity <= FASTEST:
-            factor, unit = (1e-3, "uL/min") if velocity > FASTEST else (1e3, "mL/min")
+            fast = velocity > FASTEST
+            options = []
+            factor, unit = (1e-3, "uL/min") if fast else (1e3, "mL/min")
+            if SLOW <= velocity * factor <= FAST:
+                options.append(f'flow = "{write(flow * factor, unit, FLOW)}"')
+            if not fast and SLOW <= velocity * 1e6 <= FAST:
+                options.append(f"a column bore of {write(bed.bore * 1e-3, 'um', LENGTH)}")
             findings.fault(
                 place,
                 f"{write(flow, 'mL/min', FLOW)}, which is {shown}",
                 "a flow that gives 0.01 to 30 mm/s in the column",
-                f'flow = "{write(flow * factor, unit, FLOW)}"',
+                " or ".join(options) or "check flow and column bore",
             )
         elif not SLOW <= velocity <= FAST:
             findings.warn(f"flow {write(flow, 'mL/min', FLOW)} is {shown}, which is unusual: mL/min or uL/min?")
@@ -112,7 +119,9 @@ def _tube(draft: Draft) -> None:
         draft.warn(f"{shown} is the outside diameter of {outside} tubing: is the bore meant?")
     elif bore > WIDEST_USUAL_BORE:
         draft.warn(f"{shown} is wide for a connecting tube: o.d. for bore, or another unit?")
-    elif _says_millimetres(draft) and any(math.isclose(millimetres, number, rel_tol=1e-6) for number in _REEL_NUMBERS):
+    elif _says_millimetres(draft) and any(
+        row.reel_inches and math.isclose(millimetres, row.reel_inches, rel_tol=1e-6) for row in tubing()
+    ):
         draft.warn(f"{shown}: reels show this number in inches; did you mean {millimetres:g} in?")
     else:
         stock = [row.bore for row in tubing()]
@@ -163,6 +172,8 @@ def _column(draft: Draft) -> None:
 
 
 def _porosities(draft: Draft, bore: float, length: float) -> None:
+    usual = usual_packing()
+    low, high = usual.interstitial_range
     total, void = draft.number("total_porosity"), draft.number("void_volume")
     if void is not None:
         empty = math.pi / 4 * bore**2 * length
@@ -171,19 +182,25 @@ def _porosities(draft: Draft, bore: float, length: float) -> None:
             draft.fault(
                 "void_volume",
                 f"0.2 to 1 times the empty column, {write(empty, 'uL', VOLUME)}",
-                f"near {write(0.65 * empty, 'uL', VOLUME)}, the usual 0.65 of it",
+                f"near {write(usual.total_porosity * empty, 'uL', VOLUME)}, the usual {usual.total_porosity:g} of it",
             )
             return
     if total is not None and total < 0.48:
         draft.warn(
-            f"total porosity {total:.2g} is low: is the interstitial one (0.36 to 0.42) meant? "
+            f"total porosity {total:.2g} is low: is the interstitial one ({low:g} to {high:g}) meant? "
             "The total one is 0.5 (core-shell) to 0.85 (size exclusion)"
         )
     if total is not None and total > 0.9:
         draft.warn(f"total porosity {total:.2g} is high: 0.5 to 0.85 is usual")
     bed = draft.number("interstitial_porosity")
     if bed is not None and not 0.33 <= bed <= 0.45:
-        draft.warn(f"interstitial porosity {bed:g} is unusual: 0.36 to 0.42 is usual")
+        draft.warn(f"interstitial porosity {bed:g} is unusual: {low:g} to {high:g} is usual")
+    if bed is not None and total is not None and bed >= total:
+        draft.fault(
+            "interstitial_porosity",
+            f"less than the total porosity, {total:.3g}: the space between particles is part of it",
+            "leave it out: a usual one is assumed",
+        )
 
 
 def _block(draft: Draft) -> None:
@@ -218,7 +235,7 @@ def _detector(draft: Draft) -> None:
 
 def _odd_volume(draft: Draft, volume: float | None, most: float) -> None:
     if volume is not None and volume > most:
-        draft.warn(f"a volume of {write(volume, 'uL', VOLUME)} is unusual here: uL or mL?")
+        draft.warn(f"a volume of {write(volume, 'uL', VOLUME)} is unusual here: is the unit meant?")
 
 
 _CHECKS: dict[str, Callable[[Draft], None]] = {
@@ -237,8 +254,31 @@ def _injection_and_columns(instrument: Instrument, findings: Findings) -> None:
     if void and injected > void:
         findings.warn(
             f"{write(injected, 'uL', VOLUME)} injected is more than the column's void volume, "
-            f"{write(void, 'uL', VOLUME)}: uL or mL?"
+            f"{write(void, 'uL', VOLUME)}: is the unit meant?"
         )
+
+
+def _cells_and_columns(instrument: Instrument, findings: Findings) -> None:
+    void = sum(e.void_volume for part in instrument.parts for e in part.elements if isinstance(e, Bed))
+    for part in instrument.detectors:
+        for cell in part.elements:
+            if isinstance(cell, Cell) and void and cell.volume > 0.3 * void:
+                findings.warn(
+                    f"{part.label}: a cell of {write(cell.volume, 'uL', VOLUME)} is large for a column with a void "
+                    f"volume of {write(void, 'uL', VOLUME)}: is the unit meant?"
+                )
+
+
+def _blocks(instrument: Instrument, findings: Findings) -> None:
+    for part in instrument.parts:
+        for reading in part.readings:
+            if reading.key == "at_flow" and isinstance(reading.value, float):
+                ratio = reading.value / instrument.flow
+                if not 0.5 <= ratio <= 2:
+                    findings.warn(
+                        f"{part.label}: measured at {write(reading.value, 'mL/min', FLOW)}, and the flow is "
+                        f"{write(instrument.flow, 'mL/min', FLOW)}: its variance may be another one here"
+                    )
 
 
 def _order(instrument: Instrument, findings: Findings) -> None:

@@ -20,6 +20,7 @@ MOST_MENDED = 50
 _CURLY = "“”„‟‘’‚‛«»"
 _AT = re.compile(r"\(at line (\d+), column (\d+)\)")
 _BLANK = re.compile(r"[ \t]*(?:#[^\n]*)?")
+_SPACED_KEY = re.compile(r"[A-Za-z]\w*(?:[ \t]+[A-Za-z]\w*)+(?=[ \t]*=)")
 _KEY_AND_EQUALS = re.compile(r"[ \t]*[A-Za-z_][\w-]*[ \t]*=")
 
 
@@ -326,8 +327,10 @@ def _no_equals(spot: _Spot) -> _Slip | None:
     if spot.char in ":\"'":
         new = "=" if spot.char == ":" else "= "
         mended = spot.replaced(spot.at, spot.at + (spot.char == ":"), new)
-    elif spaced := re.match(r"([A-Za-z]\w*)(?:[ \t]+[A-Za-z]\w*)+(?=[ \t]*=)", spot.line.lstrip()):
-        start = spot.start + len(spot.line) - len(spot.line.lstrip())
+    elif spaced := next(
+        (m for m in _SPACED_KEY.finditer(spot.line) if m.start() <= spot.at - spot.start <= m.end()), None
+    ):
+        start = spot.start + spaced.start()
         mended = spot.replaced(start, start + len(spaced[0]), re.sub(r"[ \t]+", "_", spaced[0]))
     else:
         return None

@@ -4,7 +4,6 @@ from __future__ import annotations
 
 import csv
 import io
-import math
 from typing import TYPE_CHECKING, Any
 
 from xcol import __version__
@@ -15,7 +14,6 @@ if TYPE_CHECKING:
     from xcol.flowpath.hydraulics import PressureRange
 
 SCHEMA = "xcol.budget/1"
-_HALF = 2 * math.sqrt(2 * math.log(2))  # width at half height of a Gaussian, in σ
 
 
 def budget_record(answer: Budget) -> dict[str, Any]:
@@ -30,7 +28,7 @@ def budget_record(answer: Budget) -> dict[str, Any]:
         "warnings": list(answer.warnings),
         "cautions": list(answer.cautions),
         "pressure": [_pressure(row) for row in answer.pressure.rows],
-        "detectors": [_detector(found, instrument.flow) for found in answer.detectors],
+        "detectors": [_detector(answer, found) for found in answer.detectors],
     }
 
 
@@ -77,41 +75,40 @@ def _bar(drop: PressureRange | None) -> float | None:
     return drop.value / 1e5 if drop is not None else None
 
 
-def _detector(answer: DetectorBudget, flow: float) -> dict[str, Any]:
+def _detector(answer: Budget, found: DetectorBudget) -> dict[str, Any]:
     return {
-        "name": answer.detector.name or "detector",
-        "position": answer.detector.position,
-        "delay_s": answer.delay,
-        "peaks": [_peak(peak, answer.delay, flow) for peak in answer.peaks],
+        "name": found.detector.name or "detector",
+        "position": found.detector.position,
+        "delay_s": found.delay,
+        "peaks": [_peak(answer, peak, found.delay) for peak in found.peaks],
     }
 
 
-def _peak(answer: PeakBudget, delay: float, flow: float) -> dict[str, Any]:
-    square = (flow * 1e9) ** 2  # s² to µL²
+def _peak(answer: Budget, peak: PeakBudget, delay: float) -> dict[str, Any]:
     return {
-        "name": answer.peak.name,
-        "k": answer.peak.k,
-        "retention_s": answer.retention,
-        "diffusion_m2_s": answer.peak.diffusion,
-        "plates_column": answer.plates_column,
-        "plates_observed": answer.plates_observed,
-        "plates_kept": answer.plates_kept,
+        "name": peak.peak.name,
+        "k": peak.peak.k,
+        "retention_s": peak.retention,
+        "diffusion_m2_s": peak.peak.diffusion,
+        "plates_column": peak.plates_column,
+        "plates_observed": peak.plates_observed,
+        "plates_kept": peak.plates_kept,
         "interval_plates_kept": None,
-        "resolution_kept": answer.resolution_kept,
-        "variance_column_uL2": answer.variance_column * square,
-        "variance_extra_uL2": answer.variance_extra * square,
-        "variance_total_uL2": answer.variance_total * square,
-        "variance_total_s2": answer.variance_total,
-        "sigma_total_s": answer.sigma,
-        "width_half_s": _HALF * answer.sigma,
-        "width_base_s": 4 * answer.sigma,
-        "extra_volume_uL": delay * flow * 1e9,
-        "points_4sigma": answer.points,
-        "parts": [_row(row, square) for row in answer.rows],
+        "resolution_kept": peak.resolution_kept,
+        "variance_column_uL2": answer.in_uL2(peak.variance_column),
+        "variance_extra_uL2": answer.in_uL2(peak.variance_extra),
+        "variance_total_uL2": answer.in_uL2(peak.variance_total),
+        "variance_total_s2": peak.variance_total,
+        "sigma_total_s": peak.sigma,
+        "width_half_s": peak.width_half,
+        "width_base_s": 4 * peak.sigma,
+        "extra_volume_uL": delay * answer.instrument.flow * 1e9,
+        "points_4sigma": peak.points,
+        "parts": [_row(answer, row) for row in peak.rows],
     }
 
 
-def _row(row: Row, square: float) -> dict[str, Any]:
+def _row(answer: Budget, row: Row) -> dict[str, Any]:
     longtube = row.longtube_variance
     return {
         "part": row.part.kind,
@@ -123,11 +120,11 @@ def _row(row: Row, square: float) -> dict[str, Any]:
         "tstar": row.t_star,
         "bend_De2Sc": None,
         "compression": row.compression,
-        "variance_uL2": row.variance * square,
+        "variance_uL2": answer.in_uL2(row.variance),
         "variance_low_uL2": None,
         "variance_high_uL2": None,
         "variance_s2": row.variance,
-        "variance_longtube_uL2": longtube * square if longtube is not None else None,
+        "variance_longtube_uL2": answer.in_uL2(longtube) if longtube is not None else None,
         "share_extra": row.share_extra,
         "share_total": row.share_total,
         "plates_kept_without": row.plates_kept_without,

@@ -5,7 +5,7 @@ from __future__ import annotations
 from typing import TYPE_CHECKING
 
 from xcol.report.budget_tables import bars, parts_grid, peaks_grid
-from xcol.report.budget_text import heading, total_pressure, unchecked, verdict
+from xcol.report.budget_text import heading, total_pressure, verdict
 from xcol.report.labels import name_of, show
 from xcol.report.sheet import Sheet
 from xcol.units import PRESSURE
@@ -13,6 +13,7 @@ from xcol.units import PRESSURE
 if TYPE_CHECKING:
     from xcol.answers.budget import Budget, DetectorBudget, PeakBudget
     from xcol.answers.pressure import PressureRow
+    from xcol.flowpath.model import Part
 
 LINES = 24
 _CAVEAT = "No ranges yet (tubes at their worst, plugs at their best): what leads is open."
@@ -30,18 +31,16 @@ def first_screen(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: Sh
     foot = _like(sheet)
     _footer(answer, foot)
 
-    # header of the parts, a blank line and header of the peaks, one peak
-    room = LINES - sheet.count() - foot.count() - 4
-    urgent = _warnings(answer, sheet, room - _LEAST_PARTS)
-    cut = len(at.peaks) > 1
-    sheet.grid(parts_grid(answer, at, peak, room - urgent.count() - (1 if cut else 0)), indent=2)
+    # header of the parts, a blank line and header of the peaks, one peak, one line for those left out
+    room = LINES - sheet.count() - foot.count() - 5
+    kept = _lines_for_warnings(answer, sheet, room - _LEAST_PARTS)
+    sheet.grid(parts_grid(answer, at, peak, room - kept), indent=2)
     sheet.line()
-    room = LINES - sheet.count() - foot.count() - 1 - urgent.count()
-    shown = _peaks_that_fit(at.peaks, peak, room)
-    sheet.grid(peaks_grid(shown, answer.instrument.flow), indent=2)
+    shown = _peaks_that_fit(at.peaks, peak, LINES - sheet.count() - foot.count() - 1 - kept)
+    sheet.grid(peaks_grid(answer, shown), indent=2)
     if len(shown) < len(at.peaks):
         sheet.line(f"  {len(at.peaks) - len(shown)} more peaks: --full")
-    _warnings(answer, sheet, LINES - sheet.count() - foot.count(), into=sheet)
+    _warnings(answer, sheet, LINES - sheet.count() - foot.count())
     _footer(answer, sheet)
 
 
@@ -60,20 +59,21 @@ def _pressure(answer: Budget) -> str:
         nearest = max(limited, key=_share_of_limit)
         limit = show(nearest.part.max_pressure or 0.0, PRESSURE)
         rest = f", {len(limited) - 1} more: --full" if len(limited) > 1 else ""
-        pieces.append(f"Nearest its limit: {_short(nearest)} {bars(nearest.inlet)} of {limit}{rest}.")
-    if without := [name if len(name) <= 24 else f"{name[:21]}..." for name in unchecked(answer)]:
+        word = "Above its limit" if _share_of_limit(nearest) > 1 else "Nearest its limit"
+        pieces.append(f"{word}: {_short(nearest.part)} {bars(nearest.inlet)} of {limit}{rest}.")
+    if without := [_short(part) for part in answer.unchecked]:
         more = f" and {len(without) - 2} more" if len(without) > 2 else ""
         pieces.append(f"Limits not checked (none entered): {', '.join(without[:2])}{more}.")
     return " ".join(pieces)
 
 
-def _short(row: PressureRow) -> str:
-    name = name_of(row.part)
+def _short(part: Part) -> str:
+    name = name_of(part)
     return name if len(name) <= 24 else f"{name[:21]}..."
 
 
 def _share_of_limit(row: PressureRow) -> float:
-    return row.inlet.high / row.part.max_pressure if row.inlet and row.part.max_pressure else 0.0
+    return row.inlet.value / row.part.max_pressure if row.inlet and row.part.max_pressure else 0.0
 
 
 def _like(sheet: Sheet) -> Sheet:
@@ -112,29 +112,35 @@ def _peaks_that_fit(peaks: tuple[PeakBudget, ...], chosen: PeakBudget, room: int
     return tuple(peak for peak in peaks if peak in kept)
 
 
-def _warnings(answer: Budget, sheet: Sheet, room: int, into: Sheet | None = None) -> Sheet:
-    """Write the warnings that fit, those of limits first, and how many are left; always one line.
+def _lines_for_warnings(answer: Budget, sheet: Sheet, room: int) -> int:
+    """Return the lines that warnings get whatever else there is to say.
 
-    Without ``into`` only limits are written, in as little room as they take.
+    Limits and contradictions of pressure, as many as ``room`` has lines for, one at least; of other
+    warnings only their number.
     """
-    ordered = sorted(answer.warnings, key=lambda text: "limit" not in text)
-    target = into if into is not None else _like(sheet)
-    used = 0
-    for index, warning in enumerate(ordered):
-        left = len(ordered) - index
-        urgent = "limit" in warning
+    if not answer.warnings:
+        return 0
+    urgent = len(answer.pressure.limits) + len(answer.pressure.warnings)
+    lines = 0
+    for index, warning in enumerate(answer.warnings[:urgent]):
         trial = _like(sheet)
         _at_most(2, f"! {warning}", trial)
-        tail = 1 if left > 1 else 0
-        if (into is None and not urgent) or used + trial.count() + tail > (
-            max(room, 3) if urgent and not index else room
-        ):
-            target.line(f"! {_counted(left, index > 0)}: --full", "yellow")
-            return target
-        _at_most(2, f"! {warning}", target, "yellow")
-        used += trial.count()
-    return target
+        if index and lines + trial.count() + 1 > room:
+            return lines + 1
+        lines += trial.count()
+    return lines + (1 if urgent < len(answer.warnings) else 0)
 
 
-def _counted(left: int, more: bool) -> str:
-    return f"{left}{' more' if more else ''} warning{'s' if left > 1 else ''}"
+def _warnings(answer: Budget, sheet: Sheet, room: int) -> None:
+    """Write the warnings that fit, in their order, and how many are left."""
+    left = len(answer.warnings)
+    for warning in answer.warnings:
+        trial = _like(sheet)
+        _at_most(2, f"! {warning}", trial)
+        if trial.count() + (1 if left > 1 else 0) > room:
+            more = " more" if left < len(answer.warnings) else ""
+            sheet.line(f"! {left}{more} warning{'s' if left > 1 else ''}: --full", "yellow")
+            return
+        _at_most(2, f"! {warning}", sheet, "yellow")
+        left -= 1
+        room -= trial.count()

@@ -5,8 +5,7 @@ from __future__ import annotations
 import math
 from typing import TYPE_CHECKING
 
-from xcol.flowpath.elements import Bed
-from xcol.report.labels import contribution_label, name_of
+from xcol.report.labels import column_label, contribution_label, name_of
 from xcol.report.sheet import Grid
 from xcol.units import significant
 
@@ -14,7 +13,6 @@ if TYPE_CHECKING:
     from xcol.answers.budget import Budget, ColumnBand, DetectorBudget, PeakBudget, Row
     from xcol.flowpath.hydraulics import PressureRange
 
-HALF = 2 * math.sqrt(2 * math.log(2))
 MOST_ROWS = 7  # of parts on the first screen; with more, the small ones fold
 SMALL_SHARE = 0.02
 _BAR = 10  # characters of a full share bar
@@ -26,7 +24,6 @@ def parts_grid(answer: Budget, at: DetectorBudget, peak: PeakBudget, most: int) 
     At most ``most`` lines (4 or more): with more than seven contributions those under 2 % fold into
     one line, and then the smallest, until the rest fits.
     """
-    square = (answer.instrument.flow * 1e9) ** 2
     inlets = {row.part.position: row.inlet for row in answer.pressure.rows}
     columns = {band.part.position: band for band in peak.columns}
     room = most - min(len(columns), 3)
@@ -37,24 +34,23 @@ def parts_grid(answer: Budget, at: DetectorBudget, peak: PeakBudget, most: int) 
     for part in answer.instrument.parts[: at.detector.position]:
         band = columns.get(part.position)
         if band is not None and (len(columns) <= 3 or band is peak.columns[0]):
-            lines.append(_column_line(band, peak, inlets[part.position], square))
+            lines.append(_column_line(answer, band, peak, inlets[part.position]))
         for row in peak.rows:
             if row.part is part and row not in folded:
                 inlet = inlets[part.position] if part.position not in shown else None
                 shown.add(part.position)
-                lines.append(_part_line(row, peak, inlet, square, largest))
+                lines.append(_part_line(answer, row, peak, inlet, largest))
     if folded:
         total = sum(row.variance for row in folded)
         share = total / peak.variance_extra if peak.variance_extra else 0.0
         label = f"{len(folded)} others, {percent(max(row.share_extra for row in folded))} or less each"
-        lines.append((label, three(total * square), percent(share), "", "", ""))
+        lines.append((label, three(answer.in_uL2(total)), percent(share), "", "", ""))
     headers = ("in flow order", "µL²", "of added", "", "N if gone", "inlet, bar")
     return Grid(headers, tuple(lines), (False, True, True, False, True, True))
 
 
-def peaks_grid(peaks: tuple[PeakBudget, ...], flow: float) -> Grid:
+def peaks_grid(answer: Budget, peaks: tuple[PeakBudget, ...]) -> Grid:
     """Return what is recorded of each peak."""
-    square = (flow * 1e9) ** 2
     headers: tuple[str, ...]
     rows: tuple[tuple[str, ...], ...]
     if all(peak.plates_column is None for peak in peaks):
@@ -62,8 +58,8 @@ def peaks_grid(peaks: tuple[PeakBudget, ...], flow: float) -> Grid:
         rows = tuple(
             (
                 peak.peak.name,
-                three(math.sqrt(peak.variance_total * square)),
-                three(peak.variance_total * square),
+                three(math.sqrt(answer.in_uL2(peak.variance_total))),
+                three(answer.in_uL2(peak.variance_total)),
                 three(peak.sigma),
                 three(4 * peak.sigma),
             )
@@ -78,8 +74,8 @@ def peaks_grid(peaks: tuple[PeakBudget, ...], flow: float) -> Grid:
             three(peak.retention / 60),
             f"{plates(peak.plates_observed)} of {plates(peak.plates_column)}",
             percent(peak.plates_kept),
-            three(HALF * peak.sigma),
-            three(HALF * math.sqrt(peak.variance_column)),
+            three(peak.width_half),
+            three(peak.width_half_column),
             percent(peak.resolution_kept),
         )
         for peak in peaks
@@ -89,13 +85,16 @@ def peaks_grid(peaks: tuple[PeakBudget, ...], flow: float) -> Grid:
 
 def detail_grid(answer: Budget, peak: PeakBudget, *, wide: bool) -> Grid:
     """Return every contribution to one peak; ``wide`` with side, s² and share of all."""
-    square = (answer.instrument.flow * 1e9) ** 2
     columns: list[tuple[str, bool, list[str]]] = [
         ("part", False, [contribution_label(row.part, row.contribution) for row in peak.rows]),
         ("held, µL", True, [_held(row) for row in peak.rows]),
         ("t*", True, [_or_dash(row.t_star) for row in peak.rows]),
-        ("µL²", True, [three(row.variance * square) for row in peak.rows]),
-        ("long-tube", True, [_or_dash(row.longtube_variance, square) for row in peak.rows]),
+        ("µL²", True, [three(answer.in_uL2(row.variance)) for row in peak.rows]),
+        (
+            "long-tube",
+            True,
+            [_or_dash(row.longtube_variance and answer.in_uL2(row.longtube_variance)) for row in peak.rows],
+        ),
         ("of added", True, [percent(row.share_extra) for row in peak.rows]),
         ("if gone", True, [percent(row.plates_kept_without) for row in peak.rows]),
     ]
@@ -167,18 +166,18 @@ def _held(row: Row) -> str:
     return significant(row.volume * 1e9) if row.side != "signal" else "-"
 
 
-def _or_dash(value: float | None, factor: float = 1.0) -> str:
-    return three(value * factor) if value is not None else "-"
+def _or_dash(value: float | None) -> str:
+    return three(value) if value is not None else "-"
 
 
-def _part_line(row: Row, peak: PeakBudget, inlet: PressureRange | None, square: float, most: float) -> tuple[str, ...]:
+def _part_line(answer: Budget, row: Row, peak: PeakBudget, inlet: PressureRange | None, most: float) -> tuple[str, ...]:
     gone = None
     if peak.plates_column is not None and row.plates_kept_without is not None:
         gone = peak.plates_column * row.plates_kept_without
     bar = "█" * round(_BAR * row.share_extra / most) if most else ""
     return (
         contribution_label(row.part, row.contribution),
-        three(row.variance * square),
+        three(answer.in_uL2(row.variance)),
         percent(row.share_extra),
         bar,
         plates(gone),
@@ -186,15 +185,13 @@ def _part_line(row: Row, peak: PeakBudget, inlet: PressureRange | None, square: 
     )
 
 
-def _column_line(band: ColumnBand, peak: PeakBudget, inlet: PressureRange | None, square: float) -> tuple[str, ...]:
+def _column_line(answer: Budget, band: ColumnBand, peak: PeakBudget, inlet: PressureRange | None) -> tuple[str, ...]:
     """Return a column's line; the first of more than three stands for all of them."""
     if len(peak.columns) > 3:
         label, own, number = f"[ {len(peak.columns)} columns ]", peak.variance_column, peak.plates_column
     else:
-        bed = next(element for element in band.part.elements if isinstance(element, Bed))
-        size = f"{bed.bore * 1e3:.3g} x {bed.length * 1e3:.3g} mm"
-        label, own, number = f"[ {band.part.name or 'column'} {size} ]", band.variance, band.plates
-    return (label, three(own * square), "own", "", plates(number), bars(inlet))
+        label, own, number = f"[ {column_label(band.part)} ]", band.variance, band.plates
+    return (label, three(answer.in_uL2(own)), "own", "", plates(number), bars(inlet))
 
 
 def _folded(peak: PeakBudget, room: int) -> list[Row]:

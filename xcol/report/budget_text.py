@@ -42,7 +42,7 @@ def full_report(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: She
             f"the record outside the column ({show(volume, VOLUME)} at the column's flow)",
             "bold",
         )
-        sheet.grid(peaks_grid(found.peaks, answer.instrument.flow), indent=2)
+        sheet.grid(peaks_grid(answer, found.peaks), indent=2)
         for one in found.peaks:
             sheet.line()
             sheet.line(_peak_line(one, answer), indent=2)
@@ -71,7 +71,7 @@ def budget_markdown(answer: Budget, at: DetectorBudget, peak: PeakBudget) -> str
     pieces += [line + "\n" for line in (*verdict(answer, at, peak), NO_RANGES)]
     for found in answer.detectors:
         pieces.append(f"## Detector {name_of(found.detector)}\n")
-        pieces.append(markdown(peaks_grid(found.peaks, answer.instrument.flow)))
+        pieces.append(markdown(peaks_grid(answer, found.peaks)))
         for one in found.peaks:
             pieces.append(f"### {_peak_line(one, answer)}\n")
             pieces.append(markdown(detail_grid(answer, one, wide=True)))
@@ -84,19 +84,18 @@ def budget_markdown(answer: Budget, at: DetectorBudget, peak: PeakBudget) -> str
 
 def verdict(answer: Budget, at: DetectorBudget, peak: PeakBudget) -> list[str]:
     """Return the answer in a sentence or two: plates recorded of the column's, at what."""
-    square = (answer.instrument.flow * 1e9) ** 2
-    extra = peak.variance_extra * square
+    extra = answer.in_uL2(peak.variance_extra)
     if peak.plates_column is None:
         sigma = math.sqrt(extra)
         return [
             f"Without a column, the {name_of(at.detector)} records a band of σ = {three(sigma)} µL "
             f"({three(extra)} µL²) or {three(peak.sigma)} s. "
-            "Compare moments: the width at half height of such a peak says little about its variance."
+            "Compare moments: its width at half height says little."
         ]
     lines = [
         f"{_which(peak)}: the {name_of(at.detector)} records {plates(peak.plates_observed)} of the "
         f"column's {plates(peak.plates_column)} plates, {percent(peak.plates_kept)}. The path adds "
-        f"{three(extra)} µL² to the column's own {three(peak.variance_column * square)}."
+        f"{three(extra)} µL² to the column's own {three(answer.in_uL2(peak.variance_column))}."
     ]
     others = [
         f"{name_of(found.detector)} {plates(same.plates_observed)} ({percent(same.plates_kept)})"
@@ -132,7 +131,6 @@ def heading(answer: Budget, sheet: Sheet) -> None:
 
 
 def _peak_line(peak: PeakBudget, answer: Budget) -> str:
-    square = (answer.instrument.flow * 1e9) ** 2
     points = f", {significant(peak.points)} data points across 4σ" if peak.points is not None else ""
     from_retention = ""
     if peak.peak.retention is not None:
@@ -140,8 +138,8 @@ def _peak_line(peak: PeakBudget, answer: Budget) -> str:
     k = f", k = {significant(peak.peak.k, 4)}{from_retention}" if peak.peak.k is not None else ""
     return (
         f'Peak "{peak.peak.name}"{k}, D = {significant(peak.peak.diffusion)} m²/s: '
-        f"{three(peak.variance_extra * square)} µL² added, "
-        f"{three(peak.variance_total * square)} µL² in all{points}"
+        f"{three(answer.in_uL2(peak.variance_extra))} µL² added, "
+        f"{three(answer.in_uL2(peak.variance_total))} µL² in all{points}"
     )
 
 
@@ -153,8 +151,8 @@ def _pressure_line(answer: Budget) -> str:
     text = total_pressure(answer)
     if checked:
         text += f" Inlet against limit: {checked}."
-    if without := unchecked(answer):
-        text += f" Limits not checked (none entered): {', '.join(without)}."
+    if answer.unchecked:
+        text += f" Limits not checked (none entered): {', '.join(map(name_of, answer.unchecked))}."
     return text
 
 
@@ -165,15 +163,6 @@ def total_pressure(answer: Budget) -> str:
         return "Pressure: not computed (viscosity or a drop is missing)."
     ends = f" ({span(total)} over the bed porosity)" if span(total) else ""
     return f"Pressure {bars(total)} bar{ends}."
-
-
-def unchecked(answer: Budget) -> list[str]:
-    """Return the names of columns and detectors without a limit."""
-    return [
-        name_of(row.part)
-        for row in answer.pressure.rows
-        if row.part.kind in ("column", "detector") and row.part.max_pressure is None
-    ]
 
 
 def _lists(answer: Budget) -> list[tuple[str, list[str]]]:

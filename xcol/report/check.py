@@ -23,37 +23,39 @@ from xcol.units import (
 )
 
 if TYPE_CHECKING:
-    from xcol.flowpath.model import Instrument, Reading
+    from xcol.answers.budget import Budget
+    from xcol.flowpath.model import Reading
 
 SCHEMA = "xcol.check/1"
 
 
-def check_text(instrument: Instrument, sheet: Sheet) -> None:
+def check_text(answer: Budget, sheet: Sheet) -> None:
     """Write the check as text."""
-    sheet.line(instrument.title or "Path file", "bold")
-    for title, grid in _grids(instrument):
+    sheet.line(answer.instrument.title or "Path file", "bold")
+    for title, grid in _grids(answer):
         sheet.line()
         sheet.line(title, "bold")
-        sheet.grid(grid, indent=2, flexible=2 if title == "Path, in order of flow" else 0)
-    for title, lines in _lists(instrument):
+        sheet.grid(grid, indent=2, flexible=grid.headers.index("name") if "name" in grid.headers else 0)
+    for title, lines in _lists(answer):
         sheet.line()
         sheet.line(title, "bold")
         for line in lines:
             sheet.line(f"- {line}", indent=2, hang=2)
 
 
-def check_markdown(instrument: Instrument) -> str:
+def check_markdown(answer: Budget) -> str:
     """Return the check in Markdown."""
-    pieces = [f"# {instrument.title or 'Path file'}\n"]
-    for title, grid in _grids(instrument):
+    pieces = [f"# {answer.instrument.title or 'Path file'}\n"]
+    for title, grid in _grids(answer):
         pieces += [f"## {title}\n", markdown(grid)]
-    for title, lines in _lists(instrument):
+    for title, lines in _lists(answer):
         pieces += [f"## {title}\n", "\n".join(f"- {line}" for line in lines) + "\n"]
     return "\n".join(pieces)
 
 
-def check_record(instrument: Instrument) -> dict[str, Any]:
+def check_record(answer: Budget) -> dict[str, Any]:
     """Return the check as one JSON object; values in SI units, with the unit beside each."""
+    instrument = answer.instrument
     return {
         "schema": SCHEMA,
         "version": __version__,
@@ -83,16 +85,16 @@ def check_record(instrument: Instrument) -> dict[str, Any]:
             for peak in instrument.peaks
         ],
         "assumed": [assumption.text for assumption in instrument.assumed],
-        "warnings": list(instrument.warnings),
+        "warnings": list(answer.warnings),
     }
 
 
-def check_csv(instrument: Instrument) -> str:
+def check_csv(answer: Budget) -> str:
     """Return one line for each value of each part, as CSV."""
     out = io.StringIO()
     writer = csv.writer(out, lineterminator="\n")
     writer.writerow(("position", "part", "name", "key", "value", "unit", "shown", "inch"))
-    for part in check_record(instrument)["parts"]:
+    for part in check_record(answer)["parts"]:
         for value in part["values"]:
             writer.writerow((part["position"], part["part"], part["name"], *value.values()))
     return out.getvalue()
@@ -108,7 +110,8 @@ def _value(reading: Reading) -> dict[str, Any]:
     }
 
 
-def _grids(instrument: Instrument) -> list[tuple[str, Grid]]:
+def _grids(answer: Budget) -> list[tuple[str, Grid]]:
+    instrument = answer.instrument
     conditions: list[tuple[str, float | None, Quantity]] = [
         ("flow", instrument.flow, FLOW),
         ("viscosity", instrument.viscosity, VISCOSITY),
@@ -158,10 +161,10 @@ def _grids(instrument: Instrument) -> list[tuple[str, Grid]]:
     ]
 
 
-def _lists(instrument: Instrument) -> list[tuple[str, list[str]]]:
+def _lists(answer: Budget) -> list[tuple[str, list[str]]]:
     found = [
-        ("Warnings", list(instrument.warnings)),
-        ("Assumed", [assumption.text for assumption in instrument.assumed]),
+        ("Warnings", list(answer.warnings)),
+        ("Assumed", [assumption.text for assumption in answer.instrument.assumed]),
     ]
     return [(title, lines) for title, lines in found if lines]
 

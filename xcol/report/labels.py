@@ -74,16 +74,23 @@ def show_reading(reading: Reading) -> str:
 
 def name_of(part: Part) -> str:
     """Return the part's name, or what it is: 'tube 400 x 0.254 mm'."""
-    if part.name:
-        return part.name
+    return part.name or f"{part.kind} {_sizes(part)}".strip()
+
+
+def column_label(part: Part) -> str:
+    """Return a column's name and sizes: 'column 2.1 x 100 mm'."""
+    return f"{part.name or part.kind} {_sizes(part)}".strip()
+
+
+def _sizes(part: Part) -> str:
     values = {reading.key: reading for reading in part.readings}
-    if "bore" in values and "length" in values:
-        pair = ("bore", "length") if part.kind == "column" else ("length", "bore")
-        first, second = (show_reading(values[key]) for key in pair)
-        if first.split()[1:] == second.split()[1:]:  # the trade writes a common unit once
-            first = first.split()[0]
-        return f"{part.kind} {first} x {second}"
-    return part.kind
+    if not {"bore", "length"} <= set(values):
+        return ""
+    pair = ("bore", "length") if part.kind == "column" else ("length", "bore")
+    first, second = (show_reading(values[key]) for key in pair)
+    if first.split()[1:] == second.split()[1:]:  # the trade writes a common unit once
+        first = first.split()[0]
+    return f"{first} x {second}"
 
 
 def contribution_label(part: Part, contribution: str) -> str:

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from xcol.catalogs import packings
+from xcol.catalogs import packings, usual_packing
 from xcol.filters.column import void_volume
 from xcol.flowpath.elements import Bed
 from xcol.flowpath.findings import Draft
@@ -25,19 +25,20 @@ def _column(draft: Draft) -> Elements:
     written = draft.written["column"]
     if "bore" not in draft.written and length_first(written):
         draft.warn(f'"{written}" has the length first: read as bore {bore * 1e3:g} mm, length {length * 1e3:g} mm')
-    usual = packings()["fully porous"]
+    usual = usual_packing()
     void, total = draft.number("void_volume"), draft.number("total_porosity")
     if void is not None and total is not None:
         draft.fault("total_porosity", "void_volume or total_porosity, not both", "leave one out")
     if void is None:
         if total is None:
             total = usual.total_porosity
-            low, high = usual.total_range
+            spans = ", ".join(
+                f"{row.name} {row.total_range[0]:g} to {row.total_range[1]:g}" for row in packings().values()
+            )
             draft.assume(
                 f"total porosity {total:g}",
-                f"total porosity {total:g} (fully porous {low:g} to {high:g}, core-shell 0.50 to "
-                f"0.58): the void volume, and with it all of the column's σ, hangs on it; "
-                f"{usual.source}",
+                f"total porosity {total:g} ({spans}): the void volume, and with it all of the column's σ, hangs "
+                f"on it; {usual.source}",
             )
         void = float(void_volume(bore, length, total))
     bed = draft.number("interstitial_porosity")

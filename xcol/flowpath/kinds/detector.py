@@ -49,7 +49,7 @@ def _detector(draft: Draft) -> Elements:
     period = 1 / rate if rate else cycle
     if period:
         draft.assume("averaging between points", "the signal is averaged over the whole time between points")
-        elements.append(Electronics(Boxcar(period), "rate"))
+        elements.append(Electronics(Boxcar(period), "rate", period))
     return tuple(elements)
 
 

@@ -125,7 +125,7 @@ PARTS = (
             "Taylor, Proc. R. Soc. A 219 (1953) 186; Golay 1958 (long-tube limit), from memory",
         ),
         _tube,
-        ("tubing", "capillary", "t*", "tstar", "long-tube", "longtube", "taylor", "aris", "bore"),
+        ("tubing", "capillary", "diffusion", "d", "t*", "tstar", "long-tube", "longtube", "taylor", "aris", "bore"),
     ),
     Topic(
         "run",

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 
+from xcol.catalogs import usual_packing
 from xcol.flowpath.hydraulics import bed_drop, reynolds_number, tube_drop
 from xcol.report.topics.topic import Topic
 from xcol.units import significant
@@ -13,11 +14,14 @@ _FLOW = 1e-6 / 60
 
 def _pressure() -> str:
     tube = float(tube_drop(_FLOW, 2.0, 0.3e-3, 0.89e-3)) / 1e5
-    bed = [float(bed_drop(_FLOW, 0.15, 4.6e-3, 0.9e-3, 5e-6, e)) / 1e5 for e in (0.40, 0.42, 0.36)]
+    usual = usual_packing()
+    tight, loose = usual.interstitial_range
+    porosities = (usual.interstitial, loose, tight)
+    bed = [float(bed_drop(_FLOW, 0.15, 4.6e-3, 0.9e-3, 5e-6, e)) / 1e5 for e in porosities]
     at, low, high = (significant(value) for value in bed)
     return (
         f"water at 1 mL/min through 2 m x 0.3 mm: {significant(tube)} bar; 0.9 mPa s through 4.6 x 150 "
-        f"mm, 5 µm: {at} bar ({low} to {high} for a bed of 0.42 to 0.36)"
+        f"mm, 5 µm: {at} bar ({low} to {high} for a bed of {loose:g} to {tight:g})"
     )
 
 
@@ -61,7 +65,7 @@ QUANTITIES = (
         "Pressure",
         "A part's inlet carries its own drop and all drops downstream, to atmosphere. Tubes by "
         "Hagen-Poiseuille, beds by Kozeny-Carman with the interstitial porosity, which is rarely known: "
-        "the range is that of 0.36 to 0.42. A measured drop, or pump_pressure (the columns then take "
+        "the range is that of usual beds. A measured drop, or pump_pressure (the columns then take "
         "what the rest does not explain), is better. Cells, mixers and the volumes of fittings have no drop unless it "
         "is entered. A limit that was not entered is not checked.",
         (
