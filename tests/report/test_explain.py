@@ -58,3 +58,16 @@ def test_forms(ascii_only):
     assert len(json.loads(json.dumps(topics_record(TOPICS)))["topics"]) == len(TOPICS)
     assert len(list(csv.reader(io.StringIO(topics_csv(TOPICS))))) == len(TOPICS) + 1
     assert topics_markdown(TOPICS).count("# ") >= len(TOPICS)
+
+
+def test_a_kind_of_part_shows_its_keys_and_which_are_still_to_come():
+    sheet = Sheet()
+    topics_text(find("detector"), sheet, in_full=True)
+    text = sheet.text()
+    for key in ("time_constant", "rise_time", "rate", "max_pressure"):
+        assert key in text
+    (topic,) = topics_record(find("detector"))["topics"]
+    computed = {entry["key"]: entry["computed"] for entry in topic["keys"]}
+    assert computed["rate"] is True
+    assert computed["response"] is False
+    assert topics_record(find("pressure"))["topics"][0]["keys"] == []

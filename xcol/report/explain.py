@@ -8,7 +8,9 @@ from typing import TYPE_CHECKING, Any
 
 from xcol import __version__
 from xcol.errors import Fault, InputError, Place
-from xcol.flowpath.keys import nearest
+from xcol.flowpath.keys import Key, Later, nearest
+from xcol.flowpath.kinds import KINDS
+from xcol.report.sheet import Grid
 from xcol.report.topics import TOPICS, Topic
 from xcol.units import quote
 
@@ -60,9 +62,14 @@ def topics_text(topics: tuple[Topic, ...], sheet: Sheet, *, in_full: bool) -> No
         for line in topic.formula:
             sheet.line(line, indent=4, hang=2)
         sheet.line()
-        sheet.line(f"Holds for: {topic.holds}", hang=2)
+        sheet.line(f"Range: {topic.holds}", hang=2)
         sheet.line(f"Example: {topic.worked()}", hang=2)
         sheet.line(f"Sources: {'; '.join(topic.sources)}", hang=2)
+        if kind := KINDS.get(topic.name):
+            sheet.line()
+            sheet.line(f"In a path file: {kind.example}, {kind.meaning}. Its keys:", hang=2)
+            rows = tuple((key.name, key.meaning, _state(key)) for key in kind.all_keys)
+            sheet.grid(Grid(("key", "", ""), rows, (False, False, False)), indent=4, flexible=1)
 
 
 def topics_record(topics: tuple[Topic, ...]) -> dict[str, Any]:
@@ -79,10 +86,21 @@ def topics_record(topics: tuple[Topic, ...]) -> dict[str, Any]:
                 "holds": topic.holds,
                 "example": topic.worked(),
                 "sources": list(topic.sources),
+                "keys": _keys(topic),
             }
             for topic in topics
         ],
     }
+
+
+def _keys(topic: Topic) -> list[dict[str, Any]]:
+    kind = KINDS.get(topic.name)
+    keys = kind.all_keys if kind else ()
+    return [{"key": key.name, "meaning": key.meaning, "computed": not isinstance(key.read, Later)} for key in keys]
+
+
+def _state(key: Key) -> str:
+    return "not yet" if isinstance(key.read, Later) else ""
 
 
 def topics_csv(topics: tuple[Topic, ...]) -> str:
@@ -103,6 +121,6 @@ def topics_markdown(topics: tuple[Topic, ...]) -> str:
     for topic in topics:
         pieces += [f"# {topic.title} ({topic.name})\n", topic.model + "\n"]
         pieces.append("\n".join(f"    {line}" for line in topic.formula) + "\n")
-        pieces += [f"Holds for: {topic.holds}\n", f"Example: {topic.worked()}\n"]
+        pieces += [f"Range: {topic.holds}\n", f"Example: {topic.worked()}\n"]
         pieces.append(f"Sources: {'; '.join(topic.sources)}\n")
     return "\n".join(pieces)
