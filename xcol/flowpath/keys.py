@@ -63,7 +63,8 @@ class Measure:
         if isinstance(raw, int) and abs(raw) > 10**18:
             raise UnitError(described(raw), f"{self.quantity.name} with its unit", "a smaller number")
         if isinstance(raw, int | float) and not isinstance(raw, bool) and self.quantity is not RATIO:
-            raise missing_unit(raw, self.quantity, self._sensible(float(raw)))
+            likely = [unit for unit in self._sensible(float(raw)) if unit != "thou"]
+            raise missing_unit(raw, self.quantity, likely)
         try:
             value = parse(_text_or_number(raw, self.quantity), self.quantity, fraction=self.fraction)
         except UnitError as error:
@@ -99,7 +100,8 @@ class Measure:
         for unit in self.quantity.likely:
             number = convert(value, unit, self.quantity)
             if any(math.isclose(number, known, rel_tol=1e-6) for known in typed):
-                options = [f'"{number:g} {other}"'.replace(' "', '"') for other in self._sensible(number)]
+                units = [u for u in self._sensible(number) if u != "thou" or unit == "in"]
+                options = [f'"{number:g} {other}"'.replace(' "', '"') for other in units]
                 return f"did you mean {' or '.join(options)}?" if options else "a value within that range"
         return "a value within that range"
 

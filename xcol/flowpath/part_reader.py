@@ -166,7 +166,7 @@ def _read_size(raw: object, kind: Kind, draft: Draft) -> None:
         return
     if error is not None:
         suggestion = error.suggestion
-        if len(kind.ways) > 1:
+        if len(kind.ways) > 1 and not re.search(r"[x×*]\s*[\d.]", text):  # one size where two belong
             others = " or ".join(" and ".join(way) for way in kind.ways)
             suggestion += f"; or a name here, and the size as {others}"
         if not kind.ways:  # a size is not needed, so this may be a name
