@@ -35,7 +35,7 @@ def budget(
     file: FileArgument,
     peak: Annotated[str | None, typer.Option("--peak", help="Peak of the first screen, by name or k.")] = None,
     detector: Annotated[str | None, typer.Option("--detector", help="Detector of the first screen, by name.")] = None,
-    full: Annotated[bool, typer.Option("--full", help="Everything, not the first screen.")] = False,
+    full: Annotated[bool, typer.Option("--full", help="Everything, not the first screen (of text).")] = False,
     form: FormatOption = Format.TEXT,
     output: OutputOption = None,
     force: ForceOption = False,

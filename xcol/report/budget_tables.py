@@ -187,11 +187,10 @@ def _part_line(answer: Budget, row: Row, peak: PeakBudget, inlet: PressureRange 
 
 def _column_line(answer: Budget, band: ColumnBand, peak: PeakBudget, inlet: PressureRange | None) -> tuple[str, ...]:
     """Return a column's line; the first of more than three stands for all of them."""
+    name, own, number = column_label(band.part), band.variance, band.plates
     if len(peak.columns) > 3:
-        label, own, number = f"[ {len(peak.columns)} columns ]", peak.variance_column, peak.plates_column
-    else:
-        label, own, number = f"[ {column_label(band.part)} ]", band.variance, band.plates
-    return (label, three(answer.in_uL2(own)), "own", "", plates(number), bars(inlet))
+        name, own, number = f"{len(peak.columns)} columns", peak.variance_column, peak.plates_column or 0.0
+    return (f"[ {name} ]", three(answer.in_uL2(own)), "own", f"N {plates(number)}", "", bars(inlet))
 
 
 def _folded(peak: PeakBudget, room: int) -> list[Row]:

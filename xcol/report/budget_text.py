@@ -92,10 +92,11 @@ def verdict(answer: Budget, at: DetectorBudget, peak: PeakBudget) -> list[str]:
             f"({three(extra)} µL²) or {three(peak.sigma)} s. "
             "Compare moments: its width at half height says little."
         ]
+    whose = "column's" if len(peak.columns) == 1 else "columns'"
     lines = [
-        f"{_which(peak)}: the {name_of(at.detector)} records {plates(peak.plates_observed)} of the "
-        f"column's {plates(peak.plates_column)} plates, {percent(peak.plates_kept)}. The path adds "
-        f"{three(extra)} µL² to the column's own {three(answer.in_uL2(peak.variance_column))}."
+        f"{_which(peak)}: the {name_of(at.detector)} records {plates(peak.plates_observed)} of the {whose} "
+        f"{plates(peak.plates_column)} plates, {percent(peak.plates_kept)}. The path adds {three(extra)} µL² to the "
+        f"{whose} own {three(answer.in_uL2(peak.variance_column))}."
     ]
     others = [
         f"{name_of(found.detector)} {plates(same.plates_observed)} ({percent(same.plates_kept)})"
