@@ -109,7 +109,7 @@ def _peaks_that_fit(peaks: tuple[PeakBudget, ...], chosen: PeakBudget, room: int
         return peaks
     others = sorted((p for p in peaks if p is not chosen), key=lambda p: p.plates_kept or 0.0)
     kept = [chosen, *others[: max(room - 2, 0)]]  # one line says how many are left out
-    return tuple(peak for peak in peaks if peak in kept)
+    return tuple(peak for peak in peaks if any(peak is one for one in kept))
 
 
 def _lines_for_warnings(answer: Budget, sheet: Sheet, room: int) -> int:

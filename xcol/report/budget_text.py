@@ -51,7 +51,7 @@ def full_report(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: She
     sheet.line("Pressure", "bold")
     sheet.grid(pressure_grid(answer), indent=2)
     sheet.line(_pressure_line(answer), hang=2)
-    for title, lines in _lists(answer):
+    for title, lines in titled_lists(answer):
         sheet.line()
         sheet.line(title, "bold")
         for line in lines:
@@ -76,7 +76,7 @@ def budget_markdown(answer: Budget, at: DetectorBudget, peak: PeakBudget) -> str
             pieces.append(f"### {_peak_line(one, answer)}\n")
             pieces.append(markdown(detail_grid(answer, one, wide=True)))
     pieces += ["## Pressure\n", markdown(pressure_grid(answer)), _pressure_line(answer) + "\n"]
-    for title, lines in _lists(answer):
+    for title, lines in titled_lists(answer):
         pieces.append(f"## {title}\n")
         pieces.append("\n".join(f"- {line}" for line in lines) + "\n")
     return "\n".join(pieces)
@@ -166,8 +166,8 @@ def total_pressure(answer: Budget) -> str:
     return f"Pressure {bars(total)} bar{ends}."
 
 
-def _lists(answer: Budget) -> list[tuple[str, list[str]]]:
-    """Return what is listed at the end, each with its title."""
+def titled_lists(answer: Budget) -> list[tuple[str, list[str]]]:
+    """Return what is listed at the end of a report, each list with its title."""
     found = [
         ("Warnings", list(answer.warnings)),
         ("Assumed", [assumption.text for assumption in answer.instrument.assumed]),

@@ -7,6 +7,7 @@ import io
 from typing import TYPE_CHECKING, Any
 
 from xcol import __version__
+from xcol.report.budget_text import titled_lists
 from xcol.report.labels import show, show_reading
 from xcol.report.sheet import Grid, Sheet, markdown
 from xcol.units import (
@@ -36,7 +37,7 @@ def check_text(answer: Budget, sheet: Sheet) -> None:
         sheet.line()
         sheet.line(title, "bold")
         sheet.grid(grid, indent=2, flexible=grid.headers.index("name") if "name" in grid.headers else 0)
-    for title, lines in _lists(answer):
+    for title, lines in titled_lists(answer):
         sheet.line()
         sheet.line(title, "bold")
         for line in lines:
@@ -48,7 +49,7 @@ def check_markdown(answer: Budget) -> str:
     pieces = [f"# {answer.instrument.title or 'Path file'}\n"]
     for title, grid in _grids(answer):
         pieces += [f"## {title}\n", markdown(grid)]
-    for title, lines in _lists(answer):
+    for title, lines in titled_lists(answer):
         pieces += [f"## {title}\n", "\n".join(f"- {line}" for line in lines) + "\n"]
     return "\n".join(pieces)
 
@@ -159,14 +160,6 @@ def _grids(answer: Budget) -> list[tuple[str, Grid]]:
             ),
         ),
     ]
-
-
-def _lists(answer: Budget) -> list[tuple[str, list[str]]]:
-    found = [
-        ("Warnings", list(answer.warnings)),
-        ("Assumed", [assumption.text for assumption in answer.instrument.assumed]),
-    ]
-    return [(title, lines) for title, lines in found if lines]
 
 
 def _inch(reading: Reading) -> str:
