@@ -147,6 +147,9 @@ def test_a_faulty_file_writes_nothing(run, tmp_path, plain):
 def test_output_to_a_dash_is_standard_output(run, tmp_path, plain):
     assert b"in flow order" in run("budget", "-", "--output", "-", stdin=plain).stdout
     assert not list(tmp_path.iterdir())
+    done = run("budget", "-", "--output", "-", stdin=plain, PYTHONIOENCODING="ascii")
+    assert b"uL2" in done.stdout
+    assert b"?" not in done.stdout
 
 
 @pytest.mark.parametrize("encoding", ["ascii", "latin-1", "cp1252", "cp437"])

@@ -288,6 +288,13 @@ def test_a_huge_number_in_any_notation_is_a_fault(faults_of):
     assert fault.place.key == "flow"
 
 
+@pytest.mark.parametrize("key", ["filter", "stages", "cell", "rate", "name", "note"])
+def test_a_huge_number_for_any_key_is_a_fault(key, faults_of):
+    detector = '{ detector = "UV", time_constant = "1 s", ' + f"{key} = 0x{'f' * 5000} }}"
+    faults = faults_of(text_of([*GOOD[:3], detector]))
+    assert {fault.place.key for fault in faults} == {key}
+
+
 @pytest.mark.parametrize(
     ("part", "word"),
     [

@@ -6,20 +6,13 @@ from typing import TYPE_CHECKING, Annotated
 
 import typer
 
-from xcol.cli.output import (
-    FileArgument,
-    ForceOption,
-    Format,
-    FormatOption,
-    OutputOption,
-    as_json,
-    emit,
-    new_sheet,
-)
-from xcol.errors import Fault, InputError, Place
+from xcol.cli.output import FileArgument, ForceOption, Format, FormatOption, Forms, OutputOption, deliver
+from xcol.errors import InputError, Place, refusal
+from xcol.units import quote
 
 if TYPE_CHECKING:
     from xcol.answers.budget import Budget, DetectorBudget, PeakBudget
+    from xcol.report.sheet import Sheet
 
 EXAMPLE = """
 Example, a path file of a few lines and the first screen of its budget:
@@ -47,34 +40,24 @@ def budget(
     answer = answer_of(read(file))
     at = _chosen_detector(answer, detector, file)
     chosen = _chosen_peak(at, peak, file)
-    emit(_render(answer, at, chosen, full, form, output), output, force, file)
+    deliver(_forms(answer, at, chosen, full), form, output, force, file)
 
 
-def _render(
-    answer: Budget,
-    at: DetectorBudget,
-    chosen: PeakBudget,
-    full: bool,
-    form: Format,
-    output: str | None,
-) -> str:
-    if form is Format.JSON:
-        from xcol.report.budget_record import budget_record
+def _forms(answer: Budget, at: DetectorBudget, chosen: PeakBudget, full: bool) -> Forms:
+    from xcol.report.budget_record import budget_csv, budget_record
 
-        return as_json(budget_record(answer), output)
-    if form is Format.CSV:
-        from xcol.report.budget_record import budget_csv
+    def markdown() -> str:
+        from xcol.report.budget_text import budget_markdown
 
-        return budget_csv(answer)
-    from xcol.report.budget_text import budget_markdown, full_report
-
-    if form is Format.MARKDOWN:
         return budget_markdown(answer, at, chosen)
-    from xcol.report.budget_screen import first_screen
 
-    sheet = new_sheet(output)
-    (full_report if full else first_screen)(answer, at, chosen, sheet)
-    return sheet.text()
+    def text(sheet: Sheet) -> None:
+        from xcol.report.budget_screen import first_screen
+        from xcol.report.budget_text import full_report
+
+        (full_report if full else first_screen)(answer, at, chosen, sheet)
+
+    return Forms(lambda: budget_record(answer), lambda: budget_csv(answer), markdown, text)
 
 
 def _chosen_detector(answer: Budget, name: str | None, file: str) -> DetectorBudget:
@@ -111,5 +94,4 @@ def _chosen_peak(at: DetectorBudget, name: str | None, file: str) -> PeakBudget:
 
 
 def _unknown(file: str, option: str, read: str, expected: str) -> InputError:
-    fault = Fault(Place(file, key=option), f'"{read}"', expected, f"{option} with one of these names")
-    return InputError((fault,))
+    return refusal(Place(file, key=option), quote(read), expected, f"{option} with one of these names")

@@ -2,16 +2,7 @@
 
 from __future__ import annotations
 
-from xcol.cli.output import (
-    FileArgument,
-    ForceOption,
-    Format,
-    FormatOption,
-    OutputOption,
-    as_json,
-    emit,
-    new_sheet,
-)
+from xcol.cli.output import FileArgument, ForceOption, Format, FormatOption, Forms, OutputOption, deliver
 
 EXAMPLE = """
 Example, what was understood of a path file, and everything that looks like a slip:
@@ -34,14 +25,10 @@ def check(
 
     # what only the computation shows is a slip as well: a limit, a pump pressure, too few points
     answer = budget(read(file))
-    if form is Format.JSON:
-        text = as_json(check_record(answer), output)
-    elif form is Format.CSV:
-        text = check_csv(answer)
-    elif form is Format.MARKDOWN:
-        text = check_markdown(answer)
-    else:
-        sheet = new_sheet(output)
-        check_text(answer, sheet)
-        text = sheet.text()
-    emit(text, output, force, file)
+    forms = Forms(
+        record=lambda: check_record(answer),
+        csv=lambda: check_csv(answer),
+        markdown=lambda: check_markdown(answer),
+        text=lambda sheet: check_text(answer, sheet),
+    )
+    deliver(forms, form, output, force, file)

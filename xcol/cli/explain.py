@@ -6,15 +6,7 @@ from typing import Annotated
 
 import typer
 
-from xcol.cli.output import (
-    ForceOption,
-    Format,
-    FormatOption,
-    OutputOption,
-    as_json,
-    emit,
-    new_sheet,
-)
+from xcol.cli.output import ForceOption, Format, FormatOption, Forms, OutputOption, deliver
 
 EXAMPLE = """
 Example, the model behind a tube's line; without a topic, the list of topics:
@@ -41,14 +33,10 @@ def explain(
     )
 
     topics = find(topic)
-    if form is Format.JSON:
-        text = as_json(topics_record(topics), output)
-    elif form is Format.CSV:
-        text = topics_csv(topics)
-    elif form is Format.MARKDOWN:
-        text = topics_markdown(topics)
-    else:
-        sheet = new_sheet(output)
-        topics_text(topics, sheet, in_full=topic is not None)
-        text = sheet.text()
-    emit(text, output, force)
+    forms = Forms(
+        record=lambda: topics_record(topics),
+        csv=lambda: topics_csv(topics),
+        markdown=lambda: topics_markdown(topics),
+        text=lambda sheet: topics_text(topics, sheet, in_full=topic is not None),
+    )
+    deliver(forms, form, output, force)

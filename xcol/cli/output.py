@@ -6,6 +6,8 @@ import os
 import shutil
 import sys
 import tempfile
+from collections.abc import Callable
+from dataclasses import dataclass
 from enum import StrEnum
 from pathlib import Path
 from typing import TYPE_CHECKING, Annotated, TextIO
@@ -44,7 +46,40 @@ def can_show_symbols(stream: TextIO) -> bool:
     return True
 
 
-def new_sheet(output: str | None) -> Sheet:
+@dataclass(frozen=True)
+class Forms:
+    """How one answer is made into each form; only the one that is asked for is called."""
+
+    record: Callable[[], object]
+    csv: Callable[[], str]
+    markdown: Callable[[], str]
+    text: Callable[[Sheet], None]
+
+
+def deliver(forms: Forms, form: Format, output: str | None, force: bool, source: str = "-") -> None:
+    """Write an answer in this form to standard output (None or "-"), or whole to a file.
+
+    Raises ``InputError`` where the file exists (without ``force``), is the path file ``source``
+    itself, or cannot be written.
+    """
+    target = None if output == "-" else output
+    if form is Format.JSON:
+        result = _json(forms.record(), target)
+    elif form is Format.CSV:
+        result = forms.csv()
+    elif form is Format.MARKDOWN:
+        result = forms.markdown()
+    else:
+        sheet = _new_sheet(target)
+        forms.text(sheet)
+        result = sheet.text()
+    if target is None:
+        _print(result)
+    else:
+        _write(result, target, force, source)
+
+
+def _new_sheet(output: str | None) -> Sheet:
     """Return the sheet for a text report: width, colour and symbols as the destination allows."""
     from xcol.report.sheet import Sheet
 
@@ -56,7 +91,7 @@ def new_sheet(output: str | None) -> Sheet:
     return Sheet(width=width, ascii_only=not can_show_symbols(sys.stdout), color=color)
 
 
-def as_json(record: object, output: str | None) -> str:
+def _json(record: object, output: str | None) -> str:
     """Return a record as JSON text, with escapes where the terminal has no symbols."""
     import json
 
@@ -64,20 +99,16 @@ def as_json(record: object, output: str | None) -> str:
     return json.dumps(record, indent=2, ensure_ascii=plain, allow_nan=False) + "\n"
 
 
-def emit(text: str, output: str | None, force: bool, source: str = "-") -> None:
-    """Write a result to standard output, or whole to a file.
+def _print(text: str) -> None:
+    encoding = sys.stdout.encoding or "ascii"
+    try:
+        sys.stdout.write(text.encode(encoding, "replace").decode(encoding))
+        sys.stdout.flush()
+    except BrokenPipeError:  # the reader has what it wanted, or has gone: no error of ours
+        silence_output()
 
-    Raises ``InputError`` where the file exists (without ``force``), is the path file itself, or
-    cannot be written.
-    """
-    if output is None or output == "-":
-        encoding = sys.stdout.encoding or "ascii"
-        try:
-            sys.stdout.write(text.encode(encoding, "replace").decode(encoding))
-            sys.stdout.flush()
-        except BrokenPipeError:  # the reader has what it wanted, or has gone: no error of ours
-            silence_output()
-        return
+
+def _write(text: str, output: str, force: bool, source: str) -> None:
     target = Path(output)
     place = Place(file=output, key="--output")
     if target.is_dir():

@@ -60,7 +60,7 @@ class Measure:
 
     def __call__(self, raw: object) -> float:
         """Return the value in SI units."""
-        if isinstance(raw, int) and abs(raw) > 10**18:
+        if _is_huge(raw):
             raise UnitError(described(raw), f"{self.quantity.name} with its unit", "a smaller number")
         if isinstance(raw, int | float) and not isinstance(raw, bool) and self.quantity is not RATIO:
             likely = [unit for unit in self._sensible(float(raw)) if unit != "thou"]
@@ -81,15 +81,11 @@ class Measure:
             return
         unit = self.quantity.likely[0]
         span = f"{write(self.low, unit, self.quantity)} to {write(self.high, unit, self.quantity)}"
-        shown = (
-            described(raw)
-            if self.quantity is RATIO
-            else (f"{described(raw)}, which is {write(value, unit, self.quantity)}")
-        )
+        in_unit = "" if self.quantity is RATIO else f", which is {write(value, unit, self.quantity)}"
         raise UnitError(
-            shown,
+            described(raw) + in_unit,
             f"{self.quantity.name} of {span}" + (", or 0" if self.zero else ""),
-            self._other_unit(value, str(raw)),
+            self._other_unit(value, as_typed(raw)),
         )
 
     def _other_unit(self, value: float, text: str) -> str:
@@ -176,7 +172,7 @@ class Choice:
 
     def __call__(self, raw: object) -> str:
         """Return the word."""
-        word = str(raw).strip().lower().replace("_", "-")
+        word = as_typed(raw).strip().lower().replace("_", "-")
         if word in self.options:
             return word
         listed = ", ".join(f'"{option}"' for option in self.options)
@@ -233,9 +229,14 @@ def described(raw: object) -> str:
         return "a list"
     if isinstance(raw, dict):
         return "a table"
-    if isinstance(raw, int) and abs(raw) > 10**18:
+    if _is_huge(raw):
         return "a whole number of very many digits"
     return str(raw)[:60]
+
+
+def _is_huge(raw: object) -> bool:
+    """Whether this is a whole number that Python may refuse to write, and float to hold."""
+    return isinstance(raw, int) and abs(raw) > 10**18
 
 
 def as_typed(raw: object) -> str:
