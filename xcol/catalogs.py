@@ -5,6 +5,7 @@ Every row has a ``source``. An invalid row is named by file and number.
 
 from __future__ import annotations
 
+import tomllib
 from dataclasses import dataclass
 from functools import cache
 from pathlib import Path
@@ -83,8 +84,6 @@ def tubing() -> tuple[Tubing, ...]:
 
 
 def _rows(file: str, table: str) -> list[tuple[Path, int, dict[str, Any]]]:
-    import tomllib  # noqa: PLC0415
-
     path = folder() / file
     try:
         data = tomllib.loads(path.read_text(encoding="utf-8"))

@@ -193,11 +193,11 @@ def split(text: str, example: str = "0.25 mm") -> tuple[float, str]:
         raise UnitError(shown, "a number and a unit", f'a decimal number first, as in "{example}"')
     number, unit = match[0], stripped[match.end() :]
     if re.fullmatch(r"[+-]?[1-9]\d{0,2},\d{3}", number):
-        point, plain = number.replace(",", "."), number.replace(",", "")
+        point, none = number.replace(",", "."), number.replace(",", "")
         raise UnitError(
             shown,
             "a number that reads one way only (a comma before three digits may mean two things)",
-            f'"{point}{unit}" or "{plain}{unit}"',
+            f'"{point}{unit}" or "{none}{unit}"',
         )
     value = float(number.replace(",", "."))
     if not math.isfinite(value):
@@ -346,9 +346,13 @@ def _wrong_kind(text: str, unit: str, kind: str, quantity: Quantity) -> UnitErro
     """Return the error for a unit of another kind of quantity."""
     return UnitError(
         f"{quote(text)}, and {unit} is {kind}" if unit else quote(text),
-        f"{quantity.name}, for instance {'' if quantity is RATIO else 'in '}{_options(quantity)}",
+        _expected(quantity),
         _in_options(quantity),
     )
+
+
+def _expected(quantity: Quantity) -> str:
+    return f"{quantity.name}, for instance {'' if quantity is RATIO else 'in '}{_options(quantity)}"
 
 
 def _in_options(quantity: Quantity) -> str:
@@ -370,6 +374,6 @@ def _unknown(text: str, unit: str, quantity: Quantity, near: str = "") -> UnitEr
         read += f", in which there is the character {unicodedata.name(odd[0], 'without a name').lower()}"
     return UnitError(
         read,
-        f"{quantity.name}, for instance {'' if quantity is RATIO else 'in '}{_options(quantity)}",
+        _expected(quantity),
         f'"{near}"' if near else _in_options(quantity),
     )

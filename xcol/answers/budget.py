@@ -209,7 +209,7 @@ def _own_bands(instrument: Instrument, chain: tuple[Link, ...], peak: Peak) -> t
 
     scale = 1.0
     if peak.plates is not None:
-        every = [column_of(e) for part in instrument.parts for e in part.elements if isinstance(e, Bed)]
+        every = [column_of(bed) for bed in instrument.beds]
         time, variance = sum(float(c.delay()) for c in every), sum(float(c.variance()) for c in every)
         scale = time**2 / peak.plates / variance
     passed = [(link.part, column_of(link.element)) for link in chain if isinstance(link.element, Bed)]

@@ -5,8 +5,9 @@ from __future__ import annotations
 from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
 
-from xcol.flowpath.elements import Bed, Bore
+from xcol.flowpath.elements import Bore
 from xcol.flowpath.hydraulics import PressureRange, exactly, reynolds_number
+from xcol.flowpath.model import beds_of
 from xcol.units import PRESSURE, significant, write
 
 if TYPE_CHECKING:
@@ -144,7 +145,7 @@ def _weight(part: Part, drop: PressureRange | None) -> float:
     """Return a column's weight in sharing a drop: its computed one, or length over bore squared."""
     if drop is not None:
         return drop.value
-    return sum(bed.length / bed.bore**2 for bed in part.elements if isinstance(bed, Bed))
+    return sum(bed.length / bed.bore**2 for bed in beds_of([part]))
 
 
 def _compare_with_beds(rest: float, beds: list[PressureRange], warnings: list[str]) -> None:

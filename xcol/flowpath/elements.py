@@ -68,18 +68,24 @@ class WithoutDrop:
         return exactly(0.0)
 
 
-@dataclass(frozen=True)
-class Injected(WithoutDrop):
-    """The injected ``volume`` [m³], as a plug."""
+class MixingVolume(WithoutDrop):
+    """A volume in which the stream is mixed anew; what holds none mixes nothing."""
 
     volume: float
-    contribution: str = "injection"
-    of_signal: bool = False
 
     @property
     def remixes(self) -> bool:
         """Whether there is any volume to mix the stream in."""
         return self.volume > 0
+
+
+@dataclass(frozen=True)
+class Injected(MixingVolume):
+    """The injected ``volume`` [m³], as a plug."""
+
+    volume: float
+    contribution: str = "injection"
+    of_signal: bool = False
 
     def filter(self, stream: Stream, *, read_here: bool) -> Filter:
         """Return the plug."""
@@ -121,7 +127,7 @@ class Bore:
 
 
 @dataclass(frozen=True)
-class Mixed(WithoutDrop):
+class Mixed(MixingVolume):
     """A mixing ``volume`` [m³] of this many ``tanks`` in series: a fitting, a mixer."""
 
     volume: float
@@ -129,29 +135,19 @@ class Mixed(WithoutDrop):
     contribution: str
     of_signal: bool = False
 
-    @property
-    def remixes(self) -> bool:
-        """Whether there is any volume to mix the stream in."""
-        return self.volume > 0
-
     def filter(self, stream: Stream, *, read_here: bool) -> Filter:
         """Return the tanks."""
         return TanksInSeries(self.volume, stream.flow, self.tanks)
 
 
 @dataclass(frozen=True)
-class Cell(WithoutDrop):
+class Cell(MixingVolume):
     """A detector cell of this ``volume`` [m³]: a plug, or ``tanks`` in series where given."""
 
     volume: float
     tanks: float | None = None
     contribution: str = "cell"
     of_signal: bool = False
-
-    @property
-    def remixes(self) -> bool:
-        """Whether there is any volume to mix the stream in."""
-        return self.volume > 0
 
     def filter(self, stream: Stream, *, read_here: bool) -> Filter:
         """Return the plug (its whole volume is passed on the way to a later detector) or tanks."""

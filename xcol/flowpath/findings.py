@@ -83,6 +83,11 @@ class Draft:
             return f"peak {self.position}{name}"
         return f"part {self.position} ({self.kind}{name})" if self.kind else f"part {self.position}"
 
+    @property
+    def has_fault(self) -> bool:
+        """Whether a fault was found in it: a key that is missed may be one that was not understood."""
+        return any(fault.place.part == self.label for fault in self.findings.faults)
+
     def place(self, key: str = "") -> Place:
         """Return the place of a key, or of the part."""
         line = self.lines.get(key) or self.lines.get("")

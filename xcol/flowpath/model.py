@@ -5,7 +5,11 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
+from xcol.flowpath.elements import Bed
+
 if TYPE_CHECKING:
+    from collections.abc import Iterable
+
     from xcol.errors import Place
     from xcol.flowpath.elements import Element
     from xcol.units import Quantity
@@ -85,3 +89,13 @@ class Instrument:
     def injection(self) -> int:
         """Position of the injection."""
         return next(part.position for part in self.parts if part.kind == "inject")
+
+    @property
+    def beds(self) -> list[Bed]:
+        """The beds of all columns, in the order of flow."""
+        return beds_of(self.parts)
+
+
+def beds_of(parts: Iterable[Part]) -> list[Bed]:
+    """Return the beds of the columns among these parts, in their order."""
+    return [element for part in parts for element in part.elements if isinstance(element, Bed)]

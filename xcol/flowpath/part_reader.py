@@ -180,7 +180,7 @@ def _take_sizes(sizes: dict[str, float], started: set[str], kind: Kind, draft: D
     for name, value in sizes.items():
         if name in draft.written or started:
             other = name if name in draft.written else min(started)
-            draft.fault(other, f"the size once: {kind.name} = {text!r} has it already", "leave it out")
+            draft.fault(other, f"the size once: {kind.name} = {quote(text)} has it already", "leave it out")
             continue
         key = kind.key(name)
         try:
@@ -193,8 +193,8 @@ def _take_sizes(sizes: dict[str, float], started: set[str], kind: Kind, draft: D
 
 def _size_is_missing(started: set[str], kind: Kind, draft: Draft) -> None:
     ways = ", or ".join(" and ".join(way) for way in kind.ways)
-    if any(fault.place.part == draft.label for fault in draft.findings.faults):
-        return  # a key that was not understood may be the one that is missed
+    if draft.has_fault:
+        return
     if started:
         missing = sorted({key for way in kind.ways for key in way if way[0] in started} - started)
         read = f"{' and '.join(sorted(started))} alone"

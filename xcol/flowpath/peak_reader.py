@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from xcol.flowpath import slips
 from xcol.flowpath.chain import dead_time, delays, transit
-from xcol.flowpath.elements import Bed
 from xcol.flowpath.file_keys import PEAK_KEYS
 from xcol.flowpath.findings import Draft, Findings
 from xcol.flowpath.keys import described
@@ -52,7 +51,7 @@ def check_positions(drafts: list[Draft], has_column: bool) -> None:
                 'add { column = "4.6 x 150 mm, 5 um", plates = 11000 }, or leave the key out '
                 "(a union in place of the column)",
             )
-        elif has_column and len(given) != 1 and (given or not _has_fault(draft)):
+        elif has_column and len(given) != 1 and (given or not draft.has_fault):
             read = " and ".join(given) if given else "none of them"
             draft.fault(
                 given[-1] if given else "",
@@ -60,11 +59,6 @@ def check_positions(drafts: list[Draft], has_column: bool) -> None:
                 "k = 2" if not given else "leave the others out",
                 read,
             )
-
-
-def _has_fault(draft: Draft) -> bool:
-    """Whether the peak has a fault already: the key that is missed may be the one that is not known."""
-    return any(fault.place.part == draft.label for fault in draft.findings.faults)
 
 
 def check_diffusion(drafts: list[Draft], has_peaks: bool, top: Draft) -> None:
@@ -148,7 +142,7 @@ def _k_from(retention: float, draft: Draft, instrument: Instrument) -> float | N
 
 
 def _too_many(draft: Draft, plates: float, instrument: Instrument) -> bool:
-    beds = [e for part in instrument.parts for e in part.elements if isinstance(e, Bed)]
+    beds = instrument.beds
     if not beds or any(bed.particle is None for bed in beds):
         return False
     most = sum(bed.length / bed.particle for bed in beds if bed.particle)

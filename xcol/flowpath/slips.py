@@ -10,8 +10,9 @@ from collections.abc import Callable, Iterable
 from typing import TYPE_CHECKING
 
 from xcol.catalogs import tubing, usual_packing
-from xcol.flowpath.elements import Bed, Bore, Cell
+from xcol.flowpath.elements import Bore, Cell
 from xcol.flowpath.hydraulics import LAMINAR_LIMIT, reynolds_number
+from xcol.flowpath.model import beds_of
 from xcol.units import FLOW, LENGTH, PRESSURE, VISCOSITY, VOLUME, significant, write
 
 if TYPE_CHECKING:
@@ -44,21 +45,15 @@ def of_path(instrument: Instrument, flow_place: Place, findings: Findings) -> No
     _cells_and_columns(instrument, findings)
     _blocks(instrument, findings)
     _order(instrument, findings)
-    if instrument.viscosity is not None and not 1.5e-4 <= instrument.viscosity <= 5e-3:
-        shown = write(instrument.viscosity, "mPa s", VISCOSITY)
-        findings.warn(f"a viscosity of {shown} is unusual: 0.2 to 3 mPa s is usual; Pa s or mPa s?")
     if instrument.viscosity is None:
         findings.warn("no viscosity entered: pressures and Reynolds numbers are not computed")
-        return
-    for part in instrument.parts:
-        for element in part.elements:
-            if isinstance(element, Bore):
-                _reynolds(instrument, part.label, element, findings)
+    else:
+        _viscosity(instrument, instrument.viscosity, findings)
 
 
 def flow_in_columns(flow: float, parts: Iterable[Part], place: Place, findings: Findings) -> None:
     """Report a flow that is certainly wrong for a column, and warn of one that is odd."""
-    for bed in (element for part in parts for element in part.elements if isinstance(element, Bed)):
+    for bed in beds_of(parts):
         velocity = bed.length * flow / bed.void_volume
         shown = f"{significant(velocity * 1e3)} mm/s in the {bed.bore * 1e3:g} mm column"
         if not SLOWEST <= velocity <= FASTEST:
@@ -154,11 +149,10 @@ def _column(draft: Draft) -> None:
     if plates is not None and particle is not None:
         if plates_fault(draft, "plates", plates, length, particle):
             return
-        if length / plates < 1.4 * particle:
-            height = significant(length / plates / particle)
-            draft.warn(f"a reduced plate height of {height} is better than the best columns': per metre?")
-        if length / plates > 50 * particle:
-            reduced = length / plates / particle
+        reduced = length / plates / particle
+        if reduced < 1.4:
+            draft.warn(f"a reduced plate height of {significant(reduced)} is better than the best columns': per metre?")
+        if reduced > 50:
             draft.warn(f"{plates:g} plates are few: a reduced plate height of {significant(reduced)}")
     elif plates is not None and plates / length > 6e5:
         draft.warn(f"{plates:g} plates in {write(length, 'mm', LENGTH)}: are they per metre?")
@@ -250,7 +244,7 @@ _CHECKS: dict[str, Callable[[Draft], None]] = {
 
 def _injection_and_columns(instrument: Instrument, findings: Findings) -> None:
     injected = instrument.parts[instrument.injection - 1].elements[0].volume
-    void = sum(e.void_volume for part in instrument.parts for e in part.elements if isinstance(e, Bed))
+    void = sum(bed.void_volume for bed in instrument.beds)
     if void and injected > void:
         findings.warn(
             f"{write(injected, 'uL', VOLUME)} injected is more than the column's void volume, "
@@ -259,7 +253,7 @@ def _injection_and_columns(instrument: Instrument, findings: Findings) -> None:
 
 
 def _cells_and_columns(instrument: Instrument, findings: Findings) -> None:
-    void = sum(e.void_volume for part in instrument.parts for e in part.elements if isinstance(e, Bed))
+    void = sum(bed.void_volume for bed in instrument.beds)
     for part in instrument.detectors:
         for cell in part.elements:
             if isinstance(cell, Cell) and void and cell.volume > 0.3 * void:
@@ -295,13 +289,15 @@ def _order(instrument: Instrument, findings: Findings) -> None:
             findings.warn(f"{part.label} is not the end of the path: other parts follow it")
 
 
-def _reynolds(instrument: Instrument, label: str, element: Bore, findings: Findings) -> None:
-    viscosity = instrument.viscosity
-    if viscosity is None:
-        return
-    number = float(reynolds_number(instrument.flow, element.bore, viscosity, instrument.density))
-    if number > LAMINAR_LIMIT:
-        findings.warn(
-            f"{label}: Reynolds number {number:.0f} is above {LAMINAR_LIMIT:.0f}: the flow is not "
-            "laminar, and neither its variance nor its pressure drop can be trusted"
-        )
+def _viscosity(instrument: Instrument, viscosity: float, findings: Findings) -> None:
+    if not 1.5e-4 <= viscosity <= 5e-3:
+        shown = write(viscosity, "mPa s", VISCOSITY)
+        findings.warn(f"a viscosity of {shown} is unusual: 0.2 to 3 mPa s is usual; Pa s or mPa s?")
+    for part in instrument.parts:
+        for bore in (element.bore for element in part.elements if isinstance(element, Bore)):
+            number = float(reynolds_number(instrument.flow, bore, viscosity, instrument.density))
+            if number > LAMINAR_LIMIT:
+                findings.warn(
+                    f"{part.label}: Reynolds number {number:.0f} is above {LAMINAR_LIMIT:.0f}: the flow is not "
+                    "laminar, and neither its variance nor its pressure drop can be trusted"
+                )

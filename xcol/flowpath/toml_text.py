@@ -307,9 +307,7 @@ def _value_without_quotes(spot: _Spot) -> _Slip | None:
 
 
 def _open_string(spot: _Spot) -> _Slip | None:
-    if not spot.message.startswith("Illegal character '\\n'") and not spot.message.startswith(
-        "Illegal character '\\r'"
-    ):
+    if not spot.message.startswith(("Illegal character '\\n'", "Illegal character '\\r'")):
         return None
     body = re.sub(r"\s*(?:\}\s*,?|,)?\s*$", "", spot.line)
     return _Slip(

@@ -18,6 +18,7 @@ if TYPE_CHECKING:
 LINES = 24
 _CAVEAT = "No ranges yet (tubes at their worst, plugs at their best): what leads is open."
 _CAUTION = "Before opening a line: pump off, pressure at zero, eye protection, site rules."
+_HANG = 2  # indent of the lines of a paragraph after its first
 _LEAST_PARTS = 6  # lines of the table of parts that are kept whatever else there is to say
 
 
@@ -28,7 +29,7 @@ def first_screen(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: Sh
         _at_most(2, line, sheet)
     _at_most(1, _CAVEAT, sheet)
     sheet.line()
-    foot = _like(sheet)
+    foot = Sheet(sheet.width, sheet.ascii_only)
     _footer(answer, foot)
 
     # header of the parts, a blank line and header of the peaks, one peak, one line for those left out
@@ -76,19 +77,17 @@ def _share_of_limit(row: PressureRow) -> float:
     return row.inlet.value / row.part.max_pressure if row.inlet and row.part.max_pressure else 0.0
 
 
-def _like(sheet: Sheet) -> Sheet:
-    return Sheet(sheet.width, sheet.ascii_only, sheet.color)
+def _at_most(lines: int, text: str, sheet: Sheet, style: str = "") -> int:
+    """Add a paragraph of at most so many lines, cut with dots where it must be; return its lines."""
+    text = _cut(lines, text, sheet)
+    sheet.line(text, style, hang=_HANG)
+    return sheet.height(text, _HANG)
 
 
-def _at_most(lines: int, text: str, sheet: Sheet, style: str = "") -> None:
-    """Add a paragraph of at most so many lines; what does not fit is cut with dots."""
-    while True:
-        trial = _like(sheet)
-        trial.line(text, hang=2)
-        if trial.count() <= lines or len(text) < 8:
-            break
+def _cut(lines: int, text: str, sheet: Sheet) -> str:
+    while sheet.height(text, _HANG) > lines and len(text) >= 8:
         text = f"{text[: len(text) - 8].rstrip(' .')}..."
-    sheet.line(text, style, hang=2)
+    return text
 
 
 def _fitting_list(head: str, items: list[str], width: int) -> str:
@@ -123,24 +122,24 @@ def _lines_for_warnings(answer: Budget, sheet: Sheet, room: int) -> int:
     urgent = len(answer.pressure.limits) + len(answer.pressure.warnings)
     lines = 0
     for index, warning in enumerate(answer.warnings[:urgent]):
-        trial = _like(sheet)
-        _at_most(2, f"! {warning}", trial)
-        if index and lines + trial.count() + 1 > room:
+        height = _warning_height(warning, sheet)
+        if index and lines + height + 1 > room:
             return lines + 1
-        lines += trial.count()
+        lines += height
     return lines + (1 if urgent < len(answer.warnings) else 0)
+
+
+def _warning_height(warning: str, sheet: Sheet) -> int:
+    return min(sheet.height(f"! {warning}", _HANG), 2)
 
 
 def _warnings(answer: Budget, sheet: Sheet, room: int) -> None:
     """Write the warnings that fit, in their order, and how many are left."""
     left = len(answer.warnings)
     for warning in answer.warnings:
-        trial = _like(sheet)
-        _at_most(2, f"! {warning}", trial)
-        if trial.count() + (1 if left > 1 else 0) > room:
+        if _warning_height(warning, sheet) + (1 if left > 1 else 0) > room:
             more = " more" if left < len(answer.warnings) else ""
             sheet.line(f"! {left}{more} warning{'s' if left > 1 else ''}: --full", "yellow")
             return
-        _at_most(2, f"! {warning}", sheet, "yellow")
+        room -= _at_most(2, f"! {warning}", sheet, "yellow")
         left -= 1
-        room -= trial.count()

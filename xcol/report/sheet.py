@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import io
-from dataclasses import dataclass, field
+from dataclasses import dataclass
 
 from rich.cells import cell_len, set_cell_size
 from rich.console import Console
@@ -47,23 +47,40 @@ class Grid:
 
 @dataclass
 class Sheet:
-    """Collects what is printed; ``text()`` lays it out."""
+    """Lays out what is added to it, line by line; ``text()`` is all of it."""
 
     width: int = 80
     ascii_only: bool = False
     color: bool = False
-    _items: list[Text | Table | Padding] = field(default_factory=list)
+
+    def __post_init__(self) -> None:
+        self._out = io.StringIO()
+        self._console = Console(
+            file=self._out,
+            width=self.width,
+            color_system="standard" if self.color else None,
+            force_terminal=self.color,
+            highlight=False,
+            markup=False,
+            emoji=False,
+            legacy_windows=False,
+        )
 
     def line(self, text: str = "", style: str = "", indent: int = 0, hang: int = 0) -> None:
         """Add a paragraph, wrapped; lines after the first are indented by ``hang`` more."""
-        content = Text(self.spelled(text), style=style)
         if not hang:
-            self._items.append(Padding(content, (0, 0, 0, indent)) if indent else content)
+            self._console.print(Padding(Text(self.spelled(text), style=style), (0, 0, 0, indent)))
             return
-        pieces = content.wrap(_measuring(), self.width - indent - hang)
-        for number, piece in enumerate(pieces):
+        for number, piece in enumerate(self._wrapped(text, style, indent, hang)):
             piece.rstrip()
-            self._items.append(Padding(piece, (0, 0, 0, indent + (hang if number else 0))))
+            self._console.print(Padding(piece, (0, 0, 0, indent + (hang if number else 0))))
+
+    def height(self, text: str, hang: int) -> int:
+        """Return the lines that a paragraph with this ``hang`` would take."""
+        return len(self._wrapped(text, "", 0, hang))
+
+    def _wrapped(self, text: str, style: str, indent: int, hang: int) -> list[Text]:
+        return list(Text(self.spelled(text), style=style).wrap(self._console, self.width - indent - hang))
 
     def grid(self, grid: Grid, indent: int = 0, flexible: int = 0) -> None:
         """Add a table; the ``flexible`` column is cut where the width does not suffice."""
@@ -85,36 +102,19 @@ class Sheet:
             )
         for row in grid.rows:
             table.add_row(*(Text(self.spelled(cell)) for cell in row))
-        self._items.append(Padding(table, (0, 0, 0, indent)))
+        self._console.print(Padding(table, (0, 0, 0, indent)))
 
     def text(self) -> str:
         """Return the sheet as text, without blanks at the ends of lines."""
-        out = io.StringIO()
-        console = Console(
-            file=out,
-            width=self.width,
-            color_system="standard" if self.color else None,
-            force_terminal=self.color,
-            highlight=False,
-            markup=False,
-            emoji=False,
-            legacy_windows=False,
-        )
-        for item in self._items:
-            console.print(item)
-        return "".join(f"{line.rstrip()}\n" for line in out.getvalue().splitlines())
+        return "".join(f"{line.rstrip()}\n" for line in self._out.getvalue().splitlines())
 
     def count(self) -> int:
         """Return the number of lines so far."""
-        return len(self.text().splitlines())
+        return len(self._out.getvalue().splitlines())
 
     def spelled(self, text: str) -> str:
         """Return the text as this sheet prints it: in ASCII where it must be."""
         return to_ascii(text) if self.ascii_only else text
-
-
-def _measuring() -> Console:
-    return Console(file=io.StringIO(), width=1000, color_system=None, legacy_windows=False)
 
 
 def markdown(grid: Grid) -> str:
