@@ -1,77 +1,235 @@
 """Catalog files and their records."""
 
+import re
+
 import pytest
 
 from xcol import catalogs
+from xcol.catalogs import COLUMNS, KINDS, MATERIALS, MIXTURES, PACKINGS, SOLUTES, SOLVENTS, TUBING, Catalogs
 from xcol.errors import InputError
+
+KNOWN = Catalogs()
 
 
 @pytest.fixture
 def other(tmp_path, monkeypatch):
     """Read catalogs from an empty folder of the test's own."""
     monkeypatch.setattr(catalogs, "_FOLDERS", (tmp_path,))
-    for read in (catalogs.packings, catalogs.tubing):
-        read.cache_clear()
+    catalogs._shipped.cache_clear()
     yield tmp_path
-    for read in (catalogs.packings, catalogs.tubing):
-        read.cache_clear()
+    catalogs._shipped.cache_clear()
 
 
-def test_the_shipped_catalogs_are_read_and_every_row_has_a_source():
-    for packing in catalogs.packings().values():
-        assert packing.source
+@pytest.mark.parametrize("kind", KINDS, ids=[kind.name for kind in KINDS])
+def test_the_shipped_catalogs_are_read_and_every_row_has_a_name_of_its_own_and_a_source(kind):
+    rows = KNOWN.rows(kind)
+    assert len(rows) >= 3
+    assert all(row.source and not row.file for row in rows)
+    names = [catalogs.normal(name) for row in rows for name in (row.name, *row.also)]
+    assert len(set(names)) == len(names)
+    for row in rows:
+        assert all(KNOWN.find(kind, name) is row for name in (row.name, *row.also, row.name.upper()))
+
+
+def test_what_rows_refer_to_is_there():
+    for column in KNOWN.rows(COLUMNS):
+        assert KNOWN.find(PACKINGS, column.packing)
+    for mixture in KNOWN.rows(MIXTURES):
+        assert KNOWN.find(SOLVENTS, mixture.liquid)
+    for tubing in KNOWN.rows(TUBING):
+        assert tubing.materials
+        assert all(KNOWN.find(MATERIALS, name) for name in tubing.materials)
+    for material in KNOWN.rows(MATERIALS):
+        assert all(KNOWN.find(SOLVENTS, name) for name in material.avoid)
+
+
+def test_values_lie_within_their_ranges():
+    for packing in KNOWN.rows(PACKINGS):
         assert packing.total_range[0] <= packing.total_porosity <= packing.total_range[1]
         assert packing.interstitial_range[0] <= packing.interstitial <= packing.interstitial_range[1]
-    bores = [row.bore for row in catalogs.tubing()]
-    assert bores == sorted(bores)
-    assert any(bore == pytest.approx(0.254e-3) for bore in bores)
-    assert all(row.source for row in catalogs.tubing())
+        assert packing.interstitial < packing.total_porosity
+        if packing.knox:
+            ends = zip(packing.knox_best, packing.knox, packing.knox_worst, strict=True)
+            assert all(best < usual < worst for best, usual, worst in ends)
+    for column in KNOWN.rows(COLUMNS):
+        assert column.particle < column.bore < column.length
 
 
-def test_the_inches_on_a_reel_are_its_bore():
-    reels = [row for row in catalogs.tubing() if row.reel_inches]
+def test_the_inches_on_a_reel_are_its_bore_and_no_row_is_named_by_a_colour():
+    reels = [row for row in KNOWN.rows(TUBING) if row.reel_inches]
     assert len(reels) >= 6
     assert all(row.reel_inches * 0.0254 == pytest.approx(row.bore, rel=0.02) for row in reels)
+    bores = [row.bore for row in KNOWN.rows(TUBING)]
+    assert bores == sorted(bores)
+    assert any(bore == pytest.approx(0.254e-3) for bore in bores)
+    words = " ".join(name.lower() for kind in KINDS for row in KNOWN.rows(kind) for name in (row.name, *row.also))
+    assert not re.search(r"\b(red|yellow|blue|orange|green|black|natural|grey|gray)\b", words)
 
 
-GOOD = '[[tubing]]\nbore_mm = 0.1\nreel_in = 0.004\nsource = "a test"\n'
+# Atomic weights (IUPAC, conventional, from memory), and Le Bas increments in cm³/mol (from memory).
+ATOMS = {"C": 12.011, "H": 1.008, "N": 14.007, "O": 15.999, "S": 32.06}
+LE_BAS = {
+    "C": 14.8, "H": 3.7, "O": 7.4, "O of a methyl ester": 9.1, "O of a higher ester": 11.0, "O of an acid": 12.0,
+    "N secondary": 12.0, "ring of six": -15.0, "naphthalene ring": -30.0, "anthracene ring": -47.5,
+}  # fmt: skip
+
+
+def test_molar_masses_are_those_of_the_formulas():
+    named = [row for row in KNOWN.rows(SOLUTES) if row.formula]
+    assert len(named) >= 30
+    for row in named:
+        atoms = re.findall(r"([A-Z][a-z]?)(\d*)", row.formula)
+        mass = sum(ATOMS[atom] * int(count or 1) for atom, count in atoms)
+        assert row.molar_mass * 1e3 == pytest.approx(mass, abs=0.05), row.name
+
+
+def test_molar_volumes_are_those_of_the_increments_that_the_source_states():
+    counted = 0
+    for row in KNOWN.rows(SOLUTES):
+        if "increments" in row.source:
+            total, atoms = 0.0, {}
+            for piece in row.source.split(": ", 2)[-1].split(", "):
+                count, name = re.fullmatch(r"(\d+ )?(.+)", piece).groups()
+                total += int(count or 1) * LE_BAS[name]
+                if count:
+                    atoms[name[0]] = atoms.get(name[0], 0) + int(count)
+            assert row.molar_volume * 1e6 == pytest.approx(total), row.name
+            formula = {atom: int(count or 1) for atom, count in re.findall(r"([A-Z])(\d*)", row.formula)}
+            assert atoms == formula, row.name
+            counted += 1
+    assert counted >= 10
+
+
+GOOD = (
+    '[[tubing]]\nbore = "0.1 mm"\nreel = "0.004 in"\ntolerance = "5 %"\ntolerance_from = "assumed"\nsource = "a test"\n'
+)
 
 
 @pytest.mark.parametrize(
     ("old", "new", "key"),
     [
-        ("0.1\n", '"0.1 mm"\n', "bore_mm"),
-        ("0.1\n", "-1\n", "bore_mm"),
-        ("0.1\n", "true\n", "bore_mm"),
-        ("0.004", "0", "reel_in"),
+        ('"0.1 mm"', "0.1", "bore"),
+        ('"0.1 mm"', '"0.1"', "bore"),
+        ('"0.1 mm"', '"0.1 s"', "bore"),
+        ('"0.1 mm"', '"-1 mm"', "bore"),
+        ('"0.1 mm"', "true", "bore"),
+        ('bore = "0.1 mm"', "", "bore"),
+        ('"0.004 in"', '"0 in"', "reel"),
+        ('"5 %"', '"300 %"', "tolerance"),
         ('"a test"', '" "', "source"),
+        ('source = "a test"', "", "source"),
+        ("tolerance_from", "tolerance_form", "tolerance_from"),
+        ('source = "a test"', 'source = "a test"\ncolour = "red"', "colour"),
+        ('source = "a test"', 'source = "a test"\nmaterials = "steel"', "materials"),
+        ('source = "a test"', 'source = "a test"\nalso = [1]', "also"),
     ],
 )
-def test_an_invalid_row_is_named(other, old, new, key):
-    (other / "tubing.toml").write_text(GOOD + GOOD.replace(old, new))
+def test_an_invalid_row_is_named_by_file_and_line(other, old, new, key):
+    (other / "tubing.toml").write_text("# a comment\n" + GOOD + "\n" + GOOD.replace(old, new))
     with pytest.raises(InputError) as caught:
-        catalogs.tubing()
-    place = caught.value.faults[0].place
-    assert (place.file, place.part, place.key) == ("tubing.toml", "row 2", key)
+        KNOWN.rows(TUBING)
+    (fault,) = caught.value.faults
+    assert (fault.place.file, fault.place.line, fault.place.key) == ("tubing.toml", 9, key)
+    assert fault.expected
 
 
-@pytest.mark.parametrize("span", ["0.6", "[0.6]", "[0.7, 0.6]", "[0.6, 1.2]", '["a", "b"]'])
+PACKING = (
+    '[[packing]]\nname = "a"\ntotal_porosity = 0.6\ntotal_range = [0.5, 0.7]\ninterstitial = 0.4\n'
+    'interstitial_range = [0.3, 0.5]\nsource = "a test"\n'
+)
+
+
+@pytest.mark.parametrize("span", ["0.6", "[0.6]", "[0.7, 0.6]", "[0.6, 1.2]", '["a", "b"]', "[true, 0.5]"])
 def test_a_range_is_two_fractions(other, span):
-    (other / "packings.toml").write_text(
-        f'[[packing]]\nname = "a"\ntotal_porosity = 0.6\ntotal_range = {span}\ninterstitial = 0.4\n'
-        'interstitial_range = [0.3, 0.5]\nsource = "a test"\n'
-    )
+    (other / "packings.toml").write_text(PACKING.replace("[0.5, 0.7]", span))
     with pytest.raises(InputError) as caught:
-        catalogs.packings()
+        KNOWN.rows(PACKINGS)
     assert caught.value.faults[0].place.key == "total_range"
+
+
+@pytest.mark.parametrize(
+    ("more", "key"),
+    [
+        ("knox = [1, 2]", "knox"),
+        ('knox = [1, 2, "a"]', "knox"),
+        ("knox = [1, 2, 3]", "knox_best"),
+        ('velocity = "fast"', "velocity"),
+        ("total_porosity = 3", "total_porosity"),
+    ],
+)
+def test_a_curve_is_three_numbers_with_best_and_worst(other, more, key):
+    text = PACKING if "total" not in more else PACKING.replace("total_porosity = 0.6\n", "")
+    (other / "packings.toml").write_text(f"{text}{more}\n")
+    with pytest.raises(InputError) as caught:
+        KNOWN.rows(PACKINGS)
+    assert caught.value.faults[0].place.key == key
+
+
+def test_a_solute_needs_a_mass_or_a_measured_value_and_that_its_temperature(other):
+    for text in ('[[solute]]\nname = "a"\nsource = "b"\n',
+                 '[[solute]]\nname = "a"\nsource = "b"\ndiffusion = "1e-9 m^2/s"\n'):  # fmt: skip
+        (other / "solutes.toml").write_text(text)
+        with pytest.raises(InputError) as caught:
+            KNOWN.rows(SOLUTES)
+        assert caught.value.faults[0].place.key in ("molar_mass", "at")
+
+
+def test_all_invalid_rows_are_named_together(other):
+    (other / "tubing.toml").write_text(GOOD.replace("0.1 mm", "0.1 s") + GOOD.replace("5 %", "5"))
+    with pytest.raises(InputError) as caught:
+        KNOWN.rows(TUBING)
+    assert [fault.place.line for fault in caught.value.faults] == [1, 7]
 
 
 def test_a_catalog_that_cannot_be_read_and_none_at_all(other, monkeypatch):
     with pytest.raises(InputError):
-        catalogs.tubing()
+        KNOWN.rows(TUBING)
     (other / "tubing.toml").write_text("[[tubing]")
     with pytest.raises(InputError):
-        catalogs.tubing()
+        KNOWN.rows(TUBING)
     monkeypatch.setattr(catalogs, "_FOLDERS", (other / "missing",))
     with pytest.raises(InputError):
         catalogs.folder()
+
+
+def records(*tables):
+    data = {}
+    for table, row in tables:
+        data.setdefault(table, []).append({"source": "a test", **row})
+    found, faults = catalogs.records_of(data, "mine.toml", "mine.toml", lambda table, number: {"": number + 1})
+    assert not faults
+    return found
+
+
+def test_own_rows_are_added_and_stand_in_place_of_shipped_ones():
+    ours = {"name": "our marker", "molar_mass": "310 g/mol"}
+    theirs = {"name": "Caffeine", "diffusion": "6.0e-10 m^2/s", "at": "20 degC"}
+    known = Catalogs(records(("solute", ours), ("solute", theirs)))
+    assert known.find(SOLUTES, "our marker").molar_mass == pytest.approx(0.31)
+    assert known.find(SOLUTES, "caffeine").diffusion == pytest.approx(6e-10)
+    assert len(known.rows(SOLUTES)) == len(KNOWN.rows(SOLUTES)) + 1
+    ((own, shipped),) = known.replaced()
+    assert (own.name, own.file, shipped.name) == ("Caffeine", "mine.toml", "caffeine")
+
+
+def test_a_later_row_of_the_same_name_stands_and_a_name_stands_before_another_s_other_name():
+    first, second = ({"name": "x", "molar_mass": f"{mass} g/mol"} for mass in (100, 200))
+    known = Catalogs(records(("solute", first), ("solute", second)))
+    assert [row.molar_mass for row in known.rows(SOLUTES)[:2]] == pytest.approx([0.2, 0.03204])
+    known = Catalogs(records(("solute", {"name": "BSA", "molar_mass": "66 kDa"})))
+    assert known.find(SOLUTES, "bsa").diffusion is None
+    assert known.find(SOLUTES, "bovine serum albumin") is None  # replaced, under its other name
+
+
+def test_unknown_tables_are_refused():
+    for data in ({"solvnt": [{}]}, {"solute": 3}, {"solute": [3]}, {"path": []}):
+        found, faults = catalogs.records_of(data, "mine.toml", "mine.toml", lambda table, number: {})
+        assert not found
+        assert len(faults) == 1
+        assert faults[0].place.file == "mine.toml"
+
+
+def test_near_names_are_proposed():
+    assert KNOWN.near(SOLUTES, "cafeine") == "caffeine"
+    assert KNOWN.near(SOLVENTS, "acetonitril") == "acetonitrile"
+    assert KNOWN.near(SOLVENTS, "qqqq") == ""
