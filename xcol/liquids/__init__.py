@@ -1,1 +1,1 @@
-"""Viscosity, density and diffusion of what flows (to come: until then they stand in the file)."""
+"""Viscosity, density and diffusion of what flows: SI floats or NumPy arrays in and out."""
