@@ -6,7 +6,7 @@ All variances are summed in s²; what is shown in µL² is s² times the square 
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
 
 import numpy as np
@@ -17,12 +17,14 @@ from xcol.filters.laminar import UNMIXED_BELOW
 from xcol.filters.tube import Tube
 from xcol.flowpath.chain import Link, filter_of, links, run_of, segments, transit
 from xcol.flowpath.elements import Bed, Electronics, Stream
+from xcol.flowpath.model import beds_of
 
 if TYPE_CHECKING:
     from collections.abc import Iterator, Sequence
 
     import numpy.typing as npt
 
+    from xcol.filters.interface import Filter
     from xcol.flowpath.model import Instrument, Part, Peak
 
     Values = npt.NDArray[np.float64]
@@ -59,8 +61,21 @@ class ColumnBand:
 
 
 @dataclass(frozen=True)
+class Recorded:
+    """What one set of assumptions gives: total variance [s²], plates recorded (None without a column)."""
+
+    variance: float
+    plates: float | None
+
+
+@dataclass(frozen=True)
 class PeakBudget:
-    """One peak at one detector; times [s], variances [s²], None where there is no column."""
+    """One peak at one detector; times [s], variances [s²], None where there is no column.
+
+    ``over_diffusion`` is the same at both ends of an estimated diffusion coefficient, D/(1+u) and
+    D·(1+u), as recorded variance and plates; ``columns_range`` the fewest and most plates that the
+    columns may have where their N comes from a reduced plate height curve.
+    """
 
     peak: Peak
     retention: float  # mean of the recorded peak, from the valve's turn
@@ -70,6 +85,8 @@ class PeakBudget:
     rows: tuple[Row, ...]
     columns: tuple[ColumnBand, ...]
     points: float | None  # data points across 4σ
+    over_diffusion: tuple[Recorded, Recorded] | None = None
+    columns_range: tuple[float, float] | None = None
 
     @property
     def variance_total(self) -> float:
@@ -156,9 +173,10 @@ def budget(instrument: Instrument) -> Budget:
 def _at_detector(instrument: Instrument, detector: Part) -> DetectorBudget:
     chain = links(instrument, detector)
     delay = transit(instrument, detector)
-    spread = _Spread(instrument, chain)
+    spread = _Spread(instrument.flow, chain, instrument.peaks)
     rows = spread.rows()
     extra = sum((row.variance for row in rows.values()), spread.zero)
+    ends = _over_diffusion(instrument, chain)
     without = {index: spread.total_without(index) for index in rows}
 
     peaks = []
@@ -191,9 +209,54 @@ def _at_detector(instrument: Instrument, detector: Part) -> DetectorBudget:
                 ),
                 columns=bands,
                 points=_points(chain, total),
+                over_diffusion=ends.get(n),
+                columns_range=_columns_range(instrument, chain, peak),
             )
         )
     return DetectorBudget(detector, delay, tuple(peaks))
+
+
+def _over_diffusion(instrument: Instrument, chain: tuple[Link, ...]) -> dict[int, tuple[Recorded, Recorded]]:
+    """Return what is recorded of each peak at the ends of its diffusion coefficient, where it was estimated."""
+    unsure = [n for n, peak in enumerate(instrument.peaks) if peak.estimate.uncertainty > 0]
+    found: list[list[Recorded]] = []
+    for up in (False, True):
+        moved = tuple(_moved(instrument.peaks[n], up) for n in unsure)
+        spread = _Spread(instrument.flow, chain, moved)
+        extra = sum((row.variance for row in spread.rows().values()), spread.zero)
+        found.append([_recorded(instrument, chain, peak, float(extra[n])) for n, peak in enumerate(moved)])
+    return {n: (low, high) for n, low, high in zip(unsure, *found, strict=True)}
+
+
+def _moved(peak: Peak, up: bool) -> Peak:
+    """Return the peak with its diffusion coefficient at one end of its uncertainty."""
+    factor = 1 + peak.estimate.uncertainty
+    value = peak.estimate.value * factor if up else peak.estimate.value / factor
+    return replace(peak, estimate=replace(peak.estimate, value=value))
+
+
+def _recorded(instrument: Instrument, chain: tuple[Link, ...], peak: Peak, extra: float) -> Recorded:
+    time, bands = _own_bands(instrument, chain, peak)
+    total = sum(band.variance for band in bands) + extra
+    return Recorded(total, time**2 / total if bands and total else None)
+
+
+def _columns_range(instrument: Instrument, chain: tuple[Link, ...], peak: Peak) -> tuple[float, float] | None:
+    """Return the fewest and most plates of the columns together, where N comes from a curve."""
+    passed = [(link.part, link.element) for link in chain if isinstance(link.element, Bed)]
+    streams = [Stream(instrument.flow, peak.diffusion_in(part)) for part, _ in passed]
+    spans = [bed.plates_range(stream) for (_, bed), stream in zip(passed, streams, strict=True)]
+    if peak.plates is not None or not any(spans):
+        return None
+    times = [bed.void_volume for _, bed in passed]
+    ends = []
+    for end in (0, 1):
+        plates = [
+            float(span[end] if span else bed.plates_for(stream))
+            for span, (_, bed), stream in zip(spans, passed, streams, strict=True)
+        ]
+        ends.append(sum(times) ** 2 / sum(t**2 / n for t, n in zip(times, plates, strict=True)))
+    return ends[0], ends[1]
 
 
 def _own_bands(instrument: Instrument, chain: tuple[Link, ...], peak: Peak) -> tuple[float, tuple[ColumnBand, ...]]:
@@ -202,17 +265,16 @@ def _own_bands(instrument: Instrument, chain: tuple[Link, ...], peak: Peak) -> t
     A peak's own ``plates`` are those of all columns of the path together; each column's variance
     is scaled alike, so that a detector between columns gets its share.
     """
-    stream = Stream(instrument.flow, peak.diffusion)
 
-    def column_of(bed: Bed) -> Column:
-        return bed.retained(stream, peak.k or 0.0, bed.plates)
+    def column_of(part: Part, bed: Bed) -> Column:
+        return bed.retained(Stream(instrument.flow, peak.diffusion_in(part)), peak.k or 0.0)
 
     scale = 1.0
     if peak.plates is not None:
-        every = [column_of(bed) for bed in instrument.beds]
+        every = [column_of(part, bed) for part in instrument.parts for bed in beds_of([part])]
         time, variance = sum(float(c.delay()) for c in every), sum(float(c.variance()) for c in every)
         scale = time**2 / peak.plates / variance
-    passed = [(link.part, column_of(link.element)) for link in chain if isinstance(link.element, Bed)]
+    passed = [(link.part, column_of(link.part, link.element)) for link in chain if isinstance(link.element, Bed)]
     bands = tuple(
         ColumnBand(part, float(column.variance()) * scale, float(column.plates) / scale) for part, column in passed
     )
@@ -233,18 +295,18 @@ class _LinkSpread:
 class _Spread:
     """The variance of the chain outside the columns, for all peaks at once."""
 
-    def __init__(self, instrument: Instrument, chain: tuple[Link, ...]) -> None:
-        self._flow = instrument.flow
+    def __init__(self, flow: float, chain: tuple[Link, ...], peaks: tuple[Peak, ...]) -> None:
+        self._flow = flow
         self._chain = chain
-        self._diffusion = np.array([peak.diffusion for peak in instrument.peaks])
+        self._peaks = peaks
         self._known: dict[tuple[int, ...], list[Values]] = {}
-        self.zero = np.zeros_like(self._diffusion)
+        self.zero = np.zeros(len(peaks))
 
     def rows(self) -> dict[int, _LinkSpread]:
         """Return what each link but the columns contributes, in the order of the chain."""
         rows: dict[int, _LinkSpread] = {}
         for group in self._groups(range(len(self._chain))):
-            filters = [filter_of(self._chain[index], self._flow, self._diffusion) for index in group]
+            filters = self._filters(group)
             tubes = [part for part in filters if isinstance(part, Tube)]
             run = self.zero + sum(tube.t_star for tube in tubes)
             for index, part, variance in zip(group, filters, self._shares(group), strict=True):
@@ -270,13 +332,17 @@ class _Spread:
 
     def _shares(self, group: tuple[int, ...]) -> list[Values]:
         if group not in self._known:
-            part = filter_of(self._chain[group[0]], self._flow, self._diffusion)
-            if isinstance(part, Tube):
-                shares = run_of(self._chain, group, self._flow, self._diffusion).shares()
-            else:
-                shares = [part.variance()]
+            filters = self._filters(group)
+            run = run_of(filters)
+            shares = run.shares() if run.tubes else [part.variance() for part in filters]
             self._known[group] = [self.zero + share for share in shares]
         return self._known[group]
+
+    def _filters(self, group: tuple[int, ...]) -> list[Filter]:
+        """Return the filters of a segment, each with the diffusion coefficients at its own temperature."""
+        parts = [self._chain[index].part for index in group]
+        diffusion = [np.array([peak.diffusion_in(part) for peak in self._peaks]) for part in parts]
+        return [filter_of(self._chain[i], self._flow, d) for i, d in zip(group, diffusion, strict=True)]
 
 
 def _points(chain: tuple[Link, ...], variance: float) -> float | None:

@@ -83,16 +83,16 @@ def _drop(part: Part, instrument: Instrument) -> PressureRange | None:
         return exactly(part.drop)
     total: PressureRange | None = _NOTHING
     for element in part.elements:
-        drop = element.drop(instrument.flow, instrument.viscosity)
+        drop = element.drop(instrument.flow, part.viscosity.value if part.viscosity else None)
         total = None if drop is None or total is None else total + drop
-    return total
+    return total.widened(part.viscosity.uncertainty) if total and part.viscosity else total
 
 
 def _reynolds(part: Part, instrument: Instrument) -> float | None:
     bores = [element.bore for element in part.elements if isinstance(element, Bore)]
-    if not bores or instrument.viscosity is None:
+    if not bores or part.viscosity is None:
         return None
-    return float(reynolds_number(instrument.flow, min(bores), instrument.viscosity, instrument.density))
+    return float(reynolds_number(instrument.flow, min(bores), part.viscosity.value, instrument.density))
 
 
 def _with_pump_pressure(

@@ -77,14 +77,13 @@ def segments(chain: Sequence[Link]) -> list[tuple[int, ...]]:
 
 
 def filter_of(link: Link, flow: float, diffusion: Real) -> Filter:
-    """Return the link's own filter for a solute of this diffusion coefficient [m²/s]."""
+    """Return the link's own filter for a solute of this diffusion coefficient [m²/s] in it."""
     return link.element.filter(Stream(flow, diffusion), read_here=link.read_here)
 
 
-def run_of(chain: Sequence[Link], group: Sequence[int], flow: float, diffusion: Real) -> TubeRun:
-    """Return the tubes of a segment as one run."""
-    tubes = [filter_of(chain[index], flow, diffusion) for index in group]
-    return TubeRun(tuple(tube for tube in tubes if isinstance(tube, Tube)))
+def run_of(filters: Sequence[Filter]) -> TubeRun:
+    """Return the tubes among the filters of a segment as one run."""
+    return TubeRun(tuple(tube for tube in filters if isinstance(tube, Tube)))
 
 
 def delays(instrument: Instrument, detector: Part) -> list[tuple[Part, float]]:

@@ -11,7 +11,7 @@ from dataclasses import dataclass
 from typing import TYPE_CHECKING, Protocol
 
 from xcol.filters.block import MeasuredBlock
-from xcol.filters.column import Column
+from xcol.filters.column import Column, PlateHeightCurve, reduced_velocity
 from xcol.filters.tube import Tube
 from xcol.filters.volumes import Plug, TanksInSeries
 from xcol.flowpath.hydraulics import PressureRange, bed_drop, exactly, tube_drop
@@ -199,19 +199,32 @@ class Block(WithoutDrop):
 
 
 @dataclass(frozen=True)
+class BestAndWorst:
+    """A reduced plate height curve with the best and the worst that is usual of such a packing."""
+
+    usual: PlateHeightCurve
+    best: PlateHeightCurve
+    worst: PlateHeightCurve
+
+
+@dataclass(frozen=True)
 class Bed:
     """A column: ``bore``, ``length``, ``particle`` diameter [m], ``void_volume`` [m³], plates.
 
     ``porosity`` is the interstitial one for the pressure drop, with its range; ``particle`` None
-    where it was not entered.
+    where it was not entered. ``plates`` hold at the flow ``plates_at`` [m³/s] (None: at any), and are
+    None where they come from the ``curve``.
     """
 
     bore: float
     length: float
     particle: float | None
-    plates: float
+    plates: float | None
     void_volume: float
     porosity: tuple[float, float, float]  # value, smallest, largest
+    plates_at: float | None = None
+    curve: BestAndWorst | None = None
+    porosity_from: str = ""  # source of an assumed interstitial porosity
     contribution: str = "column"
     of_signal: bool = False
 
@@ -232,11 +245,34 @@ class Bed:
 
     def filter(self, stream: Stream, *, read_here: bool) -> Filter:
         """Return the column for an unretained band; ``retained`` gives it for the others."""
-        return self.retained(stream, 0.0, self.plates)
+        return self.retained(stream, 0.0)
 
-    def retained(self, stream: Stream, retention_factor: Real, plates: Real) -> Column:
-        """Return the column's filter for a band of this retention factor and plate number."""
-        return Column(self.void_volume / stream.flow, retention_factor, plates)
+    def retained(self, stream: Stream, retention_factor: Real) -> Column:
+        """Return the column's filter for a band of this retention factor."""
+        return Column(self.void_volume / stream.flow, retention_factor, self.plates_for(stream))
+
+    def plates_for(self, stream: Stream) -> Real:
+        """Plate number [-] for this flow and solute: entered, scaled with the curve, or from it alone."""
+        if self.curve is None or (self.plates is not None and self.plates_at is None):
+            return self.plates if self.plates is not None else 1.0
+        usual = self._from(self.curve.usual, stream)
+        if self.plates is None or self.plates_at is None:
+            return usual
+        return self.plates * usual / self._from(self.curve.usual, Stream(self.plates_at, stream.diffusion))
+
+    def plates_range(self, stream: Stream) -> tuple[Real, Real] | None:
+        """Return the fewest and the most plates that such packings give; None where they were entered."""
+        if self.curve is None or self.plates is not None:
+            return None
+        return self._from(self.curve.worst, stream), self._from(self.curve.best, stream)
+
+    def velocity(self, stream: Stream) -> Real:
+        """Reduced velocity ν of a solute [-], by L/t₀; needs the particle size."""
+        particle = self.particle or math.nan
+        return reduced_velocity(stream.flow, self.length, self.void_volume, particle, stream.diffusion)
+
+    def _from(self, curve: PlateHeightCurve, stream: Stream) -> Real:
+        return curve.plates(self.velocity(stream), self.length, self.particle or math.nan)
 
     def drop(self, flow: float, viscosity: float | None) -> PressureRange | None:
         """Pressure drop [Pa]; None without a particle size or a viscosity."""

@@ -2,32 +2,40 @@
 
 from __future__ import annotations
 
-from xcol.flowpath.keys import Key, Later, Measure, Number, Text
-from xcol.units import DENSITY, DIFFUSION, FLOW, PRESSURE, TEMPERATURE, TIME, VISCOSITY, VOLUME
+from xcol.flowpath.keys import Choice, Key, Later, Measure, Number, Table, Text, Texts
+from xcol.units import DENSITY, DIFFUSION, FLOW, MOLAR_MASS, PRESSURE, TEMPERATURE, TIME, VISCOSITY, VOLUME
 
 # 3e-8 m²/s: a coefficient in cm²/s with the unit m²/s is above, everything liquid below.
 DIFFUSIONS = Measure(DIFFUSION, 1e-14, 3e-8)
 FLOWS = Measure(FLOW, 1e-14, 1e-5)
 
-_BY_HAND = 'viscosity = "0.9 mPa s", and diffusion = "1.0e-9 m^2/s" of the solutes'
+TEMPERATURES = Measure(TEMPERATURE, 233.15, 523.15)
+VISCOSITIES = Measure(VISCOSITY, 1e-5, 1.0)
+MOBILE_PHASE = Key("mobile_phase", Text(200), 'liquids in volume parts, "acetonitrile/water 60:40"')
+
+AT_KEYS = (
+    Key("temperature", TEMPERATURES, "temperature at which the diffusion coefficient was known"),
+    MOBILE_PHASE,
+    Key("viscosity", VISCOSITIES, "viscosity of that liquid, in place of its composition"),
+)
 
 FILE_KEYS = {
     key.name: key
     for key in (
         Key("title", Text(120), "what the report is headed with"),
         Key("flow", FLOWS, "flow rate through the column"),
-        Key("viscosity", Measure(VISCOSITY, 1e-5, 1.0), "viscosity of the mobile phase"),
+        Key("viscosity", VISCOSITIES, "viscosity of the mobile phase"),
         Key("density", Measure(DENSITY, 400.0, 3000.0), "density of the mobile phase"),
-        Key("temperature", Measure(TEMPERATURE, 233.15, 523.15), "temperature of everything"),
+        MOBILE_PHASE,
+        Key("temperature", TEMPERATURES, "temperature of everything; with ambient, of the columns"),
         Key("diffusion", DIFFUSIONS, "diffusion coefficient of peaks that give none"),
         Key("pump_pressure", Measure(PRESSURE, 1e4, 3e8), "measured pressure at the pump"),
         Key("note", Text(2000), "anything"),
-        Key("mobile_phase", Later(_BY_HAND), "composition of the mobile phase"),
-        Key("ambient", Later("temperature"), "temperature outside the oven"),
+        Key("ambient", TEMPERATURES, "temperature of what is not in the oven: of all parts but the columns"),
+        Key("catalogs", Texts('catalogs = ["mine.toml"]'), "catalogs of your own"),
         Key("gradient", Later(), "gradient elution"),
         Key("sample_solvent", Later(), "solvent of the sample"),
         Key("require", Later(), "requirement to be met"),
-        Key("catalogs", Later(), "catalogs of your own"),
         Key("runs", Later("one file for each run"), "several runs"),
         Key("bend_radius", Later(), "radius of the tubes' bends"),
         Key("coil_diameter", Later(), "diameter of the tubes' coils"),
@@ -44,10 +52,14 @@ PEAK_KEYS = {
         Key("diffusion", DIFFUSIONS, "diffusion coefficient in the mobile phase"),
         Key("plates", Number(1, 1e8, "a plate number"), "the columns' plates for this peak"),
         Key("note", Text(2000), "anything"),
-        Key("solute", Later('diffusion = "1.0e-9 m^2/s"'), "name of the solute"),
-        Key("molar_mass", Later('diffusion = "1.0e-9 m^2/s"'), "molar mass of the solute"),
-        Key("molecule", Later('diffusion = "1.0e-9 m^2/s"'), "small, globular or chain"),
-        Key("at", Later("diffusion in this mobile phase"), "conditions of the diffusion"),
+        Key(
+            "at",
+            Table(AT_KEYS, 'at = { mobile_phase = "water", temperature = "25 degC" }'),
+            "conditions at which the diffusion coefficient is known",
+        ),
+        Key("solute", Text(60), "name of the solute in the catalog, in place of its diffusion coefficient"),
+        Key("molar_mass", Measure(MOLAR_MASS, 2e-3, 1e5), "molar mass, in place of the diffusion coefficient"),
+        Key("molecule", Choice(("small", "globular", "chain")), "what the molar mass is that of"),
         Key("k_start", Later("k"), "retention factor at the start of the gradient"),
         Key("S", Later("k"), "slope of log k with composition"),
         Key("k_in_sample", Later(), "retention factor in the sample's solvent"),
@@ -74,5 +86,9 @@ OTHER_WORDS = {
     "temp": "temperature", "pressure": "pump_pressure", "parts": "path", "part": "path", "peak": "peaks",
     "retention_time": "retention", "rt": "retention", "tr": "retention", "k_prime": "k",
     "retention_factor": "k", "D": "diffusion", "dm": "diffusion", "pressure_limit": "max_pressure",
+    "mw": "molar_mass", "molecular_weight": "molar_mass", "molar_weight": "molar_mass", "mass": "molar_mass",
+    "analyte": "solute", "compound": "solute", "substance": "solute", "oven": "temperature",
+    "column_temperature": "temperature", "room_temperature": "ambient", "room": "ambient",
+    "catalogue": "catalogs", "catalogues": "catalogs", "catalog": "catalogs",
     "limit": "max_pressure", "pmax": "max_pressure", "label": "name",
 }  # fmt: skip

@@ -6,6 +6,7 @@ import re
 from dataclasses import dataclass, field
 from typing import TYPE_CHECKING
 
+from xcol.catalogs import Catalogs
 from xcol.errors import Fault, InputError, Place
 from xcol.flowpath.model import Assumption
 from xcol.units import plain, quote
@@ -38,9 +39,9 @@ class Findings:
         if text not in self.warnings:
             self.warnings.append(text)
 
-    def assume(self, short: str, text: str) -> None:
+    def assume(self, short: str, text: str, *, leads: bool = False) -> None:
         """Add an assumption, once."""
-        assumption = Assumption(short, text)
+        assumption = Assumption(short, text, leads)
         if assumption not in self.assumed:
             self.assumed.append(assumption)
 
@@ -60,8 +61,10 @@ class Draft:
     file: str
     lines: dict[str, int]  # of each key; "" of the part itself
     findings: Findings
+    catalogs: Catalogs = field(default_factory=Catalogs)
     values: dict[str, Value] = field(default_factory=dict)
     written: dict[str, str] = field(default_factory=dict)  # values as typed, for messages
+    inner: dict[str, Draft] = field(default_factory=dict)  # its tables
 
     def number(self, key: str) -> float | None:
         """Return a number in SI units, None where the key was not given."""
@@ -72,6 +75,17 @@ class Draft:
         """Return a text, None where the key was not given."""
         value = self.values.get(key)
         return value if isinstance(value, str) else None
+
+    def texts(self, key: str) -> tuple[str, ...]:
+        """Return a list of texts, empty where the key was not given."""
+        value = self.values.get(key)
+        return value if isinstance(value, tuple) else ()
+
+    def table(self, key: str) -> Draft:
+        """Return the draft of an inner table of this part or peak; faults name the table's place."""
+        line = self.lines.get(key) or self.lines.get("")
+        lines = {"": line} if line else {}
+        return Draft(self.kind, self.name, self.position, self.file, lines, self.findings, self.catalogs)
 
     @property
     def label(self) -> str:
@@ -102,12 +116,12 @@ class Draft:
         """Add a warning that names the part."""
         self.findings.warn(f"{self.label}: {text}")
 
-    def assume(self, short: str, text: str) -> None:
+    def assume(self, short: str, text: str, *, leads: bool = False) -> None:
         """Add an assumption that names the part."""
-        self.findings.assume(short, f"{self.label}: {text}")
+        self.findings.assume(short, f"{self.label}: {text}", leads=leads)
 
 
-def _order(fault: Fault) -> tuple[int, int]:
-    """Order faults by line, and on one line by the part's or peak's number."""
+def _order(fault: Fault) -> tuple[str, int, int]:
+    """Order faults by file and line, and on one line by the part's or peak's number."""
     number = re.search(r"\d+", fault.place.part)
-    return fault.place.line or 0, int(number[0]) if number else 0
+    return fault.place.file, fault.place.line or 0, int(number[0]) if number else 0

@@ -24,6 +24,10 @@ class PressureRange:
         """Add drops in series: the ends add, since one bed porosity is likely off like the next."""
         return PressureRange(self.value + other.value, self.low + other.low, self.high + other.high)
 
+    def widened(self, uncertainty: float) -> PressureRange:
+        """Return the range with the relative uncertainty of a factor, the viscosity, on top of it."""
+        return PressureRange(self.value, self.low / (1 + uncertainty), self.high * (1 + uncertainty))
+
 
 def exactly(value: float) -> PressureRange:
     """Return a drop [Pa] that carries no range of its own."""

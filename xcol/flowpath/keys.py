@@ -22,7 +22,7 @@ from xcol.units import (
     write,
 )
 
-Value = float | str | bool
+Value = float | str | bool | tuple[str, ...]
 
 
 class Reader(Protocol):
@@ -178,6 +178,34 @@ class Choice:
         listed = ", ".join(f'"{option}"' for option in self.options)
         near = nearest(word, self.options)
         raise UnitError(described(raw), f"one of {listed}", f'"{near or self.options[0]}"')
+
+
+@dataclass(frozen=True)
+class Texts:
+    """A list of texts, or one text for a list of one."""
+
+    example: str
+
+    def __call__(self, raw: object) -> tuple[str, ...]:
+        """Return the texts."""
+        listed = [raw] if isinstance(raw, str) else raw
+        if not isinstance(listed, list) or not all(isinstance(one, str) and one.strip() for one in listed):
+            raise UnitError(described(raw), "a list of texts", self.example)
+        return tuple(str(one) for one in listed)
+
+
+@dataclass(frozen=True)
+class Table:
+    """An inner table, ``{ key = value, ... }``, with keys of its own; its values are read as a draft of its own."""
+
+    keys: tuple[Key, ...]
+    example: str
+
+    def __call__(self, raw: object) -> Value:
+        """Raise ``UnitError`` for what is not a table; the keys are read by whoever has the draft."""
+        if not isinstance(raw, dict):
+            raise UnitError(described(raw), "a table in braces", self.example)
+        return True
 
 
 @dataclass(frozen=True)

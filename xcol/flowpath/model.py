@@ -12,6 +12,7 @@ if TYPE_CHECKING:
 
     from xcol.errors import Place
     from xcol.flowpath.elements import Element
+    from xcol.liquids.estimate import Estimate
     from xcol.units import Quantity
 
 
@@ -26,10 +27,14 @@ class Reading:
 
 @dataclass(frozen=True)
 class Assumption:
-    """Something that the file does not say: ``short`` for a line of several, ``text`` in full."""
+    """Something that the file does not say: ``short`` for a line of several, ``text`` in full.
+
+    ``leads``: it stands for a number that was estimated, and is named before what is only simplified.
+    """
 
     short: str
     text: str
+    leads: bool = False
 
 
 @dataclass(frozen=True)
@@ -45,6 +50,9 @@ class Part:
     drop: float | None = None
     max_pressure: float | None = None
     max_drop: float | None = None
+    temperature: float | None = None  # K; None where nobody entered any
+    viscosity: Estimate | None = None  # Pa s, of what flows at this temperature
+    mobility: float = 1.0  # T/η here over T/η at the columns: what an estimated D changes by
 
     @property
     def label(self) -> str:
@@ -58,10 +66,19 @@ class Peak:
 
     name: str
     k: float | None
-    diffusion: float  # m²/s
+    estimate: Estimate  # of the diffusion coefficient [m²/s] at the columns' temperature
     place: Place
     plates: float | None = None
     retention: float | None = None  # s, as recorded at the first detector, where the file gives it
+
+    @property
+    def diffusion(self) -> float:
+        """Diffusion coefficient [m²/s] at the columns' temperature."""
+        return self.estimate.value
+
+    def diffusion_in(self, part: Part) -> float:
+        """Diffusion coefficient [m²/s] at a part's temperature; one that was entered is the same everywhere."""
+        return self.diffusion if self.estimate.entered else self.diffusion * part.mobility
 
 
 @dataclass(frozen=True)
@@ -70,9 +87,10 @@ class Instrument:
 
     title: str
     flow: float  # m³/s
-    viscosity: float | None  # Pa s
+    mobile_phase: str  # as read, "" where none was entered
+    viscosity: Estimate | None  # Pa s, at the columns' temperature
     density: float  # kg/m³
-    temperature: float | None  # K
+    temperature: float | None  # K, of the columns
     pump_pressure: float | None  # Pa
     parts: tuple[Part, ...]
     peaks: tuple[Peak, ...]

@@ -5,10 +5,11 @@ from __future__ import annotations
 import re
 from collections.abc import Iterable
 
+from xcol.catalogs import Catalogs
 from xcol.flowpath import slips
 from xcol.flowpath.file_keys import FILE_KEYS, OTHER_WORDS
 from xcol.flowpath.findings import Draft, Findings
-from xcol.flowpath.keys import Key, Later, Measure, as_typed, described, nearest
+from xcol.flowpath.keys import Key, Later, Measure, Table, as_typed, described, nearest
 from xcol.flowpath.kinds import KINDS, KINDS_LATER, Kind
 from xcol.flowpath.model import Part, Reading
 from xcol.units import UnitError, plain, quote
@@ -17,10 +18,10 @@ ANY_KIND = (*KINDS, *KINDS_LATER)
 
 
 def read_part(
-    raw: object, position: int, file: str, lines: dict[str, int], findings: Findings
+    raw: object, position: int, file: str, lines: dict[str, int], findings: Findings, catalogs: Catalogs
 ) -> tuple[str, Part | None]:
     """Return the entry's kind ("" if unknown) and the part, None where faults were found in it."""
-    draft = Draft("", "", position, file, lines, findings)
+    draft = Draft("", "", position, file, lines, findings, catalogs)
     if not isinstance(raw, dict):
         draft.fault(
             "",
@@ -54,6 +55,7 @@ def read_part(
         drop=draft.number("drop"),
         max_pressure=draft.number("max_pressure"),
         max_drop=draft.number("max_drop"),
+        temperature=draft.number("temperature"),
     )
 
 
@@ -67,6 +69,14 @@ def read_keys(raw: dict[str, object], keys: Iterable[Key], draft: Draft) -> None
             draft.values[key.name] = key.read(raw[key.name])
         except UnitError as error:
             draft.findings.fault_of(draft.place(key.name), error)
+            continue
+        if isinstance(key.read, Table):
+            inner = draft.table(key.name)
+            table = raw[key.name]
+            if isinstance(table, dict):
+                read_keys(table, key.read.keys, inner)
+                refuse_unknown(table, key.read.keys, (), inner)
+            draft.inner[key.name] = inner
 
 
 def refuse_unknown(raw: dict[str, object], keys: Iterable[Key], others: tuple[str, ...], draft: Draft) -> None:
@@ -150,6 +160,9 @@ def _read_size(raw: object, kind: Kind, draft: Draft) -> None:
             sizes = kind.size(text)
         except UnitError as problem:
             error = problem
+            if not started and kind.from_catalog and (sizes := kind.from_catalog(draft, text)):
+                _take_sizes(sizes, started, kind, draft)
+                return
         else:
             _take_sizes(sizes, started, kind, draft)
             return
@@ -230,5 +243,9 @@ def _name(raw: dict[str, object], kind: Kind) -> str:
 
 def _readings(kind: Kind, draft: Draft) -> Iterable[Reading]:
     for key in kind.all_keys:
-        if key.name in draft.values and key.name != "name":
-            yield Reading(key.name, draft.values[key.name], key.quantity)
+        value = draft.values.get(key.name)
+        if key.name in draft.inner:
+            shown = ", ".join(f"{word} = {typed}" for word, typed in draft.inner[key.name].written.items())
+            yield Reading(key.name, shown)
+        elif key.name != "name" and isinstance(value, float | int | str):
+            yield Reading(key.name, value, key.quantity)

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from typing import TYPE_CHECKING
+
 from xcol.flowpath import slips
 from xcol.flowpath.chain import dead_time, delays, transit
 from xcol.flowpath.file_keys import PEAK_KEYS
@@ -10,13 +12,19 @@ from xcol.flowpath.keys import described
 from xcol.flowpath.locate import KeyLines
 from xcol.flowpath.model import Instrument, Peak
 from xcol.flowpath.part_reader import read_keys, refuse_unknown
-from xcol.units import TIME, plain, write
+from xcol.flowpath.peak_diffusion import WAYS, peak_diffusion, typical
+from xcol.liquids.estimate import Estimate, as_entered
+from xcol.units import DIFFUSION, TIME, plain, write
+
+if TYPE_CHECKING:
+    from xcol.catalogs import Catalogs
+    from xcol.flowpath.conditions import Conditions
 
 DEFAULT_K = (1.0, 2.0, 5.0, 10.0)
 _POSITIONS = ("k", "retention", "elution_volume")
 
 
-def read_peaks(raw: object, file: str, lines: KeyLines, findings: Findings) -> list[Draft]:
+def read_peaks(raw: object, file: str, lines: KeyLines, findings: Findings, catalogs: Catalogs) -> list[Draft]:
     """Read the entries of ``peaks`` (None: there are none) as drafts; faults go to the findings."""
     if raw is None:
         return []
@@ -26,12 +34,14 @@ def read_peaks(raw: object, file: str, lines: KeyLines, findings: Findings) -> l
         return []
     drafts = []
     for index, entry in enumerate(raw):
-        draft = Draft("peak", "", index + 1, file, lines.of("peaks", index), findings)
+        draft = Draft("peak", "", index + 1, file, lines.of("peaks", index), findings, catalogs)
         if not isinstance(entry, dict):
             draft.fault("", "a peak in braces, { k = 2 }", "put the peak in { }", described(entry))
             continue
         if isinstance(name := entry.get("name"), str):
             draft.name = plain(name)[:60]
+        elif isinstance(solute := entry.get("solute"), str):
+            draft.name = plain(solute)[:60]
         read_keys(entry, PEAK_KEYS.values(), draft)
         refuse_unknown(entry, PEAK_KEYS.values(), (), draft)
         drafts.append(draft)
@@ -62,38 +72,77 @@ def check_positions(drafts: list[Draft], has_column: bool) -> None:
 
 
 def check_diffusion(drafts: list[Draft], has_peaks: bool, top: Draft) -> None:
-    """Report peaks without a diffusion coefficient, in a file that gives none for all of them."""
+    """Report peaks of which nothing tells the diffusion coefficient, in a file that gives none for all of them.
+
+    With a mobile phase something is assumed in its place.
+    """
+    if "diffusion" in top.written or "mobile_phase" in top.written:
+        return
     expected = "the solute's diffusion coefficient, here or once at the top of the file"
-    suggestion = 'diffusion = "1.0e-9 m^2/s" (small molecules in water: 0.5 to 1.5e-9)'
+    suggestion = (
+        'diffusion = "1.0e-9 m^2/s" (small molecules in water: 0.5 to 1.5e-9), or mobile_phase = '
+        '"acetonitrile/water 60:40" with the peak\'s solute or molar_mass'
+    )
     if not has_peaks:
         top.fault("diffusion", expected, suggestion, "neither peaks nor a diffusion coefficient")
     for draft in drafts:
-        if not {"diffusion", "solute", "molar_mass"} & set(draft.written):
+        if not set(WAYS) & set(draft.written):
             draft.fault("diffusion", expected, suggestion)
 
 
-def peaks_of(drafts: list[Draft], instrument: Instrument, diffusion: float, findings: Findings) -> tuple[Peak, ...]:
+def estimates_of(drafts: list[Draft], top: Draft, conditions: Conditions) -> list[Estimate | None]:
+    """Return the diffusion coefficient of each peak, or of the peaks that are assumed where there are none.
+
+    The file's own ``diffusion`` serves the peaks that give none; without it something typical is assumed
+    (``check_diffusion`` has seen to it that there is a mobile phase). None: faults were found.
+    """
+    value = top.number("diffusion")
+    usual = as_entered(value) if value is not None else typical(conditions)
+    if not drafts:
+        if usual:
+            _say(usual, "all peaks", top)
+        return [usual]
+    found = []
+    for draft in drafts:
+        given = {*WAYS, "at", "molecule"} & set(draft.written)
+        estimate = peak_diffusion(draft, conditions) if given else usual
+        if estimate:
+            _say(estimate, f'peak "{draft.name}"' if draft.name else draft.label, top)
+        found.append(estimate)
+    return found
+
+
+def _say(estimate: Estimate, whose: str, top: Draft) -> None:
+    """List a coefficient that was not entered among what is assumed."""
+    if not estimate.entered:
+        shown = write(estimate.value, "m^2/s", DIFFUSION).replace("^2", "²")
+        top.findings.assume("D estimated", f"{whose}: D = {shown}, {estimate.stated}", leads=True)
+
+
+def peaks_of(
+    drafts: list[Draft], instrument: Instrument, estimates: list[Estimate | None], findings: Findings
+) -> tuple[Peak, ...]:
     """Return the peaks, those given by their recorded place with the transit taken off.
 
-    ``diffusion`` [m²/s] serves the peaks that have none (``check_diffusion`` has seen to it that there
-    is one). Without drafts the peaks are k = 1, 2, 5, 10, or one unnamed band where there is no column.
+    ``estimates`` are their diffusion coefficients, one for each draft. Without drafts the peaks are
+    k = 1, 2, 5, 10, or one unnamed band where there is no column.
     """
     has_column = any(part.kind == "column" for part in instrument.parts)
     if not drafts:
+        estimate = estimates[0]
+        if estimate is None:
+            return ()
         if not has_column:
-            return (Peak("band", None, diffusion, instrument.place),)
+            return (Peak("band", None, estimate, instrument.place),)
         findings.assume("peaks k 1, 2, 5, 10", "no peaks entered: k = 1, 2, 5 and 10 are shown")
-        return tuple(Peak(f"k = {k:g}", k, diffusion, instrument.place) for k in DEFAULT_K)
-    peaks = (_peak(draft, instrument, diffusion) for draft in drafts)
-    return tuple(peak for peak in peaks if peak is not None)
+        return tuple(Peak(f"k = {k:g}", k, estimate, instrument.place) for k in DEFAULT_K)
+    found = (_peak(draft, instrument, estimate) for draft, estimate in zip(drafts, estimates, strict=True) if estimate)
+    return tuple(peak for peak in found if peak is not None)
 
 
-def _peak(draft: Draft, instrument: Instrument, default: float) -> Peak | None:
-    diffusion = draft.number("diffusion")
-    if diffusion is None:
-        diffusion = default
-    if diffusion < 1e-12:
-        draft.warn(f"diffusion {diffusion:g} m²/s is very slow: m^2/s or cm^2/s?")
+def _peak(draft: Draft, instrument: Instrument, estimate: Estimate) -> Peak | None:
+    if estimate.value < 1e-12:
+        draft.warn(f"diffusion {estimate.value:.3g} m²/s is very slow: m^2/s or cm^2/s?")
     plates = draft.number("plates")
     if plates is not None and _too_many(draft, plates, instrument):
         return None
@@ -109,7 +158,7 @@ def _peak(draft: Draft, instrument: Instrument, default: float) -> Peak | None:
     if k is not None and k > 100:
         draft.warn(f"k = {k:.4g} is unusual: is the unit of its retention, or the void volume, meant?")
     name = draft.name or (f"k = {k:.3g}" if k is not None else f"peak {draft.position}")
-    return Peak(name, k, diffusion, draft.place(), plates, retention)
+    return Peak(name, k, estimate, draft.place(), plates, retention)
 
 
 def _k_from(retention: float, draft: Draft, instrument: Instrument) -> float | None:

@@ -2,37 +2,47 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterable
 from dataclasses import replace
-from typing import Any
+from pathlib import Path
+from typing import TYPE_CHECKING, Any
 
-from xcol.catalogs import usual_packing
 from xcol.errors import InputError, Place
 from xcol.flowpath import slips
+from xcol.flowpath.catalog_files import read_catalogs
+from xcol.flowpath.conditions import Conditions, check_range, density_of, read_conditions
 from xcol.flowpath.elements import Bed, Cell
 from xcol.flowpath.file_keys import FILE_KEYS
 from xcol.flowpath.findings import Draft, Findings
 from xcol.flowpath.keys import described
 from xcol.flowpath.locate import KeyLines, key_lines
-from xcol.flowpath.model import Assumption, Instrument, Part
+from xcol.flowpath.model import Assumption, Instrument, Part, Peak
 from xcol.flowpath.part_reader import read_keys, read_part, refuse_unknown
-from xcol.flowpath.peak_reader import check_diffusion, check_positions, peaks_of, read_peaks
+from xcol.flowpath.peak_reader import check_diffusion, check_positions, estimates_of, peaks_of, read_peaks
 from xcol.flowpath.source import read_text
 from xcol.flowpath.toml_text import load
+from xcol.units import VISCOSITY, write
+
+if TYPE_CHECKING:
+    from xcol.catalogs import Catalogs
+    from xcol.liquids.estimate import Estimate
 
 MOST_PARTS = 100
-_DENSITY = 1000.0  # kg/m³, for the Reynolds number only
 
 
-def read(name: str) -> Instrument:
-    """Read a path file ("-": standard input).
+def read(name: str, catalogs: Iterable[str] = ()) -> Instrument:
+    """Read a path file ("-": standard input), with catalog files of the user's own.
 
     Raises ``InputError`` with every fault that was found, each with its place.
     """
-    return parse(read_text(name), "standard input" if name == "-" else name)
+    return parse(read_text(name), "standard input" if name == "-" else name, catalogs)
 
 
-def parse(text: str, file: str) -> Instrument:
-    """Read the text of a path file; ``file`` is its name in messages."""
+def parse(text: str, file: str, catalogs: Iterable[str] = ()) -> Instrument:
+    """Read the text of a path file; ``file`` is its name in messages, and names its folder.
+
+    ``catalogs`` are names of catalog files, whose rows stand before those that the file names itself.
+    """
     findings = Findings()
     data, mended, faults = load(text, file)
     findings.faults += faults
@@ -43,19 +53,39 @@ def parse(text: str, file: str) -> Instrument:
     top = Draft("file", "", 0, file, lines.of(), findings)
     read_keys(data, FILE_KEYS.values(), top)
     refuse_unknown(data, FILE_KEYS.values(), ("path", "peaks"), top)
+    beside = [str(Path(file).parent / name) for name in top.texts("catalogs")]
+    top.catalogs = read_catalogs([*beside, *catalogs], findings)
     if "flow" not in data:
         _report_missing_flow(data, file, lines, findings)
 
-    kinds, parts = _read_path(data, file, lines, findings)
-    drafts = read_peaks(data.get("peaks"), file, lines, findings)
+    kinds, parts = _read_path(data, file, lines, findings, top.catalogs)
+    drafts = read_peaks(data.get("peaks"), file, lines, findings, top.catalogs)
     check_positions(drafts, "column" in kinds or not kinds)
-    if "diffusion" not in data:
-        check_diffusion(drafts, data.get("peaks") not in (None, []), top)
+    check_diffusion(drafts, data.get("peaks") not in (None, []), top)
+    conditions = read_conditions(top, "column" in kinds)
+    estimates = _estimates(conditions, parts, drafts, top)
     flow = top.number("flow")
     if flow is not None and findings.faults:  # what can be told all the same
         slips.flow_in_columns(flow, parts, top.place("flow"), findings)
     findings.raise_faults()
-    return _instrument(top, tuple(parts), drafts, findings)
+    if conditions.phase is not None:
+        slips.of_materials(parts, conditions.phase, top.catalogs, findings)
+    instrument = _instrument(top, conditions, [conditions.applied_to(part) for part in parts])
+    return _with_peaks(instrument, drafts, estimates, top)
+
+
+def _estimates(conditions: Conditions, parts: list[Part], drafts: list[Draft], top: Draft) -> list[Estimate | None]:
+    """Return the peaks' diffusion coefficients; none of them where the liquid is not known at a temperature."""
+    places = {conditions.temperature: top.place("temperature"), conditions.ambient: top.place("ambient")}
+    places |= {part.temperature: part.place for part in parts if part.temperature is not None}
+    phase = conditions.phase if conditions.entered is None else None
+    known = [
+        check_range(phase, temperature, place, top.findings)
+        for temperature, place in places.items()
+        if phase is not None and temperature is not None
+    ]
+    wanted = "mobile_phase" not in top.written or conditions.phase is not None  # or the fault is there already
+    return estimates_of(drafts, top, conditions) if all(known) and wanted else []
 
 
 def _report_missing_flow(data: dict[str, Any], file: str, lines: KeyLines, findings: Findings) -> None:
@@ -74,38 +104,58 @@ def _list(value: object) -> list[Any]:
     return value if isinstance(value, list) else []
 
 
-def _instrument(top: Draft, parts: tuple[Part, ...], drafts: list[Draft], findings: Findings) -> Instrument:
-    density = top.number("density")
-    if density is None:
-        density = _DENSITY
-        findings.assume("density 1000 kg/m3", "density 1000 kg/m³, for the Reynolds number only")
-    instrument = Instrument(
+def _instrument(top: Draft, conditions: Conditions, parts: list[Part]) -> Instrument:
+    return Instrument(
         title=top.text("title") or "",
         flow=top.number("flow") or 0.0,
-        viscosity=top.number("viscosity"),
-        density=density,
-        temperature=top.number("temperature"),
+        mobile_phase=conditions.phase.name if conditions.phase else "",
+        viscosity=conditions.viscosity,
+        density=density_of(top, conditions),
+        temperature=conditions.temperature,
         pump_pressure=top.number("pump_pressure"),
-        parts=parts,
+        parts=tuple(parts),
         peaks=(),
         place=Place(top.file),
     )
+
+
+def _with_peaks(
+    instrument: Instrument, drafts: list[Draft], estimates: list[Estimate | None], top: Draft
+) -> Instrument:
+    findings = top.findings
     _notes_on_names(instrument, findings)
     slips.of_path(instrument, top.place("flow"), findings)
-    peaks = peaks_of(drafts, instrument, top.number("diffusion") or 0.0, findings)
+    peaks = peaks_of(drafts, instrument, estimates, findings)
     _warn_of_twins([peak.name for peak in peaks], "peaks", findings)
     _notes_on_beds(instrument, findings)
-    findings.assume(
-        "viscosity and D as entered",
-        "viscosity and diffusion coefficients are taken as entered, at whatever temperature",
-    )
+    _notes_on_viscosity(instrument, peaks, findings)
     findings.raise_faults()
     return replace(
         instrument,
         peaks=peaks,
-        assumed=(*_ends_of_ranges(instrument), *findings.assumed),
+        assumed=(
+            *(found for found in findings.assumed if found.leads),
+            *_ends_of_ranges(instrument),
+            *(found for found in findings.assumed if not found.leads),
+        ),
         warnings=tuple(findings.warnings),
     )
+
+
+def _notes_on_viscosity(instrument: Instrument, peaks: tuple[Peak, ...], findings: Findings) -> None:
+    """Say which numbers are the user's own, and which come from the mobile phase."""
+    own = []
+    if (viscosity := instrument.viscosity) is not None:
+        if viscosity.entered:
+            own.append("viscosity")
+        else:
+            shown = write(viscosity.value, "mPa s", VISCOSITY)
+            findings.assume("viscosity computed", f"viscosity {shown}: {viscosity.stated}", leads=True)
+    own += ["diffusion coefficients"] if any(peak.estimate.entered for peak in peaks) else []
+    if own:
+        short = "D" if len(own) == 1 and own[0] != "viscosity" else "viscosity" if len(own) == 1 else "viscosity and D"
+        verb = "is" if own == ["viscosity"] else "are"
+        findings.assume(f"{short} as entered", f"{' and '.join(own)} {verb} taken as entered, at whatever temperature")
 
 
 def _notes_on_names(instrument: Instrument, findings: Findings) -> None:
@@ -138,7 +188,7 @@ def _notes_on_beds(instrument: Instrument, findings: Findings) -> None:
                 findings.assume(
                     f"bed {value:g}",
                     f"{part.label}: interstitial porosity {value:g} ({low:g} to {high:g}), for the pressure "
-                    f"drop only; {usual_packing().source}",
+                    f"drop only; {bed.porosity_from}",
                 )
 
 
@@ -157,7 +207,9 @@ def _ends_of_ranges(instrument: Instrument) -> list[Assumption]:
     return ends
 
 
-def _read_path(data: dict[str, Any], file: str, lines: KeyLines, findings: Findings) -> tuple[list[str], list[Part]]:
+def _read_path(
+    data: dict[str, Any], file: str, lines: KeyLines, findings: Findings, catalogs: Catalogs
+) -> tuple[list[str], list[Part]]:
     """Return the kinds of all entries, in order, and the parts that could be read."""
     entries = data.get("path")
     place = Place(file, lines.line(("path",)), "", "path")
@@ -187,7 +239,8 @@ def _read_path(data: dict[str, Any], file: str, lines: KeyLines, findings: Findi
         findings.fault(place, f"{len(entries)} parts", f"at most {MOST_PARTS}", "fewer parts")
         return [], []
     found = [
-        read_part(entry, index + 1, file, lines.of("path", index), findings) for index, entry in enumerate(entries)
+        read_part(entry, index + 1, file, lines.of("path", index), findings, catalogs)
+        for index, entry in enumerate(entries)
     ]
     kinds = [kind for kind, _ in found]
     _check_kinds(kinds, entries, place, lines, findings)

@@ -9,16 +9,18 @@ import math
 from collections.abc import Callable, Iterable
 from typing import TYPE_CHECKING
 
-from xcol.catalogs import tubing, usual_packing
+from xcol.catalogs import MATERIALS, SOLVENTS, TUBING
 from xcol.flowpath.elements import Bore, Cell
 from xcol.flowpath.hydraulics import LAMINAR_LIMIT, reynolds_number
 from xcol.flowpath.model import beds_of
 from xcol.units import FLOW, LENGTH, PRESSURE, VISCOSITY, VOLUME, significant, write
 
 if TYPE_CHECKING:
+    from xcol.catalogs import Catalogs
     from xcol.errors import Place
     from xcol.flowpath.findings import Draft, Findings
     from xcol.flowpath.model import Instrument, Part
+    from xcol.liquids.mobile_phase import MobilePhase
 
 _OUTSIDE_DIAMETERS = {"1/32 in": 0.0254 / 32, "1/16 in": 0.0254 / 16, "1/8 in": 0.0254 / 8}
 _COLUMN_RADII = {1.05e-3: 2.1e-3, 1.6e-3: 3.2e-3, 2.3e-3: 4.6e-3}
@@ -48,7 +50,22 @@ def of_path(instrument: Instrument, flow_place: Place, findings: Findings) -> No
     if instrument.viscosity is None:
         findings.warn("no viscosity entered: pressures and Reynolds numbers are not computed")
     else:
-        _viscosity(instrument, instrument.viscosity, findings)
+        _viscosity(instrument, instrument.viscosity.value, findings)
+
+
+def of_materials(parts: Iterable[Part], phase: MobilePhase, catalogs: Catalogs, findings: Findings) -> None:
+    """Warn of a tube whose material is usually kept away from one of the liquids."""
+    for part in parts:
+        named = next((reading.value for reading in part.readings if reading.key == "material"), None)
+        material = catalogs.find(MATERIALS, named) if isinstance(named, str) else None
+        away = (
+            {found.name for word in material.avoid if (found := catalogs.find(SOLVENTS, word))} if material else set()
+        )
+        met = [c.solvent.name for c in phase.components if c.solvent.name in away]
+        if material and met:
+            findings.warn(
+                f"{part.label}: {material.name} is usually kept away from {' and '.join(met)}: check with its maker"
+            )
 
 
 def flow_in_columns(flow: float, parts: Iterable[Part], place: Place, findings: Findings) -> None:
@@ -115,11 +132,12 @@ def _tube(draft: Draft) -> None:
     elif bore > WIDEST_USUAL_BORE:
         draft.warn(f"{shown} is wide for a connecting tube: o.d. for bore, or another unit?")
     elif _says_millimetres(draft) and any(
-        row.reel_inches and math.isclose(millimetres, row.reel_inches, rel_tol=1e-6) for row in tubing()
+        row.reel_inches and math.isclose(millimetres, row.reel_inches, rel_tol=1e-6)
+        for row in draft.catalogs.rows(TUBING)
     ):
         draft.warn(f"{shown}: reels show this number in inches; did you mean {millimetres:g} in?")
     else:
-        stock = [row.bore for row in tubing()]
+        stock = sorted(row.bore for row in draft.catalogs.rows(TUBING))
         if not any(math.isclose(bore, known, rel_tol=0.06) for known in stock):
             for known in stock:
                 if math.isclose(2 * bore, known, rel_tol=0.06):
@@ -166,7 +184,7 @@ def _column(draft: Draft) -> None:
 
 
 def _porosities(draft: Draft, bore: float, length: float) -> None:
-    usual = usual_packing()
+    usual = draft.catalogs.usual_packing()
     low, high = usual.interstitial_range
     total, void = draft.number("total_porosity"), draft.number("void_volume")
     if void is not None:
@@ -294,8 +312,9 @@ def _viscosity(instrument: Instrument, viscosity: float, findings: Findings) -> 
         shown = write(viscosity, "mPa s", VISCOSITY)
         findings.warn(f"a viscosity of {shown} is unusual: 0.2 to 3 mPa s is usual; Pa s or mPa s?")
     for part in instrument.parts:
+        here = part.viscosity.value if part.viscosity else viscosity
         for bore in (element.bore for element in part.elements if isinstance(element, Bore)):
-            number = float(reynolds_number(instrument.flow, bore, viscosity, instrument.density))
+            number = float(reynolds_number(instrument.flow, bore, here, instrument.density))
             if number > LAMINAR_LIMIT:
                 findings.warn(
                     f"{part.label}: Reynolds number {number:.0f} is above {LAMINAR_LIMIT:.0f}: the flow is not "

@@ -2,50 +2,138 @@
 
 from __future__ import annotations
 
-from xcol.catalogs import packings, usual_packing
-from xcol.filters.column import void_volume
-from xcol.flowpath.elements import Bed
+from typing import TYPE_CHECKING
+
+from xcol.catalogs import COLUMNS, PACKINGS, VELOCITIES
+from xcol.filters.column import PlateHeightCurve, void_volume
+from xcol.flowpath.elements import Bed, BestAndWorst
+from xcol.flowpath.file_keys import FLOWS
 from xcol.flowpath.findings import Draft
-from xcol.flowpath.keys import Key, Later, Measure, Number
+from xcol.flowpath.keys import Choice, Key, Later, Measure, Number, Table, Text
 from xcol.flowpath.kinds.table import DROP, Elements, Kind, must
 from xcol.flowpath.shorthand import column_size, length_first
-from xcol.units import LENGTH, RATIO, VOLUME
+from xcol.units import LENGTH, RATIO, VOLUME, significant
+
+if TYPE_CHECKING:
+    from xcol.catalog_records import Packing
+
+_KNOX_EXAMPLE = "knox = { A = 0.9, B = 1.75, C = 0.065 }"
 
 
 def _column(draft: Draft) -> Elements:
     bore, length = must(draft, "bore"), must(draft, "length")
-    plates = draft.number("plates")
-    if plates is None:
-        draft.fault(
-            "plates",
-            "the column's plate number for your analyte",
-            "plates = 11000, from the certificate or a measurement (as a first look, N is near "
-            "length / (2 to 2.5 particle diameters))",
-        )
     written = draft.written["column"]
-    if "bore" not in draft.written and length_first(written):
+    if "bore" not in draft.written and not draft.values.get("from_catalog") and length_first(written):
         draft.warn(f'"{written}" has the length first: read as bore {bore * 1e3:g} mm, length {length * 1e3:g} mm')
-    usual = usual_packing()
+    packing = _packing(draft)
+    if packing is None:
+        return ()
+    void = _void_volume(draft, packing, bore, length)
+    bed = draft.number("interstitial_porosity")
+    low, high = (bed, bed) if bed is not None else packing.interstitial_range
+    porosity = (bed or packing.interstitial, low, high)
+    plates, plates_at = draft.number("plates"), draft.number("plates_at")
+    if plates_at is not None and plates is None:
+        draft.fault("plates_at", "plates with it, which hold at this flow", "plates = 11000, or leave plates_at out")
+        return ()
+    curve = None
+    if plates is None or plates_at is not None:
+        total = void / float(void_volume(bore, length, 1.0))
+        curve = _curve(draft, packing, total / porosity[0])
+        if curve is None or not _particle_is_known(draft):
+            return ()
+    return (Bed(bore, length, draft.number("particle"), plates, void, porosity, plates_at, curve, packing.source),)
+
+
+def _packing(draft: Draft) -> Packing | None:
+    """Return the packing that the file names, or the usual one; None with a fault."""
+    named = draft.text("packing")
+    if named is None:
+        return draft.catalogs.usual_packing()
+    packing = draft.catalogs.find(PACKINGS, named)
+    if packing is None:
+        names = tuple(row.name for row in draft.catalogs.rows(PACKINGS))
+        suggestion = f'packing = "{draft.catalogs.near(PACKINGS, named) or names[0]}"'
+        draft.fault("packing", f"one of {', '.join(names)}, or a packing of your own catalog", suggestion)
+    return packing
+
+
+def _void_volume(draft: Draft, packing: Packing, bore: float, length: float) -> float:
     void, total = draft.number("void_volume"), draft.number("total_porosity")
     if void is not None and total is not None:
         draft.fault("total_porosity", "void_volume or total_porosity, not both", "leave one out")
-    if void is None:
-        if total is None:
-            total = usual.total_porosity
-            spans = ", ".join(
-                f"{row.name} {row.total_range[0]:g} to {row.total_range[1]:g}" for row in packings().values()
-            )
-            draft.assume(
-                f"total porosity {total:g}",
-                f"total porosity {total:g} ({spans}): the void volume, and with it all of the column's σ, hangs "
-                f"on it; {usual.source}",
-            )
-        void = float(void_volume(bore, length, total))
-    bed = draft.number("interstitial_porosity")
-    low, high = (bed, bed) if bed is not None else usual.interstitial_range
-    particle = draft.number("particle")
-    porosity = (bed or usual.interstitial, low, high)
-    return (Bed(bore, length, particle, plates or 1.0, void, porosity),)
+    if void is not None:
+        return void
+    if total is None:
+        total = packing.total_porosity
+        others = [packing] if draft.text("packing") else draft.catalogs.rows(PACKINGS)
+        spans = ", ".join(f"{row.name} {row.total_range[0]:g} to {row.total_range[1]:g}" for row in others)
+        draft.assume(
+            f"total porosity {total:g}",
+            f"total porosity {total:g} ({spans}): the void volume, and with it all of the column's σ, hangs "
+            f"on it; {packing.source}",
+        )
+    return float(void_volume(bore, length, total))
+
+
+def _curve(draft: Draft, packing: Packing, total_over_interstitial: float) -> BestAndWorst | None:
+    """Return the reduced plate height curve that the file enters, or the packing's; None with a fault."""
+    velocity, source = packing.velocity, packing.source
+    triples = (packing.knox, packing.knox_best, packing.knox_worst)
+    if entered := draft.inner.get("knox"):
+        a, b, c = (entered.number(key) for key in ("A", "B", "C"))
+        if a is None or b is None or c is None:
+            draft.fault("knox", "all of A, B and C", _KNOX_EXAMPLE, f"{len(entered.values)} of its keys")
+            return None
+        triples = ((a, b, c),) * 3
+        velocity, source = entered.text("velocity") or VELOCITIES[0], "as entered"
+    usual, best, worst = triples
+    if usual is None or best is None or worst is None:
+        draft.fault(
+            "plates",
+            f"the plate number: no reduced plate height curve is known for {packing.name} packings",
+            f"plates = 11000, from the certificate or a measurement, or {_KNOX_EXAMPLE}",
+        )
+        return None
+    ratio = 1.0 if velocity == VELOCITIES[0] else total_over_interstitial
+    which = "u = L/t0" if velocity == VELOCITIES[0] else "interstitial velocity"
+    shown = f"h = {usual[0]:g} ν^1/3 + {usual[1]:g}/ν + {usual[2]:g} ν ({which}; {source})"
+    if draft.number("plates") is None:
+        whose = "" if draft.inner.get("knox") else f" of well packed {packing.name} columns"
+        text = f"no plates entered: N from the reduced plate height{whose}, {shown}, for each peak's D"
+        draft.assume("N estimated", text, leads=True)
+    else:
+        draft.assume(
+            "N scaled",
+            f"plates scaled from the flow at which they hold to this one by {shown}, with each peak's own D",
+            leads=True,
+        )
+    return BestAndWorst(*(PlateHeightCurve(*triple, ratio) for triple in (usual, best, worst)))
+
+
+def _particle_is_known(draft: Draft) -> bool:
+    if draft.number("particle") is not None:
+        return True
+    key = "plates" if draft.number("plates") is None else "plates_at"
+    draft.fault(
+        key,
+        "the plate number, or the particle size for the reduced plate height",
+        'plates = 11000, or the particle in the size, column = "4.6 x 150 mm, 5 um"',
+    )
+    return False
+
+
+def _from_catalog(draft: Draft, name: str) -> dict[str, float]:
+    """Return bore, length and particle of the column format of this name; its packing and plates go to the draft."""
+    row = draft.catalogs.find(COLUMNS, name)
+    if row is None:
+        return {}
+    draft.values.setdefault("packing", row.packing)
+    draft.values["from_catalog"] = True
+    if row.plates is not None:
+        draft.values.setdefault("plates", row.plates)
+        draft.assume("plates of the catalog", f"{significant(row.plates, 6)} plates; {row.file}: {row.source}")
+    return {"bore": row.bore, "length": row.length, "particle": row.particle}
 
 
 COLUMN = Kind(
@@ -57,11 +145,25 @@ COLUMN = Kind(
         Key("length", Measure(LENGTH, 1e-3, 20.0), "length"),
         Key("particle", Measure(LENGTH, 0.1e-6, 0.5e-3), "particle diameter"),
         Key("plates", Number(1, 1e8, "a plate number"), "plate number for your analyte"),
+        Key("plates_at", FLOWS, "flow at which the plates hold, where it is not this one"),
+        Key("packing", Text(60), '"fully porous", "core-shell", or one of your own catalog'),
+        Key(
+            "knox",
+            Table(
+                (
+                    Key("A", Number(0, 10, "a coefficient of ν^1/3"), "of the cube root of the reduced velocity"),
+                    Key("B", Number(0, 100, "a coefficient of 1/ν"), "of its inverse"),
+                    Key("C", Number(0, 10, "a coefficient of ν"), "of the reduced velocity"),
+                    Key("velocity", Choice(VELOCITIES), "hold-up (u = L/t0) or interstitial: the velocity of ν"),
+                ),
+                _KNOX_EXAMPLE,
+            ),
+            "reduced plate height, h = A ν^1/3 + B/ν + C ν",
+        ),
         Key("total_porosity", Measure(RATIO, 0.2, 0.99), "total porosity"),
         Key("void_volume", Measure(VOLUME, 1e-13, 1.0), "void (hold-up) volume"),
         Key("interstitial_porosity", Measure(RATIO, 0.2, 0.6), "porosity between particles"),
         DROP,
-        Key("plates_at", Later(), "flow at which the plates hold"),
         Key("role", Later(), "guard or trap"),
         Key("k_factor", Later(), "retention of this column relative to the peaks' k"),
     ),
@@ -69,4 +171,5 @@ COLUMN = Kind(
     size=column_size,
     elements=_column,
     sizes={},
+    from_catalog=_from_catalog,
 )

@@ -6,6 +6,7 @@ from collections.abc import Callable
 from dataclasses import dataclass
 
 from xcol.flowpath.elements import Element
+from xcol.flowpath.file_keys import TEMPERATURES
 from xcol.flowpath.findings import Draft
 from xcol.flowpath.keys import Key, Later, Measure, Number, Text
 from xcol.units import LENGTH, PRESSURE, VOLUME, Quantity, parse
@@ -26,7 +27,7 @@ COMMON = (
     Key("note", Text(2000), "anything: reel colour, outside diameter, age"),
     Key("max_pressure", LIMITS, "highest pressure allowed at the part's inlet"),
     Key("max_drop", LIMITS, "highest pressure drop allowed across the part"),
-    Key("temperature", Later(), "temperature of this part"),
+    Key("temperature", TEMPERATURES, "temperature of this part, where it differs"),
     Key("flow", Later(), "flow through this part, where it differs"),
     Key("bore_tolerance", Later(), "tolerance of the bore"),
     Key("length_tolerance", Later(), "tolerance of the length"),
@@ -51,6 +52,8 @@ class Kind:
     size: Callable[[str], dict[str, float]] | None
     elements: Callable[[Draft], Elements]
     sizes: dict[str, tuple[str, ...]]  # for each contribution the keys that say how large it is
+    # sizes of the catalog row that has this name, {} without one; the draft takes what else the row says
+    from_catalog: Callable[[Draft, str], dict[str, float]] | None = None
 
     def key(self, name: str) -> Key | None:
         """Return the key of this name, None where this kind has none."""

@@ -1,0 +1,167 @@
+"""What flows, and how warm it is: viscosity at every part, from the mobile phase or as entered."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, replace
+from typing import TYPE_CHECKING
+
+from xcol.flowpath.composition import Composition, read_composition
+from xcol.liquids.estimate import Estimate, as_entered
+from xcol.liquids.mobile_phase import FAR, MobilePhase
+from xcol.units import TEMPERATURE, VISCOSITY, UnitError, write
+
+if TYPE_CHECKING:
+    from xcol.errors import Place
+    from xcol.flowpath.findings import Draft, Findings
+    from xcol.flowpath.model import Part
+
+ROOM = 298.15  # K, where nobody says
+_DENSITY = 1000.0  # kg/m³, where no mobile phase is entered: for the Reynolds number only
+
+
+@dataclass(frozen=True)
+class Conditions:
+    """The liquid and its temperatures [K]: of the columns, and of what stands outside the oven.
+
+    ``entered`` is the viscosity that the file gives [Pa s], taken at every temperature.
+    """
+
+    phase: MobilePhase | None
+    entered: float | None
+    temperature: float | None
+    ambient: float | None
+
+    @property
+    def viscosity(self) -> Estimate | None:
+        """Viscosity at the columns' temperature."""
+        return self.viscosity_at(self.temperature)
+
+    def viscosity_at(self, temperature: float | None) -> Estimate | None:
+        """Viscosity [Pa s] at a temperature, None where nothing is known of it."""
+        if self.entered is not None:
+            return as_entered(self.entered)
+        if self.phase is None or temperature is None:
+            return None
+        return self.phase.viscosity(temperature)
+
+    def temperature_of(self, part: Part) -> float | None:
+        """Temperature of a part: its own, or that of the oven or of the room around it."""
+        if part.temperature is not None:
+            return part.temperature
+        return self.temperature if part.kind == "column" or self.ambient is None else self.ambient
+
+    def applied_to(self, part: Part) -> Part:
+        """Return the part with its temperature, the viscosity there, and what D changes by."""
+        temperature = self.temperature_of(part)
+        here, at_columns = self.viscosity_at(temperature), self.viscosity
+        mobility = 1.0
+        if self.entered is None and here and at_columns and temperature and self.temperature:
+            mobility = (temperature / here.value) / (self.temperature / at_columns.value)
+        return replace(part, temperature=temperature, viscosity=here, mobility=mobility)
+
+
+def read_conditions(top: Draft, has_column: bool) -> Conditions:
+    """Return the conditions that the file's own keys describe; faults and assumptions go to its findings."""
+    composition = composition_of(top)
+    phase = composition.phase if composition else None
+    entered, temperature, ambient = top.number("viscosity"), top.number("temperature"), top.number("ambient")
+    if temperature is None and ambient is not None:
+        temperature = ambient
+        top.findings.assume("columns at ambient", "no temperature entered: the columns have the ambient one")
+    elif temperature is None and phase is not None:
+        temperature = ROOM
+        top.findings.assume("temperature 25 degC", "no temperature entered: 25 °C")
+    if not has_column and ambient is not None:  # nothing is in the oven
+        temperature = ambient
+    if composition:
+        _say_what_was_read(composition, entered, top)
+    if ambient is not None and ambient != temperature and entered is None:
+        top.findings.assume(
+            "outside the oven: ambient",
+            f"all parts but the columns have {_degrees(ambient)}: the first centimetres behind a column are nearer to "
+            "its own temperature",
+        )
+    conditions = Conditions(phase, entered, temperature, ambient)
+    if phase is not None and entered is not None and temperature is not None:
+        _compare(phase.viscosity(temperature), entered, top)
+    return conditions
+
+
+def composition_of(draft: Draft) -> Composition | None:
+    """Read the key mobile_phase of a file or of a table; a fault goes to the findings."""
+    text = draft.text("mobile_phase")
+    if text is None:
+        return None
+    try:
+        return read_composition(text, draft.catalogs)
+    except UnitError as error:
+        draft.findings.fault_of(draft.place("mobile_phase"), error)
+        return None
+
+
+def density_of(top: Draft, conditions: Conditions) -> float:
+    """Return the density that was entered, that of the mobile phase, or an assumed one [kg/m³]."""
+    entered = top.number("density")
+    if entered is not None:
+        return entered
+    if conditions.phase is not None and conditions.temperature is not None:
+        return conditions.phase.density(conditions.temperature)
+    top.findings.assume("density 1000 kg/m3", "density 1000 kg/m³, for the Reynolds number only")
+    return _DENSITY
+
+
+def check_range(phase: MobilePhase, temperature: float, place: Place, findings: Findings) -> bool:
+    """Warn of a temperature outside the range of the liquids' data; far outside it is a fault.
+
+    Returns whether the liquid can be computed there.
+    """
+    distance, solvent = phase.outside(temperature)
+    low, high = (_degrees(end) for end in solvent.span)
+    if distance > FAR:
+        findings.fault(
+            place,
+            f"{_degrees(temperature)}, with {phase.name}",
+            f"a temperature near {low} to {high}, for which the viscosity of {solvent.name} is known",
+            'viscosity = "0.5 mPa s" as measured or looked up, and each peak\'s diffusion',
+        )
+        return False
+    if distance > 0:
+        findings.warn(
+            f"{_degrees(temperature)} is outside {low} to {high}, where the viscosity of {solvent.name} was fitted: "
+            "viscosity and diffusion are extrapolated"
+        )
+    mixture = phase.extrapolated(temperature)
+    if mixture is not None:
+        low, high = (_degrees(end) for end in mixture.span)
+        uncertainty = phase.viscosity(temperature).uncertainty
+        findings.assume(
+            "viscosity extrapolated",
+            f"{_degrees(temperature)} is outside {low} to {high}, where the viscosity of {mixture.name} was measured: "
+            f"extrapolated, ±{100 * uncertainty:.0f} %",
+        )
+    return True
+
+
+def _say_what_was_read(composition: Composition, entered: float | None, top: Draft) -> None:
+    findings = top.findings
+    for remark in composition.left_out:
+        findings.assume("additives left out", f"mobile phase: {remark}")
+    for warning in composition.warnings:
+        findings.warn(f"mobile phase: {warning}")
+    rule = composition.phase.rule()
+    if rule and entered is None:
+        findings.assume("viscosity by a mixing rule", f"viscosity of {composition.phase.name} by {rule}")
+
+
+def _compare(computed: Estimate, entered: float, top: Draft) -> None:
+    """Warn where an entered viscosity is not that of the mobile phase."""
+    room = 1.3 * (1 + computed.uncertainty)
+    if not 1 / room <= entered / computed.value <= room:
+        top.findings.warn(
+            f"viscosity {write(entered, 'mPa s', VISCOSITY)} was entered, and {computed.origin} should have "
+            f"{write(computed.value, 'mPa s', VISCOSITY)}: the entered one is used"
+        )
+
+
+def _degrees(temperature: float) -> str:
+    return write(temperature, "degC", TEMPERATURE, 4).replace("degC", "°C")
