@@ -210,6 +210,69 @@ def test_explain(run):
     assert b"explain tube" in done.stderr
 
 
+MINE = """[[solute]]
+name = "our marker"
+molar_mass = "310 g/mol"
+diffusion = "5.4e-10 m^2/s"
+at = "25 degC"
+source = "an invented notebook"
+"""
+
+
+def test_catalog_lists_and_searches_in_every_form(run):
+    assert b"solutes" in run("catalog").stdout
+    for words in (("solutes",), ("solutes", "caffeine"), ("caffeine",), ("tubing", "PEEK")):
+        for form in ("text", "json", "csv", "markdown"):
+            done = run("catalog", *words, "--format", form)
+            assert done.returncode == 0, done.stderr
+            assert done.stdout
+            assert not done.stderr
+    record = json.loads(run("catalog", "solutes", "caffeine", "--format", "json").stdout)
+    assert record["schema"] == "xcol.catalog/1"
+    assert record["catalogs"][0]["rows"][0]["source"]
+    for words, key in ((("solvens", "water"), b"KIND"), (("solutes", "zzzz"), b"WORD"), (("zzzz",), b"WORD")):
+        done = run("catalog", *words)
+        assert done.returncode == 2
+        assert key in done.stderr
+        assert not done.stdout
+
+
+def test_a_catalog_of_one_s_own_is_added_and_overrides_with_a_message(run, tmp_path, plain):
+    (tmp_path / "mine.toml").write_text(MINE, encoding="utf-8")
+    done = run("catalog", "solutes", "marker", "--catalog", "mine.toml")
+    assert b"310" in done.stdout
+    assert not done.stderr
+    text = plain.replace('diffusion = "7.0e-10 m^2/s"', 'solute = "our marker"').replace(
+        "path = [", 'mobile_phase = "water"\npath = ['
+    )
+    record = json.loads(run("budget", "-", "--catalog", "mine.toml", "--format", "json", stdin=text).stdout)
+    assert "measured" in record["detectors"][0]["peaks"][1]["diffusion_from"]
+    assert run("check", "-", stdin=text).returncode == 2
+    (tmp_path / "mine.toml").write_text(MINE.replace("our marker", "caffeine"), encoding="utf-8")
+    done = run("catalog", "solutes", "caffeine", "--catalog", "mine.toml")
+    assert b"caffeine" in done.stderr
+    assert b"mine.toml" in done.stderr
+    assert b"an invented notebook" in done.stdout
+    done = run("catalog", "--catalog", "mine.toml", "--output", "mine.toml", "--force")
+    assert done.returncode == 2
+    assert (tmp_path / "mine.toml").read_text(encoding="utf-8") == MINE.replace("our marker", "caffeine")
+
+
+def test_a_faulty_catalog_is_named_with_its_line(run, tmp_path):
+    (tmp_path / "mine.toml").write_text(MINE.replace('"310 g/mol"', "310"), encoding="utf-8")
+    done = run("catalog", "--catalog", "mine.toml")
+    assert done.returncode == 2
+    for words in (b"mine.toml", b"line 3", b"solute 1", b"molar_mass"):
+        assert words in done.stderr
+    assert run("catalog", "--catalog", "none.toml").returncode == 2
+
+
+def test_a_report_says_where_its_numbers_came_from(run, examples):
+    flat = " ".join(run("budget", examples / "core-shell-by-name.toml", "--full").stdout.decode().split())
+    for words in ("Wilke–Chang from 284 g/mol, ±26 %", "measured in water at 25 °C", "±3 %", "reduced plate height"):
+        assert words in flat
+
+
 def test_a_reader_that_goes_away_is_no_error(examples, root):
     environment = os.environ | {"PYTHONPATH": str(root), "PYTHONIOENCODING": "utf-8"}
     command = [sys.executable, "-m", "xcol", "budget", str(examples / "brewery-narrow.toml"), "--full"]
@@ -246,11 +309,12 @@ def test_a_full_disk_is_said_to_be_one(examples, root):
     assert done.stderr
 
 
-def test_the_light_commands_stay_light(root, examples):
+@pytest.mark.parametrize("example", ["guarded-column.toml", "core-shell-by-name.toml"])
+def test_the_light_commands_stay_light(root, examples, example):
     """Neither scipy nor pint is on the path of an everyday budget."""
     code = (
         "import sys\nfrom xcol.cli import main\n"
-        f"sys.argv = ['xcol', 'budget', {str(examples / 'guarded-column.toml')!r}]\n"
+        f"sys.argv = ['xcol', 'budget', {str(examples / example)!r}]\n"
         "try:\n    main()\nexcept SystemExit:\n    pass\n"
         "print([m for m in ('scipy', 'pint', 'matplotlib') if m in sys.modules], file=sys.stderr)\n"
     )

@@ -8,8 +8,8 @@ from typing import Annotated
 import typer
 
 from xcol import __version__
-from xcol.cli import budget, check, explain
-from xcol.cli.output import can_show_symbols, silence_output
+from xcol.cli import budget, catalog, check, explain
+from xcol.cli.output import complain, silence_output
 from xcol.errors import InputError
 
 app = typer.Typer(
@@ -23,6 +23,7 @@ app = typer.Typer(
 )
 app.command("budget", epilog=budget.EXAMPLE)(budget.budget)
 app.command("check", epilog=check.EXAMPLE)(check.check)
+app.command("catalog", epilog=catalog.EXAMPLE)(catalog.catalog)
 app.command("explain", epilog=explain.EXAMPLE)(explain.explain)
 
 
@@ -50,7 +51,7 @@ def main() -> None:
     try:
         app()
     except InputError as error:
-        _complain(error)
+        complain(_answer_to(error))
         sys.exit(2)
     except OSError as error:  # a full disk behind standard output, for instance
         print(f"xcol: the result could not be written: {error.strerror}", file=sys.stderr)
@@ -60,13 +61,6 @@ def main() -> None:
         sys.exit(130)
 
 
-def _complain(error: InputError) -> None:
-    text = str(error)
+def _answer_to(error: InputError) -> str:
     count = len(error.faults)
-    if count > 1:
-        text += f"\n\n{count} faults; nothing was computed."
-    if not can_show_symbols(sys.stderr):
-        from xcol.report.sheet import to_ascii
-
-        text = to_ascii(text)
-    print(text, file=sys.stderr)
+    return f"{error}\n\n{count} faults; nothing was computed." if count > 1 else str(error)

@@ -6,7 +6,7 @@ from typing import TYPE_CHECKING, Annotated
 
 import typer
 
-from xcol.cli.output import FileArgument, ForceOption, Format, FormatOption, Forms, OutputOption, deliver
+from xcol.cli.output import CatalogOption, FileArgument, ForceOption, Format, FormatOption, Forms, OutputOption, deliver
 from xcol.errors import InputError, Place, refusal
 from xcol.units import quote
 
@@ -29,6 +29,7 @@ def budget(
     peak: Annotated[str | None, typer.Option("--peak", help="Peak of the first screen, by name or k.")] = None,
     detector: Annotated[str | None, typer.Option("--detector", help="Detector of the first screen, by name.")] = None,
     full: Annotated[bool, typer.Option("--full", help="Everything, not the first screen (of text).")] = False,
+    catalogs: CatalogOption = None,
     form: FormatOption = Format.TEXT,
     output: OutputOption = None,
     force: ForceOption = False,
@@ -37,10 +38,10 @@ def budget(
     from xcol.answers.budget import budget as answer_of
     from xcol.flowpath.reader import read
 
-    answer = answer_of(read(file))
+    answer = answer_of(read(file, catalogs or []))
     at = _chosen_detector(answer, detector, file)
     chosen = _chosen_peak(at, peak, file)
-    deliver(_forms(answer, at, chosen, full), form, output, force, file)
+    deliver(_forms(answer, at, chosen, full), form, output, force, file, *(catalogs or []))
 
 
 def _forms(answer: Budget, at: DetectorBudget, chosen: PeakBudget, full: bool) -> Forms:

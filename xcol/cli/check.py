@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from xcol.cli.output import FileArgument, ForceOption, Format, FormatOption, Forms, OutputOption, deliver
+from xcol.cli.output import CatalogOption, FileArgument, ForceOption, Format, FormatOption, Forms, OutputOption, deliver
 
 EXAMPLE = """
 Example, what was understood of a path file, and everything that looks like a slip:
@@ -14,6 +14,7 @@ Example, what was understood of a path file, and everything that looks like a sl
 
 def check(
     file: FileArgument,
+    catalogs: CatalogOption = None,
     form: FormatOption = Format.TEXT,
     output: OutputOption = None,
     force: ForceOption = False,
@@ -24,11 +25,11 @@ def check(
     from xcol.report.check import check_csv, check_markdown, check_record, check_text
 
     # what only the computation shows is a slip as well: a limit, a pump pressure, too few points
-    answer = budget(read(file))
+    answer = budget(read(file, catalogs or []))
     forms = Forms(
         record=lambda: check_record(answer),
         csv=lambda: check_csv(answer),
         markdown=lambda: check_markdown(answer),
         text=lambda sheet: check_text(answer, sheet),
     )
-    deliver(forms, form, output, force, file)
+    deliver(forms, form, output, force, file, *(catalogs or []))

@@ -34,6 +34,10 @@ OutputOption = Annotated[str | None, typer.Option("--output", help="Write to thi
 ForceOption = Annotated[bool, typer.Option("--force", help="Let --output replace a file.")]
 FileArgument = Annotated[str, typer.Argument(metavar="FILE", help='Path file; "-": standard input.')]
 
+CatalogOption = Annotated[
+    list[str] | None, typer.Option("--catalog", metavar="FILE", help="A catalog of your own; may be given again.")
+]
+
 _SYMBOLS = "µ²°½█σθ−–"  # what a text report may need
 
 
@@ -56,11 +60,11 @@ class Forms:
     text: Callable[[Sheet], None]
 
 
-def deliver(forms: Forms, form: Format, output: str | None, force: bool, source: str = "-") -> None:
+def deliver(forms: Forms, form: Format, output: str | None, force: bool, *sources: str) -> None:
     """Write an answer in this form to standard output (None or "-"), or whole to a file.
 
-    Raises ``InputError`` where the file exists (without ``force``), is the path file ``source``
-    itself, or cannot be written.
+    Raises ``InputError`` where the file exists (without ``force``), is one of the files ``sources`` that
+    the answer was made from, or cannot be written.
     """
     target = None if output == "-" else output
     if form is Format.JSON:
@@ -76,7 +80,16 @@ def deliver(forms: Forms, form: Format, output: str | None, force: bool, source:
     if target is None:
         _print(result)
     else:
-        _write(result, target, force, source)
+        _write(result, target, force, sources)
+
+
+def complain(text: str) -> None:
+    """Write a message to standard error, in ASCII where it must be."""
+    if not can_show_symbols(sys.stderr):
+        from xcol.report.sheet import to_ascii
+
+        text = to_ascii(text)
+    print(text, file=sys.stderr)
 
 
 def _new_sheet(output: str | None) -> Sheet:
@@ -108,15 +121,16 @@ def _print(text: str) -> None:
         silence_output()
 
 
-def _write(text: str, output: str, force: bool, source: str) -> None:
+def _write(text: str, output: str, force: bool, sources: tuple[str, ...]) -> None:
     target = Path(output)
     place = Place(file=output, key="--output")
     if target.is_dir():
         raise refusal(place, "a directory", "the name of a file", f"{target / 'budget.txt'}")
     if target.exists() and not target.is_file():
         raise refusal(place, "a device or pipe", "the name of a file", "standard output, redirected")
-    if source != "-" and target.exists() and Path(source).exists() and target.samefile(source):
-        raise refusal(place, "the path file itself", "another file", "another name for the result")
+    read = (source for source in sources if source != "-" and Path(source).exists())
+    if target.exists() and any(target.samefile(source) for source in read):
+        raise refusal(place, "a file that was read for it", "another file", "another name for the result")
     if target.exists() and not force:
         raise refusal(place, "a file that exists", "a new file", "another name, or --force")
     try:

@@ -24,6 +24,7 @@ def budget_record(answer: Budget) -> dict[str, Any]:
         "version": __version__,
         "title": instrument.title,
         "flow_mL_min": instrument.flow * 60e6,
+        "mobile_phase": instrument.mobile_phase or None,
         "assumed": [assumption.text for assumption in instrument.assumed],
         "warnings": list(answer.warnings),
         "cautions": list(answer.cautions),
@@ -45,11 +46,11 @@ def budget_csv(answer: Budget) -> str:
     if lines:
         writer = csv.DictWriter(out, fieldnames=list(lines[0]), lineterminator="\n")
         writer.writeheader()
-        writer.writerows({key: _cell(value) for key, value in line.items()} for line in lines)
+        writer.writerows({key: spreadsheet_cell(value) for key, value in line.items()} for line in lines)
     return out.getvalue()
 
 
-def _cell(value: Any) -> Any:
+def spreadsheet_cell(value: Any) -> Any:
     """Keep a spreadsheet from taking a name for a formula."""
     return f"'{value}" if isinstance(value, str) and value[:1] in tuple("=+-@") else value
 
@@ -61,6 +62,8 @@ def _pressure(row: PressureRow) -> dict[str, Any]:
         "name": row.part.name or row.part.kind,
         "position": row.part.position,
         "flow_mL_min": row.flow * 60e6,
+        "temperature_degC": row.part.temperature - 273.15 if row.part.temperature is not None else None,
+        "viscosity_mPa_s": row.part.viscosity.value * 1e3 if row.part.viscosity else None,
         "drop_bar": _bar(row.drop),
         "inlet_bar": _bar(row.inlet),
         "inlet_low_bar": row.inlet.low / 1e5 if row.inlet else None,
@@ -90,8 +93,12 @@ def _peak(answer: Budget, peak: PeakBudget, delay: float) -> dict[str, Any]:
         "k": peak.peak.k,
         "retention_s": peak.retention,
         "diffusion_m2_s": peak.peak.diffusion,
+        "diffusion_from": peak.peak.estimate.stated,
+        "diffusion_uncertainty": None if peak.peak.estimate.entered else peak.peak.estimate.uncertainty,
         "plates_column": peak.plates_column,
+        "plates_column_range": list(peak.columns_range) if peak.columns_range else None,
         "plates_observed": peak.plates_observed,
+        "plates_observed_over_diffusion": _over_diffusion(peak),
         "plates_kept": peak.plates_kept,
         "interval_plates_kept": None,
         "resolution_kept": peak.resolution_kept,
@@ -106,6 +113,12 @@ def _peak(answer: Budget, peak: PeakBudget, delay: float) -> dict[str, Any]:
         "points_4sigma": peak.points,
         "parts": [_row(answer, row) for row in peak.rows],
     }
+
+
+def _over_diffusion(peak: PeakBudget) -> list[float] | None:
+    """Return the plates recorded at both ends of an estimated diffusion coefficient, the fewer first."""
+    ends = [end.plates for end in peak.over_diffusion or () if end.plates is not None]
+    return sorted(ends) or None
 
 
 def _row(answer: Budget, row: Row) -> dict[str, Any]:

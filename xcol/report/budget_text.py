@@ -17,11 +17,12 @@ from xcol.report.budget_tables import (
 )
 from xcol.report.labels import name_of, show
 from xcol.report.sheet import Sheet, fitted, markdown
-from xcol.units import FLOW, PRESSURE, TEMPERATURE, VOLUME, significant
+from xcol.units import FLOW, PRESSURE, TEMPERATURE, VISCOSITY, VOLUME, significant
 
 if TYPE_CHECKING:
     from xcol.answers.budget import Budget, DetectorBudget, PeakBudget
 
+HARDLY = 0.03  # of the plates: what an uncertain diffusion coefficient may move without mattering
 NO_RANGES = (
     "No ranges yet: tubes count as straight (worst), injection and cells as plugs (best), so these "
     "figures alone do not say which part to change first."
@@ -31,6 +32,8 @@ NO_RANGES = (
 def full_report(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: Sheet) -> None:
     """Write everything: all detectors and peaks, pressure, warnings, assumptions, cautions."""
     heading(answer, sheet)
+    if liquid := mobile_phase_line(answer):
+        sheet.line(liquid, hang=2)
     for line in verdict(answer, at, peak):
         sheet.line(line, hang=2)
     sheet.line(NO_RANGES, hang=2)
@@ -68,6 +71,7 @@ def full_report(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: She
 def budget_markdown(answer: Budget, at: DetectorBudget, peak: PeakBudget) -> str:
     """Return the report in Markdown."""
     pieces = [f"# {answer.instrument.title or 'Budget'}\n", _conditions(answer) + "\n"]
+    pieces += [liquid + "\n"] if (liquid := mobile_phase_line(answer)) else []
     pieces += [line + "\n" for line in (*verdict(answer, at, peak), NO_RANGES)]
     for found in answer.detectors:
         pieces.append(f"## Detector {name_of(found.detector)}\n")
@@ -120,7 +124,20 @@ def _conditions(answer: Budget) -> str:
     pieces = [show(instrument.flow, FLOW)]
     if instrument.temperature is not None:
         pieces.append(show(instrument.temperature, TEMPERATURE))
+    outside = {p.temperature for p in instrument.parts if p.kind != "column"} - {instrument.temperature}
+    if len(outside) == 1 and instrument.temperature is not None:
+        pieces.append(f"{show(outside.pop() or 0.0, TEMPERATURE)} outside")
     return ", ".join(["isocratic", *pieces])
+
+
+def mobile_phase_line(answer: Budget) -> str:
+    """Return what flows, as it was understood; "" where no mobile phase was entered."""
+    instrument = answer.instrument
+    if not instrument.mobile_phase or instrument.viscosity is None:
+        return ""
+    viscosity = instrument.viscosity
+    doubt = viscosity.origin if viscosity.entered else f"±{100 * viscosity.uncertainty:.0f} %"
+    return f"Mobile phase {instrument.mobile_phase}: {show(viscosity.value, VISCOSITY)} at the column ({doubt})"
 
 
 def heading(answer: Budget, sheet: Sheet) -> None:
@@ -138,10 +155,34 @@ def _peak_line(peak: PeakBudget, answer: Budget) -> str:
         from_retention = f", from {significant(peak.peak.retention, 4)} s recorded less the transit outside the column"
     k = f", k = {significant(peak.peak.k, 4)}{from_retention}" if peak.peak.k is not None else ""
     return (
-        f'Peak "{peak.peak.name}"{k}, D = {significant(peak.peak.diffusion)} m²/s: '
+        f'Peak "{peak.peak.name}"{k}, D = {significant(peak.peak.diffusion)} m²/s ({peak.peak.estimate.stated}): '
         f"{three(answer.in_uL2(peak.variance_extra))} µL² added, "
         f"{three(answer.in_uL2(peak.variance_total))} µL² in all{points}"
+        f"{_over_diffusion(peak, answer)}{_of_columns(peak)}"
     )
+
+
+def _over_diffusion(peak: PeakBudget, answer: Budget) -> str:
+    """Say how far the answer hangs on an estimated diffusion coefficient."""
+    if peak.over_diffusion is None:
+        return ""
+    low, high = sorted(peak.over_diffusion, key=lambda end: end.plates or -end.variance)
+    if low.plates is None or high.plates is None or peak.plates_observed is None:
+        spread = high.variance / low.variance
+        ends = f"{three(answer.in_uL2(high.variance))} to {three(answer.in_uL2(low.variance))} µL² in all"
+    else:
+        spread = low.plates / high.plates
+        ends = f"{plates(low.plates)} to {plates(high.plates)} plates recorded"
+    matters = "it hardly matters" if spread > 1 - HARDLY else "it matters: measure D or look it up"
+    return f"; over the ±{100 * peak.peak.estimate.uncertainty:.0f} % of D {ends}, so {matters}"
+
+
+def _of_columns(peak: PeakBudget) -> str:
+    """Say how far the plates of a column may be off, where they come from a reduced plate height curve."""
+    if peak.columns_range is None:
+        return ""
+    fewest, most = peak.columns_range
+    return f"; the column's own N, {plates(peak.plates_column)}, is {plates(fewest)} to {plates(most)} in such columns"
 
 
 def _pressure_line(answer: Budget) -> str:
@@ -162,7 +203,9 @@ def total_pressure(answer: Budget) -> str:
     total = answer.pressure.total
     if total is None:
         return "Pressure: not computed (viscosity or a drop is missing)."
-    ends = f" ({span(total)} over the bed porosity)" if span(total) else ""
+    viscosity = answer.instrument.viscosity
+    unsure = "bed porosity and viscosity" if viscosity and not viscosity.entered else "the bed porosity"
+    ends = f" ({span(total)} over {unsure})" if span(total) else ""
     return f"Pressure {bars(total)} bar{ends}."
 
 

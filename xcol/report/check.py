@@ -62,7 +62,9 @@ def check_record(answer: Budget) -> dict[str, Any]:
         "version": __version__,
         "title": instrument.title,
         "flow_mL_min": instrument.flow * 60e6,
-        "viscosity_mPa_s": _times(instrument.viscosity, 1e3),
+        "mobile_phase": instrument.mobile_phase or None,
+        "viscosity_from": instrument.viscosity.stated if instrument.viscosity else None,
+        "viscosity_mPa_s": _times(instrument.viscosity.value if instrument.viscosity else None, 1e3),
         "density_kg_m3": instrument.density,
         "temperature_degC": None if instrument.temperature is None else instrument.temperature - 273.15,
         "pump_pressure_bar": _times(instrument.pump_pressure, 1e-5),
@@ -71,6 +73,8 @@ def check_record(answer: Budget) -> dict[str, Any]:
                 "position": part.position,
                 "part": part.kind,
                 "name": part.name or part.kind,
+                "temperature_degC": None if part.temperature is None else part.temperature - 273.15,
+                "viscosity_mPa_s": _times(part.viscosity.value if part.viscosity else None, 1e3),
                 "values": [_value(reading) for reading in part.readings],
             }
             for part in instrument.parts
@@ -81,6 +85,7 @@ def check_record(answer: Budget) -> dict[str, Any]:
                 "k": peak.k,
                 "retention_s": peak.retention,
                 "diffusion_m2_s": peak.diffusion,
+                "diffusion_from": peak.estimate.stated,
                 "plates": peak.plates,
             }
             for peak in instrument.peaks
@@ -115,7 +120,7 @@ def _grids(answer: Budget) -> list[tuple[str, Grid]]:
     instrument = answer.instrument
     conditions: list[tuple[str, float | None, Quantity]] = [
         ("flow", instrument.flow, FLOW),
-        ("viscosity", instrument.viscosity, VISCOSITY),
+        ("viscosity", instrument.viscosity.value if instrument.viscosity else None, VISCOSITY),
         ("density", instrument.density, DENSITY),
         ("temperature", instrument.temperature, TEMPERATURE),
         ("pump pressure", instrument.pump_pressure, PRESSURE),
@@ -123,6 +128,7 @@ def _grids(answer: Budget) -> list[tuple[str, Grid]]:
     flow = tuple(
         (name, show(value, quantity, 4) if value is not None else "not entered") for name, value, quantity in conditions
     )
+    flow = (flow[0], ("mobile phase", instrument.mobile_phase or "not entered"), *flow[1:])
     rows: list[tuple[str, ...]] = []
     for part in instrument.parts:
         head = (str(part.position), part.kind, part.name)
@@ -137,6 +143,7 @@ def _grids(answer: Budget) -> list[tuple[str, Grid]]:
             significant(peak.k, 4) if peak.k is not None else "-",
             show(peak.retention, TIME, 4) if peak.retention is not None else "-",
             show(peak.diffusion, DIFFUSION),
+            "as entered" if peak.estimate.entered else f"±{100 * peak.estimate.uncertainty:.0f} %",
             significant(peak.plates, 6) if peak.plates is not None else "-",
         )
         for peak in instrument.peaks
@@ -154,9 +161,9 @@ def _grids(answer: Budget) -> list[tuple[str, Grid]]:
         (
             "Peaks",
             Grid(
-                ("", "k", "recorded at", "diffusion", "plates"),
+                ("", "k", "recorded at", "diffusion", "", "plates"),
                 peaks,
-                (False, True, True, True, True),
+                (False, True, True, True, True, True),
             ),
         ),
     ]

@@ -53,7 +53,7 @@ def topics_text(topics: tuple[Topic, ...], sheet: Sheet, *, in_full: bool) -> No
     if not in_full:
         sheet.line("Topics of xcol explain TOPIC", "bold")
         for topic in topics:
-            sheet.line(f"{topic.name:<10} {topic.title}", indent=2)
+            sheet.line(f"{topic.name:<13} {topic.title}", indent=2)
         return
     for topic in topics:
         sheet.line(f"{topic.name}: {topic.title}", "bold")

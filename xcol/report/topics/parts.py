@@ -125,7 +125,7 @@ PARTS = (
             "Taylor, Proc. R. Soc. A 219 (1953) 186; Golay 1958 (long-tube limit), from memory",
         ),
         _tube,
-        ("tubing", "capillary", "diffusion", "d", "t*", "tstar", "long-tube", "longtube", "taylor", "aris", "bore"),
+        ("tubing", "capillary", "t*", "tstar", "long-tube", "longtube", "taylor", "aris", "bore"),
     ),
     Topic(
         "run",
@@ -171,15 +171,16 @@ PARTS = (
     Topic(
         "column",
         "Column",
-        "The column's own band is a Gaussian of its plate number. The plates are those entered: a "
-        "certificate's hold at its own flow, k and analyte, and have the maker's plumbing inside. "
+        "The column's own band is a Gaussian of its plate number. The plates are those entered, or come from "
+        "the reduced plate height (xcol explain plate-height): a certificate's hold at its own flow, k and "
+        "analyte, and have the maker's plumbing inside; plates_at gives that flow. "
         "Columns in series add their times and variances.",
         (
             "t0 = V0/F,  V0 = ε_total·π/4·d²·L",
             "σ = t0·(1+k)/√N [s]",
             "N recorded / N column = σ²_column/σ²_total;  resolution kept = its root",
         ),
-        "Isocratic elution; N is not changed with the flow. A reduced plate height below 1 is refused.",
+        "Isocratic elution; plates without plates_at hold at any flow. A reduced plate height below 1 is refused.",
         ("definition of the plate number",),
         _column,
         ("plates", "n", "kept", "resolution", "rs kept", "void volume", "porosity", "own"),

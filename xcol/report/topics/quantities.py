@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 
-from xcol.catalogs import usual_packing
+from xcol.catalogs import Catalogs
 from xcol.flowpath.hydraulics import bed_drop, reynolds_number, tube_drop
 from xcol.report.topics.topic import Topic
 from xcol.units import significant
@@ -14,7 +14,7 @@ _FLOW = 1e-6 / 60
 
 def _pressure() -> str:
     tube = float(tube_drop(_FLOW, 2.0, 0.3e-3, 0.89e-3)) / 1e5
-    usual = usual_packing()
+    usual = Catalogs().usual_packing()
     tight, loose = usual.interstitial_range
     porosities = (usual.interstitial, loose, tight)
     bed = [float(bed_drop(_FLOW, 0.15, 4.6e-3, 0.9e-3, 5e-6, e)) / 1e5 for e in porosities]
@@ -72,7 +72,7 @@ QUANTITIES = (
             "tube: ΔP = 128·η·L·F/(π·d⁴)",
             "bed: ΔP = 180·η·u·L·(1−ε)²/(ε³·d_p²),  u = F/(π/4·d²), ε interstitial",
         ),
-        "Laminar flow (Reynolds number below 2000); one viscosity along the path.",
+        "Laminar flow (Reynolds number below 2000); the viscosity at each part's temperature.",
         ("Hagen-Poiseuille", "Carman 1937, constant 180, from memory"),
         _pressure,
         ("bar", "drop", "inlet", "limit", "max_pressure", "kozeny", "carman", "poiseuille", "bed"),
@@ -83,7 +83,7 @@ QUANTITIES = (
         "Inertia over viscosity. Above about 2000 the flow is not laminar, and neither the variance of a "
         "tube nor its pressure drop can be trusted.",
         ("Re = 4·ρ·F/(π·d·η)",),
-        "The density is taken as 1000 kg/m³ unless it is entered.",
+        "The density is that of the mobile phase, or 1000 kg/m³ where neither is entered.",
         ("definition",),
         _reynolds,
         ("re", "laminar", "turbulent", "density"),
