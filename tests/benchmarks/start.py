@@ -36,6 +36,14 @@ peaks = [
   { name = "c", k = 5, diffusion = "8.0e-10 m^2/s" }, { name = "d", k = 10, diffusion = "7.0e-10 m^2/s" },
 ]
 """
+# the same path, its liquid, columns and solutes by name
+BY_NAME = (
+    PATH.replace('viscosity = "0.8 mPa s"', 'mobile_phase = "water/acetonitrile 60:40"\nambient = "22 degC"')
+    .replace("plates = 9000", 'packing = "core-shell"')
+    .replace("plates = 18000", 'packing = "core-shell"')
+    .replace('diffusion = "1.0e-9 m^2/s"', 'solute = "caffeine"')
+    .replace('diffusion = "9.0e-10 m^2/s"', 'molar_mass = "300 g/mol"')
+)
 RUNS = 15
 
 
@@ -51,9 +59,12 @@ def main() -> None:
     with tempfile.TemporaryDirectory() as folder:
         path = Path(folder) / "twelve.toml"
         path.write_text(PATH, encoding="utf-8")
+        by_name = Path(folder) / "by-name.toml"
+        by_name.write_text(BY_NAME, encoding="utf-8")
         naive = [sys.executable, "-c", NAIVE]
         commands = {
             "budget": [sys.executable, "-m", "xcol", "budget", str(path)],
+            "budget, by name": [sys.executable, "-m", "xcol", "budget", str(by_name)],
             "budget --full": [sys.executable, "-m", "xcol", "budget", str(path), "--full"],
             "budget --format json": [sys.executable, "-m", "xcol", "budget", str(path), "--format", "json"],
             "check": [sys.executable, "-m", "xcol", "check", str(path)],
