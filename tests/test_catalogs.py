@@ -174,6 +174,39 @@ def test_a_solute_needs_a_mass_or_a_measured_value_and_that_its_temperature(othe
         assert caught.value.faults[0].place.key in ("molar_mass", "at")
 
 
+SOLVENT = {
+    "name": "x", "molar_mass": "100 g/mol", "density": "900 kg/m^3", "expansion": 1e-3, "association": 1.0,
+    "viscosity": [-4.0, 1.0, 0.0], "span": ["10 degC", "80 degC"], "uncertainty": "5 %", "source": "a test",
+}  # fmt: skip
+
+
+@pytest.mark.parametrize(
+    ("key", "value"),
+    [
+        ("viscosity", [1, 2]),
+        ("viscosity", [50.0, 1.0, 0.0]),
+        ("viscosity", [float("nan"), 1.0, 0.0]),
+        ("viscosity", [1e9, 1.0, 0.0]),
+        ("viscosity", "thick"),
+        ("expansion", float("inf")),
+        ("expansion", 10**400),
+        ("association", float("nan")),
+        ("span", ["80 degC", "10 degC"]),
+        ("span", [10, 80]),
+        ("uncertainty", "300 %"),
+        ("density", "900"),
+    ],
+)
+def test_an_invalid_solvent_is_refused(key, value):
+    lines = {"": 1, key: 2}
+    found, faults = catalogs.records_of({"solvent": [SOLVENT]}, "f", "f", lambda table, number: lines)
+    assert len(found) == 1
+    assert not faults
+    found, faults = catalogs.records_of({"solvent": [SOLVENT | {key: value}]}, "f", "f", lambda table, number: lines)
+    assert not found
+    assert [(fault.place.key, fault.place.line) for fault in faults] == [(key, 2)]
+
+
 def test_all_invalid_rows_are_named_together(other):
     (other / "tubing.toml").write_text(GOOD.replace("0.1 mm", "0.1 s") + GOOD.replace("5 %", "5"))
     with pytest.raises(InputError) as caught:

@@ -132,9 +132,9 @@ class _Row:
         if (
             not isinstance(value, list)
             or len(value) != count
-            or not all(isinstance(one, int | float) and not isinstance(one, bool) and abs(one) < 1e6 for one in value)
+            or not all(isinstance(one, int | float) and not isinstance(one, bool) and abs(one) <= 100 for one in value)
         ):
-            raise self.fault(key, f"a list of {count} numbers")
+            raise self.fault(key, f"a list of {count} numbers from -100 to 100")
         return tuple(float(one) for one in value)
 
     def span(self, key: str, quantity: Quantity, low: float, high: float) -> Span:
@@ -188,13 +188,19 @@ _MASS = (MOLAR_MASS, 1e-3, 1e5)
 
 def _solvent(row: _Row) -> dict[str, Any]:
     own = row.has("viscosity") and row.values["viscosity"] == WATER_FORMULA
+    span = row.span("span", *_LIQUID)
+    coefficients = None if own else row.triple("viscosity")
+    if coefficients:
+        a, b, c = coefficients
+        if not all(-7 < a + b * 1e3 / end + c * (1e3 / end) ** 2 < 7 for end in span):
+            raise row.fault("viscosity", "A, B, C that give 0.001 to 1000 mPa s over the span")
     return {
         "molar_mass": row.measure("molar_mass", *_MASS),
         "density": row.measure("density", DENSITY, 400.0, 3000.0),
         "expansion": row.number("expansion", 0.0, 0.01),
         "association": row.number("association", 0.5, 5.0),
-        "viscosity": None if own else row.triple("viscosity"),
-        "span": row.span("span", *_LIQUID),
+        "viscosity": coefficients,
+        "span": span,
         "uncertainty": row.measure("uncertainty", RATIO, 0.0, 1.0),
     }
 

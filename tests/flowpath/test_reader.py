@@ -140,6 +140,9 @@ WRONG = {
     "unknown key of a curve": (
         path(INJECT, '  { column = "2.1 x 100 mm, 3 um", knox = { A = 1, B = 2, D = 3 } },\n', DETECTOR), "D", 6
     ),
+    "a curve below h = 1": (
+        path(INJECT, '  { column = "2.1 x 100 mm, 3 um", knox = { A = 0, B = 0, C = 0 } },\n', DETECTOR), "knox", 6
+    ),
     "plates_at without plates": (
         path(INJECT, '  { column = "2.1 x 100 mm, 3 um", plates_at = "0.5 mL/min" },\n', DETECTOR), "plates_at", 6
     ),
@@ -356,14 +359,24 @@ SYMBOLS = [
 ]
 
 
-@settings(max_examples=400)
+PEAKS = 'peaks = [ { name = "a", k = 1 }, { retention = "2 min" } ]\n'
+BY_NAME = path(
+    INJECT, '  { column = "2.1 x 100 mm, 3 um", packing = "core-shell" },\n', DETECTOR,
+    head='flow = "0.5 mL/min"\nmobile_phase = "0.1 % formic acid in water/ACN 60:40"\nambient = "22 degC"\n',
+    tail='peaks = [ { k = 1, solute = "caffeine" }, { k = 2, molar_mass = "1 kDa", molecule = "small" },'
+    ' { k = 2, diffusion = "1e-9 m^2/s", at = { temperature = "30 C" } } ]\n',
+)  # fmt: skip
+
+
+@settings(max_examples=600)
 @given(
+    by_name=st.booleans(),
     cuts=st.lists(
         st.tuples(st.floats(0, 1), st.integers(0, 4), st.sampled_from(["", *SYMBOLS])), min_size=1, max_size=4
-    )
+    ),
 )
-def test_a_file_with_anything_cut_out_or_put_in_is_read_or_refused(cuts):
-    text = path(INJECT, COLUMN, DETECTOR, tail='peaks = [ { name = "a", k = 1 }, { retention = "2 min" } ]\n')
+def test_a_file_with_anything_cut_out_or_put_in_is_read_or_refused(by_name, cuts):
+    text = BY_NAME if by_name else path(INJECT, COLUMN, DETECTOR, tail=PEAKS)
     for where, cut, put in cuts:
         at = int(where * len(text))
         text = text[:at] + put + text[at + cut :]

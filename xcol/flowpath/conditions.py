@@ -6,6 +6,7 @@ from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
 
 from xcol.flowpath.composition import Composition, read_composition
+from xcol.flowpath.file_keys import VISCOSITIES
 from xcol.liquids.estimate import Estimate, as_entered
 from xcol.liquids.mobile_phase import FAR, MobilePhase
 from xcol.units import TEMPERATURE, VISCOSITY, UnitError, write
@@ -123,6 +124,15 @@ def check_range(phase: MobilePhase, temperature: float, place: Place, findings: 
             f"{_degrees(temperature)}, with {phase.name}",
             f"a temperature near {low} to {high}, for which the viscosity of {solvent.name} is known",
             'viscosity = "0.5 mPa s" as measured or looked up, and each peak\'s diffusion',
+        )
+        return False
+    computed = phase.viscosity(temperature).value
+    if not VISCOSITIES.low <= computed <= VISCOSITIES.high:
+        findings.fault(
+            place,
+            f"{phase.name}, which the catalogs give {write(computed, 'mPa s', VISCOSITY)} at {_degrees(temperature)}",
+            "a liquid that flows",
+            "check the rows of your own catalog, or enter viscosity",
         )
         return False
     if distance > 0:

@@ -95,6 +95,12 @@ def _curve(draft: Draft, packing: Packing, total_over_interstitial: float) -> Be
             f"plates = 11000, from the certificate or a measurement, or {_KNOX_EXAMPLE}",
         )
         return None
+    curve = PlateHeightCurve(*usual)
+    lowest = min(curve.height(1.3**power) for power in range(-10, 40)) if max(usual) > 0 else 0.0
+    if lowest < 1:
+        key = "knox" if draft.inner.get("knox") else "packing"
+        draft.fault(key, "a reduced plate height of 1 or more at every velocity", _KNOX_EXAMPLE, f"h = {lowest:.2g}")
+        return None
     ratio = 1.0 if velocity == VELOCITIES[0] else total_over_interstitial
     which = "u = L/t0" if velocity == VELOCITIES[0] else "interstitial velocity"
     shown = f"h = {usual[0]:g} ν^1/3 + {usual[1]:g}/ν + {usual[2]:g} ν ({which}; {source})"
