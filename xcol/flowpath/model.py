@@ -109,6 +109,12 @@ class Instrument:
         return next(part.position for part in self.parts if part.kind == "inject")
 
     @property
+    def outside(self) -> float | None:
+        """The one temperature [K] of all parts but the columns, None where it is the columns' own or not one."""
+        found = {part.temperature for part in self.parts if part.kind != "column"} - {self.temperature}
+        return found.pop() if len(found) == 1 and self.temperature is not None else None
+
+    @property
     def beds(self) -> list[Bed]:
         """The beds of all columns, in the order of flow."""
         return beds_of(self.parts)

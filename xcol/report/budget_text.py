@@ -124,9 +124,8 @@ def _conditions(answer: Budget) -> str:
     pieces = [show(instrument.flow, FLOW)]
     if instrument.temperature is not None:
         pieces.append(show(instrument.temperature, TEMPERATURE))
-    outside = {p.temperature for p in instrument.parts if p.kind != "column"} - {instrument.temperature}
-    if len(outside) == 1 and instrument.temperature is not None:
-        pieces.append(f"{show(outside.pop() or 0.0, TEMPERATURE)} outside")
+    if instrument.outside is not None:
+        pieces.append(f"{show(instrument.outside, TEMPERATURE)} outside")
     return ", ".join(["isocratic", *pieces])
 
 

@@ -123,6 +123,7 @@ def _grids(answer: Budget) -> list[tuple[str, Grid]]:
         ("viscosity", instrument.viscosity.value if instrument.viscosity else None, VISCOSITY),
         ("density", instrument.density, DENSITY),
         ("temperature", instrument.temperature, TEMPERATURE),
+        ("outside the columns", instrument.outside or instrument.temperature, TEMPERATURE),
         ("pump pressure", instrument.pump_pressure, PRESSURE),
     ]
     flow = tuple(
