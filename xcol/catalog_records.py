@@ -5,6 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 Span = tuple[float, float]
+Triple = tuple[float, float, float]
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -23,21 +24,27 @@ class Solvent(Record):
 
     ``viscosity`` holds A, B, C of ln(η/mPa·s) = A + B·(1000/T) + C·(1000/T)², None for water's own
     formula; ``span`` [K] is where it was fitted, ``uncertainty`` its relative ±; ``association`` is ψ
-    of Wilke and Chang.
+    of Wilke and Chang; ``mixes_with_water`` in all parts.
     """
 
     molar_mass: float
     density: float
     expansion: float
     association: float
-    viscosity: tuple[float, float, float] | None
+    viscosity: Triple | None
     span: Span
     uncertainty: float
+    mixes_with_water: bool = True
+
+    @property
+    def is_water(self) -> bool:
+        """Whether it is water itself, whatever formula its row gives for the viscosity."""
+        return self.name.strip().lower() in ("water", "h2o")
 
 
 @dataclass(frozen=True, kw_only=True)
 class Mixture(Record):
-    """Excess viscosity of a liquid with water: coefficients a, b, c, e and d of its temperature term.
+    """Excess viscosity of a liquid with water: a, b, c, e [-], and ``heat``, d of its temperature term [kK].
 
     Relative ``uncertainty`` within ``span`` [K]; beyond it rises to ``uncertainty_far`` at ``far`` [K].
     """
@@ -53,7 +60,10 @@ class Mixture(Record):
 
 @dataclass(frozen=True, kw_only=True)
 class Solute(Record):
-    """A solute: molar mass [kg/mol], Le Bas volume [m³/mol], D in water [m²/s] at ``at`` [K]."""
+    """A solute: molar mass [kg/mol], Le Bas volume [m³/mol], D in water [m²/s] at ``at`` [K].
+
+    ``molecule`` is "small", "globular", "chain" or "rod", "" where the molar mass decides.
+    """
 
     formula: str
     molar_mass: float | None
@@ -73,23 +83,29 @@ class Packing(Record):
 
     total_porosity: float
     total_range: Span
-    interstitial: float
+    interstitial_porosity: float
     interstitial_range: Span
-    knox: tuple[float, float, float] | None
-    knox_best: tuple[float, float, float] | None
-    knox_worst: tuple[float, float, float] | None
+    knox: Triple | None
+    knox_best: Triple | None
+    knox_worst: Triple | None
     velocity: str
 
 
 @dataclass(frozen=True, kw_only=True)
 class ColumnFormat(Record):
-    """A column as it is sold: bore, length, particle [m], packing; plates where a user's row has them."""
+    """A column as it is sold: bore, length, particle [m], packing.
+
+    A user's row may have plates, the flow [m³/s] at which they hold, total porosity and limit [Pa].
+    """
 
     bore: float
     length: float
     particle: float
     packing: str
     plates: float | None
+    plates_at: float | None
+    total_porosity: float | None
+    max_pressure: float | None
 
 
 @dataclass(frozen=True, kw_only=True)

@@ -216,6 +216,26 @@ def quote(text: object) -> str:
     return f'"{shown[:57]}..."' if len(shown) > 60 else f'"{shown}"'
 
 
+def described(raw: object) -> str:
+    """Say what a TOML value is, for a message."""
+    if isinstance(raw, str):
+        return quote(raw) if raw.strip() else "an empty text"
+    if isinstance(raw, bool):
+        return str(raw).lower()
+    if isinstance(raw, list):
+        return "a list"
+    if isinstance(raw, dict):
+        return "a table"
+    if is_huge(raw):
+        return "a whole number of very many digits"
+    return str(raw)[:60]
+
+
+def is_huge(raw: object) -> bool:
+    """Whether this is a whole number that Python may refuse to write, and float to hold."""
+    return isinstance(raw, int) and abs(raw) > 10**18
+
+
 def parse(text: str, quantity: Quantity, *, fraction: bool = False) -> float:
     """Read a text as this quantity and return it in SI units.
 

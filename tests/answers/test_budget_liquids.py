@@ -54,9 +54,37 @@ def test_a_core_shell_packing_has_more():
 def test_a_curve_of_one_s_own_and_its_velocity():
     own = peaks_of("knox = { A = 0.9, B = 1.75, C = 0.065 }")[0]
     assert own.plates_column == pytest.approx(0.1 / 3e-6 / height(nu_at(0.4)))
-    assert own.columns_range == (own.plates_column, own.plates_column)
-    interstitial = 'knox = { A = 0.9, B = 1.75, C = 0.065, velocity = "interstitial" }, interstitial_porosity = 0.4'
-    assert peaks_of(interstitial)[0].plates_column == pytest.approx(0.1 / 3e-6 / height(nu_at(0.4) * 0.65 / 0.4))
+    assert own.columns_range is None  # nothing is known of its range
+    for bed in (0.4, 0.36):
+        curve = 'knox = { A = 0.9, B = 1.75, C = 0.065, velocity = "interstitial" }'
+        found = peaks_of(f"{curve}, interstitial_porosity = {bed}")[0]
+        assert found.plates_column == pytest.approx(0.1 / 3e-6 / height(nu_at(0.4) * 0.65 / bed))
+
+
+def test_columns_in_series_add_their_variances_at_the_ends_of_the_range_too():
+    two = text('packing = "core-shell"').replace(
+        "  { detector", '  { column = "2.1 x 50 mm, 3 um", total_porosity = 0.65 },\n  { detector'
+    )
+    first, both = peaks_of('packing = "core-shell"')[0], budget(parse(two, "f")).detectors[0].peaks[0]
+    second = peaks_of('packing = "fully porous"')[0]
+    for end in (0, 1):
+        # times 2:1; the 50 mm column has half the plates of 100 mm
+        expected = 9 / (4 / first.columns_range[end] + 1 / (second.columns_range[end] / 2))
+        assert both.columns_range[end] == pytest.approx(expected)
+    assert both.columns_range[0] < both.plates_column < both.columns_range[1]
+
+
+def test_plates_that_cannot_be_after_scaling_are_refused(faults_of):
+    (fault,) = faults_of(text('plates = 20000, plates_at = "5 mL/min"'))
+    assert fault.place.key == "plates_at"
+    assert fault.place.line
+    odd = parse(text('plates = 3000, plates_at = "10 uL/min"'), "f")
+    assert any("unit" in warning for warning in odd.warnings)
+
+
+def test_plates_and_a_curve_are_one_too_many(faults_of):
+    (fault,) = faults_of(text("plates = 12000, knox = { A = 0.9, B = 1.75, C = 0.065 }"))
+    assert fault.place.key == "knox"
 
 
 def test_entered_plates_hold_at_any_flow_and_with_plates_at_they_are_scaled():
@@ -64,37 +92,14 @@ def test_entered_plates_hold_at_any_flow_and_with_plates_at_they_are_scaled():
         assert peaks_of("plates = 12000", flow=flow)[0].plates_column == pytest.approx(12000)
     same = peaks_of('plates = 12000, plates_at = "0.4 mL/min"')[0]
     assert same.plates_column == pytest.approx(12000)
-    moved = peaks_of('plates = 12000, plates_at = "0.2 mL/min"')[0]
-    assert moved.plates_column == pytest.approx(12000 * height(nu_at(0.2)) / height(nu_at(0.4)))
-    assert moved.columns_range is None
+    for diffusion in (1e-9, 3e-10):
+        moved = peaks_of('plates = 12000, plates_at = "0.2 mL/min"', f'{{ k = 2, diffusion = "{diffusion} m^2/s" }}')[0]
+        ratio = height(nu_at(0.2, diffusion)) / height(nu_at(0.4, diffusion))
+        assert moved.plates_column == pytest.approx(12000 * ratio)
+        assert moved.columns_range is None
 
 
 def test_a_peak_s_own_plates_stand_before_the_curve():
     peak = peaks_of('packing = "core-shell"', '{ k = 2, diffusion = "1e-9 m^2/s", plates = 9000 }')[0]
     assert peak.plates_column == pytest.approx(9000)
     assert peak.columns_range is None
-
-
-def test_the_answer_is_given_at_both_ends_of_an_estimated_coefficient():
-    head = 'mobile_phase = "water"\ntemperature = "25 degC"'
-    estimated, entered = peaks_of(
-        "plates = 12000", '{ k = 2, molar_mass = "300 g/mol" }, { k = 2, diffusion = "1e-9 m^2/s" }', head=head
-    )
-    assert entered.over_diffusion is None
-    slow, fast = estimated.over_diffusion
-    assert slow.plates < estimated.plates_observed < fast.plates
-    factor = 1 + estimated.peak.estimate.uncertainty
-    for end, diffusion in ((slow, estimated.peak.diffusion / factor), (fast, estimated.peak.diffusion * factor)):
-        typed = peaks_of("plates = 12000", f'{{ k = 2, diffusion = "{diffusion:.6e} m^2/s" }}', head=head)[0]
-        assert end.plates == pytest.approx(typed.plates_observed, rel=1e-5)
-        assert end.variance == pytest.approx(typed.variance_total, rel=1e-5)
-
-
-def test_a_union_has_its_variance_at_both_ends():
-    union = """flow = "0.4 mL/min"\nmobile_phase = "water"
-path = [ { inject = "2 uL" }, { tube = "3 m x 0.17 mm" }, { detector = "2 uL", time_constant = "0.1 s" } ]
-peaks = [ { solute = "caffeine" } ]"""
-    peak = budget(parse(union, "f")).detectors[0].peaks[0]
-    slow, fast = peak.over_diffusion
-    assert slow.variance > peak.variance_total > fast.variance
-    assert slow.plates is None

@@ -4,8 +4,8 @@ import datetime
 
 import pytest
 
-from xcol.flowpath.keys import Choice, Later, Measure, Number, Only, Text, described, nearest, yes
-from xcol.units import LENGTH, RATIO, UnitError
+from xcol.flowpath.keys import Choice, Later, Measure, Number, Only, Text, nearest, yes
+from xcol.units import LENGTH, RATIO, UnitError, described
 
 BORE = Measure(LENGTH, 1e-6, 1e-2)
 SHARE = Measure(RATIO, 0.2, 0.99)

@@ -5,7 +5,8 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
-from xcol.catalogs import SOLVENTS, Catalogs
+from xcol.catalog_kinds import SOLVENTS
+from xcol.catalogs import Catalogs
 from xcol.flowpath.composition import read_composition
 from xcol.liquids.mobile_phase import FAR, MIXED_ORGANICS, MIXED_WITH_WATER
 

@@ -9,7 +9,8 @@ import math
 import numpy as np
 import pytest
 
-from xcol.catalogs import SOLUTES, Catalogs
+from xcol.catalog_kinds import SOLUTES
+from xcol.catalogs import Catalogs
 from xcol.flowpath.composition import read_composition
 from xcol.liquids import diffusion as d
 from xcol.liquids.viscosity import water_viscosity

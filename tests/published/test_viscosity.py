@@ -11,7 +11,8 @@ import warnings
 import numpy as np
 import pytest
 
-from xcol.catalogs import SOLVENTS, Catalogs
+from xcol.catalog_kinds import SOLVENTS
+from xcol.catalogs import Catalogs
 from xcol.flowpath.composition import read_composition
 from xcol.liquids.density import water_density
 from xcol.liquids.mobile_phase import Component, MobilePhase

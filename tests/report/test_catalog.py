@@ -6,7 +6,8 @@ import json
 
 import pytest
 
-from xcol.catalogs import KINDS, SOLUTES, Catalogs
+from xcol.catalog_kinds import KINDS, SOLUTES
+from xcol.catalogs import Catalogs
 from xcol.errors import InputError
 from xcol.report.catalog import find, kinds_text, listings_csv, listings_markdown, listings_record, listings_text
 from xcol.report.sheet import Sheet

@@ -6,7 +6,7 @@ All variances are summed in s²; what is shown in µL² is s² times the square 
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
 import numpy as np
@@ -20,7 +20,7 @@ from xcol.flowpath.elements import Bed, Electronics, Stream
 from xcol.flowpath.model import beds_of
 
 if TYPE_CHECKING:
-    from collections.abc import Iterator, Sequence
+    from collections.abc import Iterable, Iterator, Sequence
 
     import numpy.typing as npt
 
@@ -61,20 +61,11 @@ class ColumnBand:
 
 
 @dataclass(frozen=True)
-class Recorded:
-    """What one set of assumptions gives: total variance [s²], plates recorded (None without a column)."""
-
-    variance: float
-    plates: float | None
-
-
-@dataclass(frozen=True)
 class PeakBudget:
     """One peak at one detector; times [s], variances [s²], None where there is no column.
 
-    ``over_diffusion`` is the same at both ends of an estimated diffusion coefficient, D/(1+u) and
-    D·(1+u), as recorded variance and plates; ``columns_range`` the fewest and most plates that the
-    columns may have where their N comes from a reduced plate height curve.
+    ``columns_range`` is the fewest and most plates that the columns may have where their N comes from
+    a reduced plate height curve.
     """
 
     peak: Peak
@@ -85,7 +76,6 @@ class PeakBudget:
     rows: tuple[Row, ...]
     columns: tuple[ColumnBand, ...]
     points: float | None  # data points across 4σ
-    over_diffusion: tuple[Recorded, Recorded] | None = None
     columns_range: tuple[float, float] | None = None
 
     @property
@@ -176,7 +166,6 @@ def _at_detector(instrument: Instrument, detector: Part) -> DetectorBudget:
     spread = _Spread(instrument.flow, chain, instrument.peaks)
     rows = spread.rows()
     extra = sum((row.variance for row in rows.values()), spread.zero)
-    ends = _over_diffusion(instrument, chain)
     without = {index: spread.total_without(index) for index in rows}
 
     peaks = []
@@ -209,53 +198,30 @@ def _at_detector(instrument: Instrument, detector: Part) -> DetectorBudget:
                 ),
                 columns=bands,
                 points=_points(chain, total),
-                over_diffusion=ends.get(n),
                 columns_range=_columns_range(instrument, chain, peak),
             )
         )
     return DetectorBudget(detector, delay, tuple(peaks))
 
 
-def _over_diffusion(instrument: Instrument, chain: tuple[Link, ...]) -> dict[int, tuple[Recorded, Recorded]]:
-    """Return what is recorded of each peak at the ends of its diffusion coefficient, where it was estimated."""
-    unsure = [n for n, peak in enumerate(instrument.peaks) if peak.estimate.uncertainty > 0]
-    found: list[list[Recorded]] = []
-    for up in (False, True):
-        moved = tuple(_moved(instrument.peaks[n], up) for n in unsure)
-        spread = _Spread(instrument.flow, chain, moved)
-        extra = sum((row.variance for row in spread.rows().values()), spread.zero)
-        found.append([_recorded(instrument, chain, peak, float(extra[n])) for n, peak in enumerate(moved)])
-    return {n: (low, high) for n, low, high in zip(unsure, *found, strict=True)}
-
-
-def _moved(peak: Peak, up: bool) -> Peak:
-    """Return the peak with its diffusion coefficient at one end of its uncertainty."""
-    factor = 1 + peak.estimate.uncertainty
-    value = peak.estimate.value * factor if up else peak.estimate.value / factor
-    return replace(peak, estimate=replace(peak.estimate, value=value))
-
-
-def _recorded(instrument: Instrument, chain: tuple[Link, ...], peak: Peak, extra: float) -> Recorded:
-    time, bands = _own_bands(instrument, chain, peak)
-    total = sum(band.variance for band in bands) + extra
-    return Recorded(total, time**2 / total if bands and total else None)
+def _beds_passed(instrument: Instrument, parts: Iterable[Part], peak: Peak) -> list[tuple[Part, Bed, Stream]]:
+    """Return the columns among these parts, each with what flows through it of one peak."""
+    return [(part, bed, Stream(instrument.flow, peak.diffusion_in(part))) for part in parts for bed in beds_of([part])]
 
 
 def _columns_range(instrument: Instrument, chain: tuple[Link, ...], peak: Peak) -> tuple[float, float] | None:
     """Return the fewest and most plates of the columns together, where N comes from a curve."""
-    passed = [(link.part, link.element) for link in chain if isinstance(link.element, Bed)]
-    streams = [Stream(instrument.flow, peak.diffusion_in(part)) for part, _ in passed]
-    spans = [bed.plates_range(stream) for (_, bed), stream in zip(passed, streams, strict=True)]
+    passed = _beds_passed(instrument, _parts(chain), peak)
+    spans = [bed.plates_range(stream) for _, bed, stream in passed]
     if peak.plates is not None or not any(spans):
         return None
-    times = [bed.void_volume for _, bed in passed]
+    time = sum(bed.void_volume for _, bed, _ in passed)
     ends = []
     for end in (0, 1):
-        plates = [
-            float(span[end] if span else bed.plates_for(stream))
-            for span, (_, bed), stream in zip(spans, passed, streams, strict=True)
-        ]
-        ends.append(sum(times) ** 2 / sum(t**2 / n for t, n in zip(times, plates, strict=True)))
+        variance = 0.0
+        for span, (_, bed, stream) in zip(spans, passed, strict=True):
+            variance += bed.void_volume**2 / float(span[end] if span else bed.plates_for(stream))
+        ends.append(time**2 / variance)
     return ends[0], ends[1]
 
 
@@ -266,19 +232,25 @@ def _own_bands(instrument: Instrument, chain: tuple[Link, ...], peak: Peak) -> t
     is scaled alike, so that a detector between columns gets its share.
     """
 
-    def column_of(part: Part, bed: Bed) -> Column:
-        return bed.retained(Stream(instrument.flow, peak.diffusion_in(part)), peak.k or 0.0)
+    def columns(parts: Iterable[Part]) -> list[tuple[Part, Column]]:
+        passed = _beds_passed(instrument, parts, peak)
+        return [(part, bed.retained(stream, peak.k or 0.0)) for part, bed, stream in passed]
 
     scale = 1.0
     if peak.plates is not None:
-        every = [column_of(part, bed) for part in instrument.parts for bed in beds_of([part])]
+        every = [column for _, column in columns(instrument.parts)]
         time, variance = sum(float(c.delay()) for c in every), sum(float(c.variance()) for c in every)
         scale = time**2 / peak.plates / variance
-    passed = [(link.part, column_of(link.part, link.element)) for link in chain if isinstance(link.element, Bed)]
+    passed = columns(_parts(chain))
     bands = tuple(
         ColumnBand(part, float(column.variance()) * scale, float(column.plates) / scale) for part, column in passed
     )
     return sum(float(column.delay()) for _, column in passed), bands
+
+
+def _parts(chain: tuple[Link, ...]) -> tuple[Part, ...]:
+    """Return the parts of a chain, each once."""
+    return tuple({link.part.position: link.part for link in chain}.values())
 
 
 @dataclass(frozen=True)

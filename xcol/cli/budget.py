@@ -41,7 +41,7 @@ def budget(
     answer = answer_of(read(file, catalogs or []))
     at = _chosen_detector(answer, detector, file)
     chosen = _chosen_peak(at, peak, file)
-    deliver(_forms(answer, at, chosen, full), form, output, force, file, *(catalogs or []))
+    deliver(_forms(answer, at, chosen, full), form, output, force, *answer.instrument.files, *(catalogs or []))
 
 
 def _forms(answer: Budget, at: DetectorBudget, chosen: PeakBudget, full: bool) -> Forms:

@@ -32,4 +32,4 @@ def check(
         markdown=lambda: check_markdown(answer),
         text=lambda sheet: check_text(answer, sheet),
     )
-    deliver(forms, form, output, force, file, *(catalogs or []))
+    deliver(forms, form, output, force, *answer.instrument.files, *(catalogs or []))

@@ -2,10 +2,11 @@
 
 from __future__ import annotations
 
+from pathlib import Path
 from typing import TYPE_CHECKING
 
 from xcol.catalogs import Catalogs, records_of
-from xcol.errors import InputError
+from xcol.errors import InputError, Place
 from xcol.flowpath.locate import KeyLines, key_lines
 from xcol.flowpath.source import read_text
 from xcol.flowpath.toml_text import load
@@ -21,12 +22,18 @@ if TYPE_CHECKING:
 def read_catalogs(names: Iterable[str], findings: Findings) -> Catalogs:
     """Return the shipped catalogs with the rows of these files on top; faults go to the findings.
 
-    A row that stands in place of a shipped one is warned of.
+    A row that stands in place of another is warned of.
     """
     records: list[Record] = []
     for name in dict.fromkeys(names):
+        if Path(name).name == "-":
+            place = Place(name, key="catalogs")
+            findings.fault(place, "standard input", "the name of a catalog file", "a file of its own")
+            continue
         try:
-            text = read_text(name)
+            text = read_text(
+                name, "a catalog file", 'begin with [[solute]], name = "...", molar_mass = "...", source = "..."'
+            )
         except InputError as error:
             findings.faults += error.faults
             continue
@@ -38,8 +45,9 @@ def read_catalogs(names: Iterable[str], findings: Findings) -> Catalogs:
         records += found
         findings.faults += faults
     catalogs = Catalogs(records)
-    for own, shipped in catalogs.replaced():
-        findings.warn(f'{own.file}: "{own.name}" stands in place of the shipped "{shipped.name}"')
+    findings.faults += catalogs.loose_ends()
+    for remark in catalogs.remarks():
+        findings.warn(remark)
     return catalogs
 
 

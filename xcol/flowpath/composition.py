@@ -1,48 +1,33 @@
 """A mobile phase as people write it -> its liquids in volume parts.
 
-"acetonitrile/water 60:40", "60:40 ACN:H2O", "40 % methanol in water", "0.1 % formic acid in water",
-"methanol/20 mM phosphate pH 2.5 (60/40)". What is dissolved in a liquid is left out, and said so.
+"acetonitrile/water 60:40", "60:40 ACN:H2O", "40 % methanol in water", "water (0.1 % FA)/ACN (0.1 % FA) 30:70",
+"methanol/20 mM phosphate pH 2.5 (60/40)". What is dissolved in a liquid is left out, and said so. Every word
+must be one that is known here (composition_words.py): nothing is read over, so that no liquid gets lost.
 """
 
 from __future__ import annotations
 
-import re
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
 
-from xcol.catalogs import MIXTURES, SOLVENTS
+from xcol.catalog_kinds import MIXTURES, SOLVENTS
+from xcol.flowpath.composition_words import Sort, Word, line_of, words_of
 from xcol.liquids.mobile_phase import Component, MobilePhase
-from xcol.units import UnitError, plain, quote
+from xcol.units import UnitError, quote
 
 if TYPE_CHECKING:
+    from collections.abc import Sequence
+
     from xcol.catalog_records import Mixture, Solvent
     from xcol.catalogs import Catalogs
 
 LONGEST = 200  # characters
 MOST_LIQUIDS = 6
 DILUTE_PERCENT, DILUTE_MOLAR = 2.0, 0.2  # above, a solution is noticeably more viscous than its liquid
-MOST_DISSOLVED = 5.0  # per cent of something unknown that may be an additive of water
+TRACE = 0.02  # share of a part that may be an additive by name alone, as in "acetonitrile/water/TFA 30:70:0.1"
 
+_NAMING = (Sort.SOLVENT, Sort.SOLUTE, Sort.BUFFER, Sort.PH, Sort.UNKNOWN, Sort.WEIGHT)
 _EXPECTED = 'liquids in volume parts, as in "acetonitrile/water 60:40"'
-_NUMBER = r"\d{1,4}(?:[.,]\d{1,4})?"
-_PARTS = re.compile(
-    rf"(?<![\w.,])[(\[]?\s*({_NUMBER}(?:\s*[:/]\s*{_NUMBER})+)(?!\w|[.,]\d|\s*(?:%|m?M\b|mmol|mol|g/|mg))\s*[)\]]?"
-    r"\s*,?\s*(?:[(\[]?(?:v/v(?:/v)*|vol(?:ume)?\b\.?|by volume)\s*[)\]]?)?",
-    re.I,
-)
-_BY_WEIGHT = re.compile(r"\b(?:w/w|m/m|w/v|wt|weight|by mass)\b", re.I)
-_VOLUME_WORDS = re.compile(r"[(\[]?\b(?:v/v(?:/v)*|by volume)\b[)\]]?", re.I)
-_PERCENT_FIRST = re.compile(rf"({_NUMBER})\s*(?:%|per ?cent)\s*(.+)", re.I)
-_PERCENT_LAST = re.compile(rf"(.+?)\s*[,(]?\s*({_NUMBER})\s*(?:%|per ?cent)\s*\)?", re.I)
-_WITHIN = re.compile(r"(.+?)\s+(?:in|dissolved in)\s+(.+)", re.I)
-_WITH = re.compile(r"(.+?)\s*(?:\bwith\b|\bcontaining\b|\bplus\b|\+|,|;|&)\s*(.+)", re.I)
-_AQUEOUS = re.compile(  # what is dissolved in water, where nobody wrote the water
-    r"\b(?:buffer\w*|phosphate|citrate|borate|(?:bi)?carbonate|tris|hepes|mes|mops|pbs|saline|nacl|kcl|"
-    rf"sodium|potassium|ammonium|lithium|aqueous|aq|ph\s*{_NUMBER}|{_NUMBER}\s*(?:mM|mmol(?:/l)?|mol/l|M))\b",
-    re.I,
-)
-_PERCENT_OF = re.compile(rf"({_NUMBER})\s*(?:%|per ?cent)")
-_MOLAR = re.compile(rf"({_NUMBER})\s*(m?)(?:M\b|mol/[lL]|mol\b)")
 
 
 @dataclass(frozen=True)
@@ -56,11 +41,21 @@ class Composition:
 
 @dataclass(frozen=True)
 class _Piece:
-    """One liquid of the text: its share in per cent where it stands with it, and what it was typed as."""
+    """What stands between two separators: a liquid, or (without one) only something dissolved.
 
-    solvent: Solvent
+    ``percent`` and ``part`` are the liquid's own share, where it stands with it; ``dissolved`` says that
+    something else does as well, ``watery`` that it is a solution in water even where no water is named.
+    """
+
+    text: str
+    start: int
+    end: int
+    solvent: Solvent | None
     percent: float | None = None
-    solution: str = ""  # as typed, where something is dissolved in it
+    part: float | None = None
+    dissolved: bool = False
+    watery: bool = False
+    concentrated: bool = False
 
 
 def read_composition(text: str, catalogs: Catalogs) -> Composition:
@@ -68,33 +63,27 @@ def read_composition(text: str, catalogs: Catalogs) -> Composition:
     shown = quote(text)
     if len(text) > LONGEST:
         raise UnitError(shown, f"{_EXPECTED}, {LONGEST} characters at most", "a shorter text")
-    if _BY_WEIGHT.search(text):
-        raise UnitError(f"{shown}, by weight", _EXPECTED, "the volume parts")
-    words = plain(text)
-    found = list(_PARTS.finditer(words))
-    if len(found) > 1:
-        raise UnitError(f"{shown}, with volume parts in two places", _EXPECTED, "the parts once")
-    parts: list[float] | None = None
-    if found:
-        parts = [_float(number) for number in re.split(r"[:/]", found[0][1])]
-        words = f"{words[: found[0].start()]} {words[found[0].end() :]}"
-    words = " ".join(_VOLUME_WORDS.sub(" ", words).split()).strip(" ,;=")
-    if not words:
+    line = line_of(text)
+    words, parts = _without_parts(words_of(line, catalogs), shown)
+    if not any(word.sort in _NAMING for word in words):
         raise UnitError(shown, _EXPECTED, "the names of the liquids before their parts")
-    pieces = _pieces(words, shown, catalogs, has_parts=parts is not None)
-    if len(pieces) > MOST_LIQUIDS:
-        raise UnitError(f"{shown}, {len(pieces)} liquids", f"{MOST_LIQUIDS} liquids at most", "the main ones")
-    fractions = _fractions(pieces, parts, shown)
+    _refuse_unknown(words, shown, catalogs)
+    entered = sum(parts or ())
+    pieces = _pieces(words, line, shown, catalogs, parts)
+    liquids, parts, traces = _liquids(pieces, parts, shown)
+    fractions = _fractions(liquids, parts, shown, rest=any(word.sort is Sort.IN for word in words))
     together: dict[str, Component] = {}
-    for piece, fraction in zip(pieces, fractions, strict=True):
-        before = together.get(piece.solvent.name)
-        if fraction > 0:
+    for piece, fraction in zip(liquids, fractions, strict=True):
+        if piece.solvent is not None and fraction > 0:
+            before = together.get(piece.solvent.name)
             total = fraction + (before.fraction if before else 0.0)
             together[piece.solvent.name] = Component(piece.solvent, total)
-    solutions = [piece for piece in pieces if piece.solution]
-    left_out = tuple(f"{quote(piece.solution)} is taken as {piece.solvent.name}" for piece in solutions)
-    warnings = tuple(warning for piece in solutions if (warning := _concentrated(piece)))
-    return Composition(MobilePhase(tuple(together.values()), _excesses(catalogs)), left_out, warnings)
+    solutions = [piece for piece in pieces if piece.dissolved]
+    phase = MobilePhase(tuple(together.values()), excesses_of(catalogs))
+    left_out = [_left_out(piece) for piece in (*solutions, *traces)]
+    return Composition(
+        phase, tuple(dict.fromkeys(left_out)), tuple(_warnings(solutions, (entered, sum(parts or ())), phase))
+    )
 
 
 def water_of(catalogs: Catalogs) -> MobilePhase:
@@ -103,7 +92,8 @@ def water_of(catalogs: Catalogs) -> MobilePhase:
     return MobilePhase((Component(water, 1.0),) if water else ())
 
 
-def _excesses(catalogs: Catalogs) -> dict[str, Mixture]:
+def excesses_of(catalogs: Catalogs) -> dict[str, Mixture]:
+    """Return the measured mixtures with water by the name of the other liquid."""
     found: dict[str, Mixture] = {}
     for mixture in catalogs.rows(MIXTURES):
         solvent = catalogs.find(SOLVENTS, mixture.liquid)
@@ -112,118 +102,252 @@ def _excesses(catalogs: Catalogs) -> dict[str, Mixture]:
     return found
 
 
-def _pieces(words: str, shown: str, catalogs: Catalogs, *, has_parts: bool) -> list[_Piece]:
-    """Return the liquids of a text without its volume parts."""
-    if re.search(r"\s*[/|:]\s*", words):
-        named = [word.strip(" ,;") for word in re.split(r"[/|:]", words)]
-        return [_piece(word, shown, catalogs) for word in named if word]
-    if catalogs.find(SOLVENTS, words):
-        return [_piece(words, shown, catalogs)]
-    for listed in (re.split(r"\s+and\s+|\s*[,;+]\s*|\s+-\s+", words), *_at_hyphens(words)):
-        pieces = [_solvent_piece(word, catalogs) for word in listed]
-        known = [piece for piece in pieces if piece]
-        if len(known) == len(pieces) > 1:
-            return known
-    if not has_parts and (pair := _solvent_within(words, shown, catalogs)):
-        return pair
-    return [_piece(words, shown, catalogs)]
+def _without_parts(words: list[Word], shown: str) -> tuple[list[Word], list[float] | None]:
+    """Take the volume parts out of the words; None where there are none."""
+    found = [word for word in words if word.sort is Sort.PARTS]
+    if len(found) > 1:
+        raise UnitError(f"{shown}, with volume parts in two places", _EXPECTED, "the parts once")
+    kept = [word for word in words if word.sort not in (Sort.PARTS, Sort.NOISE)]
+    while kept and kept[-1].sort in (Sort.SLASH, Sort.COMMA):
+        kept.pop()
+    while kept and kept[0].sort in (Sort.SLASH, Sort.COMMA):
+        kept.pop(0)
+    return kept, list(found[0].values) if found else None
 
 
-def _at_hyphens(words: str) -> list[list[str]]:
-    """Return the ways to cut "acetonitrile-water" at one hyphen."""
-    return [[words[: m.start()], words[m.end() :]] for m in re.finditer("-", words)]
+def _refuse_unknown(words: list[Word], shown: str, catalogs: Catalogs) -> None:
+    if any(word.sort is Sort.WEIGHT for word in words):
+        raise UnitError(f"{shown}, by weight", _EXPECTED, "the volume parts")
+    unknown = next((word for word in words if word.sort is Sort.UNKNOWN), None)
+    if unknown is None:
+        return
+    read = f"{shown}, in which {quote(unknown.text)} is not known here"
+    place = words.index(unknown)
+    if unknown.text == "-" and 0 < place < len(words) - 1 and words[place + 1].sort is Sort.PERCENT:
+        raise UnitError(f"{shown}, a range", f"{_EXPECTED}: gradients are not computed yet", "one composition")
+    near = catalogs.near(SOLVENTS, unknown.text)
+    by_hand = "viscosity and each peak's diffusion, or a catalog of your own"
+    suggestion = f'"{near}"' if near else f"leave it out if it is a dilute additive; otherwise {by_hand}"
+    raise UnitError(read, f"{_EXPECTED}; xcol catalog solvents lists what is known", suggestion)
 
 
-def _solvent_piece(word: str, catalogs: Catalogs) -> _Piece | None:
-    """Return a liquid, with its per cent where they stand with it; None for anything else."""
-    word = word.strip()
-    if solvent := catalogs.find(SOLVENTS, word):
-        return _Piece(solvent)
-    if (match := _PERCENT_FIRST.fullmatch(word)) and (solvent := catalogs.find(SOLVENTS, match[2])):
-        return _Piece(solvent, _float(match[1]))
-    if (match := _PERCENT_LAST.fullmatch(word)) and (solvent := catalogs.find(SOLVENTS, match[1])):
-        return _Piece(solvent, _float(match[2]))
-    return None
-
-
-def _solvent_within(words: str, shown: str, catalogs: Catalogs) -> list[_Piece]:
-    """Read "40 % methanol in water" and "water with 5 % acetonitrile": one liquid in another."""
-    for pattern, small, large in ((_WITHIN, 1, 2), (_WITH, 2, 1)):
-        match = pattern.fullmatch(words)
-        if match and (part := _solvent_piece(match[small], catalogs)) and part.percent is not None:
-            rest = _piece(match[large], shown, catalogs)
-            if rest.percent is None and part.percent < 100:
-                return [part, _Piece(rest.solvent, 100 - part.percent, rest.solution)]
-    return []
-
-
-def _piece(word: str, shown: str, catalogs: Catalogs) -> _Piece:
-    """Return one liquid: a pure one, or the one in which something is dissolved."""
-    if piece := _solvent_piece(word, catalogs):
-        return piece
-    for pattern, liquid in ((_WITHIN, 2), (_WITH, 1)):
-        if (match := pattern.fullmatch(word)) and (solvent := catalogs.find(SOLVENTS, match[liquid])):
-            return _Piece(solvent, None, word)
+def _pieces(words: list[Word], line: str, shown: str, catalogs: Catalogs, parts: list[float] | None) -> list[_Piece]:
+    """Cut the words into liquids and what is dissolved: at slashes, or else at commas, "and", "+" and "with"."""
+    strong = any(word.sort is Sort.SLASH and not word.inside for word in words)
+    found: list[_Piece] = []
+    for chunk in _cut(words, (Sort.SLASH,) if strong else (Sort.COMMA,)):
+        groups = _cut(chunk, (Sort.COMMA, Sort.IN))
+        smaller = [_piece(group, line, shown) for group in groups if any(w.sort is not Sort.BRACKET for w in group)]
+        dissolved_in = len(smaller) == 2 and smaller[0].solvent is None and smaller[1].solvent is not None
+        found += [_merged(smaller, line, shown)] if smaller and (strong or dissolved_in) else smaller
+    if not strong and not any(piece.solvent for piece in found):  # all of it is one solution
+        found = [_merged(found, line, shown)]
     water = catalogs.find(SOLVENTS, "water")
-    amounts = [_float(number) for number in _PERCENT_OF.findall(word)]
-    if water and (_AQUEOUS.search(word) or (amounts and max(amounts) <= MOST_DISSOLVED)):
-        return _Piece(water, None, word)
-    if (match := re.fullmatch(rf"(.+?)\s+({_NUMBER})", word)) and catalogs.find(SOLVENTS, match[1]):
-        raise UnitError(f"{shown}, with one number", _EXPECTED, "the parts of all liquids")
-    near = catalogs.near(SOLVENTS, word)
-    raise UnitError(
-        f"{shown}, in which {quote(word)} is not a liquid known here",
-        f"{_EXPECTED}; xcol catalog solvents lists what is known",
-        f'"{near}"' if near else 'viscosity = "0.9 mPa s" and each peak\'s diffusion, or a catalog of your own',
+    rest = any(word.sort is Sort.IN for word in words)
+    return [
+        replace(piece, solvent=water) if _is_water(piece, found, strong=strong, parts=parts, rest=rest) else piece
+        for piece in found
+    ]
+
+
+def _is_water(piece: _Piece, pieces: list[_Piece], *, strong: bool, parts: list[float] | None, rest: bool) -> bool:
+    """Whether a solution of which no liquid is named stands for water, beside the other pieces."""
+    if piece.solvent or not piece.watery:
+        return False
+    if strong or len(pieces) == 1 or piece.percent is not None or piece.part is not None:
+        return True
+    if parts is not None:
+        return len(parts) == len(pieces)
+    liquids = [other for other in pieces if other.solvent]  # "90 % ACN in 10 mM ammonium formate"
+    return rest and len(liquids) == 1 and liquids[0].percent is not None and piece.start > liquids[0].start
+
+
+def _cut(words: Sequence[Word], at: tuple[Sort, ...]) -> list[list[Word]]:
+    groups: list[list[Word]] = [[]]
+    for word in words:
+        if word.sort in at and not word.inside:
+            groups.append([])
+        else:
+            groups[-1].append(word)
+    return [group for group in groups if group]
+
+
+def _piece(words: list[Word], line: str, shown: str) -> _Piece:
+    """Read one piece: its liquid, the numbers that belong to it, and whether anything is dissolved in it."""
+    start, end = words[0].start, words[-1].end
+    text = line[start:end].rstrip(" ,;(")
+    solvents = {word.solvent.name: word.solvent for word in words if word.solvent}
+    if len(solvents) > 1:
+        raise UnitError(
+            f"{shown}, with {' and '.join(solvents)} side by side", _EXPECTED, f'"{"/".join(solvents)} 60:40"'
+        )
+    solvent = next(iter(solvents.values()), None)
+    dissolved = [word for word in words if word.sort in (Sort.SOLUTE, Sort.BUFFER, Sort.PH)]
+    sorts = {word.sort for word in words}
+    in_water = bool(sorts & {Sort.BUFFER, Sort.PH, Sort.MOLAR})
+    if solvent and any(word.text.lower().startswith("aq") for word in words) and solvent.viscosity is not None:
+        raise UnitError(f"{shown}, a mixture with water", _EXPECTED, f'"{solvent.name}/water 60:40"')
+    own: list[float] = []
+    others: list[float] = []
+    numbers = [word for word in words if word.sort in (Sort.PERCENT, Sort.NUMBER, Sort.MOLAR)]
+    for number in numbers:
+        after = _next(words, number)
+        if number.sort is Sort.PERCENT:
+            of_solute = after is not None and after.sort is Sort.SOLUTE and Sort.BUFFER not in sorts
+            (others if of_solute else own).append(number.values[0])
+    parts = [number.values[0] for number in numbers if number.sort is Sort.NUMBER]
+    molar = [number.values[0] for number in numbers if number.sort is Sort.MOLAR]
+    if len(own) > 1 or len(parts) > 1 or (own and parts) or (molar and not dissolved):
+        raise UnitError(
+            f"{shown}, with numbers that read more than one way in {quote(text)}", _EXPECTED, "one for each"
+        )
+    return _Piece(
+        text,
+        start,
+        end,
+        solvent,
+        own[0] if own else None,
+        parts[0] if parts else None,
+        bool(dissolved),
+        in_water or bool(dissolved and others),
+        any(value > DILUTE_PERCENT for value in others) or any(value > DILUTE_MOLAR for value in molar),
     )
 
 
-def _fractions(pieces: list[_Piece], parts: list[float] | None, shown: str) -> list[float]:
-    """Return the volume fraction of each liquid."""
-    names = "/".join(piece.solvent.name for piece in pieces)
-    given = [piece.percent for piece in pieces if piece.percent is not None]
-    if parts is not None and given:
-        raise UnitError(f"{shown}, with per cent and parts", _EXPECTED, "one of the two")
-    if parts is None and len(pieces) == 1:
-        if given and given[0] != 100:
-            rest = 100 - given[0]
-            raise UnitError(shown, _EXPECTED, f'"{names}/water {given[0]:g}:{rest:g}", if the rest is water')
+def _next(words: list[Word], word: Word) -> Word | None:
+    """Return the word that a number belongs to: the one behind it, brackets aside."""
+    behind = words[words.index(word) + 1 :]
+    return next((other for other in behind if other.sort is not Sort.BRACKET), None)
+
+
+def _merged(pieces: list[_Piece], line: str, shown: str) -> _Piece:
+    """Return what stands between two slashes as one piece: a liquid with all that is dissolved in it."""
+    named = {piece.solvent.name: piece for piece in pieces if piece.solvent}
+    if len(named) > 1:
+        raise UnitError(f"{shown}, with {' and '.join(named)} in one part", _EXPECTED, f'"{"/".join(named)} 60:40"')
+    liquid = next(iter(named.values()), pieces[0])
+    shares = [piece.percent for piece in pieces if piece.percent is not None]
+    parts = [piece.part for piece in pieces if piece.part is not None]
+    start, end = pieces[0].start, pieces[-1].end
+    text = line[start:end].rstrip(" ,;(")
+    if len(shares) > 1 or len(parts) > 1:
+        raise UnitError(f"{shown}, with more than one number in {quote(text)}", _EXPECTED, "one for each liquid")
+    return _Piece(
+        text,
+        start,
+        end,
+        liquid.solvent,
+        shares[0] if shares else None,
+        parts[0] if parts else None,
+        any(piece.dissolved for piece in pieces),
+        any(piece.watery for piece in pieces),
+        any(piece.concentrated for piece in pieces),
+    )
+
+
+def _liquids(
+    pieces: list[_Piece], parts: list[float] | None, shown: str
+) -> tuple[list[_Piece], list[float] | None, list[_Piece]]:
+    """Return the liquids with their parts, and the additives that have a part of their own."""
+    liquids = [piece for piece in pieces if piece.solvent]
+    traces = [piece for piece in pieces if piece.solvent is None and piece.dissolved]
+    if len(pieces) > MOST_LIQUIDS:
+        raise UnitError(f"{shown}, {len(pieces)} liquids", f"{MOST_LIQUIDS} liquids at most", "the main ones")
+    if not liquids:
+        read = f"{shown}, which names no liquid"
+        raise UnitError(read, _EXPECTED, 'the liquid as well, as in "0.1 % formic acid in water"')
+    if parts is not None and traces and len(parts) == len(pieces):
+        shares = [part for piece, part in zip(pieces, parts, strict=True) if piece.solvent is None]
+        if sum(shares) > TRACE * sum(parts):
+            raise UnitError(
+                f"{shown}, in which {quote(traces[0].text)} is more than an additive",
+                f"{_EXPECTED}; xcol catalog solvents lists what is known",
+                "viscosity and each peak's diffusion, or a catalog of your own",
+            )
+        parts = [part for piece, part in zip(pieces, parts, strict=True) if piece.solvent]
+        return liquids, parts, [replace(piece, dissolved=True) for piece in traces]
+    return liquids, parts, []
+
+
+def _fractions(pieces: list[_Piece], parts: list[float] | None, shown: str, *, rest: bool) -> list[float]:
+    """Return the volume fraction of each liquid; ``rest``: the one without a share takes what is left."""
+    names = [piece.solvent.name for piece in pieces if piece.solvent]
+    percent = [piece.percent for piece in pieces]
+    given = [share for share in percent if share is not None]
+    beside = [piece.part for piece in pieces if piece.part is not None]
+    if (parts is not None and (given or beside)) or (given and beside):
+        raise UnitError(f"{shown}, with shares given twice", _EXPECTED, "them once")
+    if parts is None and len(pieces) == 1 and not beside and given in ([], [100.0]):
         return [1.0]
-    example = ":".join({2: ("60", "40"), 3: ("60", "30", "10")}.get(len(pieces), ("1",) * len(pieces)))
-    values = parts if parts is not None else given
+    if rest and len(given) == len(pieces) - 1 and 0 < sum(given) < 100:
+        return [(100 - sum(given) if share is None else share) / 100 for share in percent]
+    values = parts if parts is not None else given or beside
     if len(values) != len(pieces):
-        if not values:
-            read = f"{shown}, without volume parts"
-        elif parts is None:
-            read = f"{shown}, with the per cent of some of its liquids"
-            if len(pieces) == 2 and 0 < given[0] < 100:
-                share = given[0] if pieces[0].percent is not None else 100 - given[0]
-                example = f"{share:g}:{100 - share:g}"
-        else:
-            read = f"{shown}, {len(values)} volume parts and {len(pieces)} liquid{'s' if len(pieces) > 1 else ''}"
-            if len(pieces) == 1 and len(values) == 2:
-                names, example = f"{names}/water", f'{values[0]:g}:{values[1]:g}", if the other liquid is water'
-                raise UnitError(read, f"{_EXPECTED}, one part for each liquid", f'"{names} {example}')
-        raise UnitError(read, f"{_EXPECTED}, one part for each liquid", f'"{names} {example}"')
+        raise _wrong_count(names, values, percent, parts, shown)
     total = sum(values)
     if total <= 0:
-        raise UnitError(f"{shown}, with parts that are all 0", _EXPECTED, f'"{names} {example}"')
-    if parts is None and abs(total - 100) > 0.5:
+        raise UnitError(f"{shown}, with parts that are all 0", _EXPECTED, _example(names, []))
+    if given and abs(total - 100) > 0.5:
+        if len(pieces) == 1:
+            raise _wrong_count(names, values, percent, parts, shown)
         raise UnitError(f"{shown}, {total:g} % together", f"{_EXPECTED}, or per cent that add up to 100", "check them")
+    if len(pieces) == 1 and beside:
+        raise _wrong_count(names, values, percent, parts, shown)
     return [value / total for value in values]
 
 
-def _concentrated(piece: _Piece) -> str:
-    """Warn of a solution that is noticeably more viscous than its liquid."""
-    percent = [_float(number) for number in _PERCENT_OF.findall(piece.solution)]
-    molar = [_float(number) * (1e-3 if milli else 1.0) for number, milli in _MOLAR.findall(piece.solution)]
-    if any(value > DILUTE_PERCENT for value in percent) or any(value > DILUTE_MOLAR for value in molar):
-        return (
-            f"{quote(piece.solution)} is taken as {piece.solvent.name}: at this concentration its viscosity is higher; "
-            "enter viscosity if you know it"
-        )
-    return ""
+def _wrong_count(
+    names: list[str], values: list[float], percent: list[float | None], parts: list[float] | None, shown: str
+) -> UnitError:
+    """Return the error for liquids and shares that do not go together, with the likely reading."""
+    expected = f"{_EXPECTED}, one part for each liquid"
+    if len(names) == 1 and len(values) == 2:
+        other = "water" if names[0] != "water" else "acetonitrile"
+        suggestion = f'"{names[0]}/{other} {values[0]:g}:{values[1]:g}", if the other liquid is {other}'
+        return UnitError(f"{shown}, 2 volume parts and 1 liquid", expected, suggestion)
+    if len(names) == 1 and len(values) == 1 and 0 < values[0] < 100:
+        other = "water" if names[0] != "water" else "acetonitrile"
+        share = values[0]
+        suggestion = f'"{names[0]}/{other} {share:g}:{100 - share:g}", if the rest is {other}'
+        return UnitError(f"{shown}, a share of one liquid alone", expected, suggestion)
+    if not values:
+        return UnitError(f"{shown}, without volume parts", expected, _example(names, []))
+    if parts is not None:
+        return UnitError(f"{shown}, {len(values)} volume parts and {len(names)} liquids", expected, _example(names, []))
+    if len(names) == 2 and len(values) == 1 and 0 < values[0] < 100:
+        first = values[0] if percent[0] is not None else 100 - values[0]
+        either = (_example(names, [share, 100 - share]) for share in (first, 100 - first))
+        return UnitError(f"{shown}, with the share of one liquid", expected, " or ".join(either))
+    return UnitError(f"{shown}, with the shares of some liquids", expected, _example(names, []))
 
 
-def _float(number: str) -> float:
-    return float(number.strip().replace(",", "."))
+def _example(names: list[str], values: list[float]) -> str:
+    names = list(dict.fromkeys(names))
+    if len(names) == 1:
+        names.append("acetonitrile" if names[0] == "water" else "water")
+    usual = {2: [60.0, 40.0], 3: [60.0, 30.0, 10.0]}.get(len(names), [1.0] * len(names))
+    return f'"{"/".join(names)} {":".join(f"{value:g}" for value in values or usual)}"'
+
+
+def _left_out(piece: _Piece) -> str:
+    if piece.solvent is None:
+        return f"{quote(piece.text)} is left out"
+    return f"{quote(piece.text)} is taken as {piece.solvent.name}"
+
+
+def _warnings(solutions: list[_Piece], totals: tuple[float, float], phase: MobilePhase) -> list[str]:
+    """Warn of what is noticeably more viscous than its liquid, of odd parts, and of liquids that do not mix.
+
+    ``totals``: of all parts, and of those of the liquids alone.
+    """
+    found = [
+        f"{quote(piece.text)}: at this concentration the viscosity is higher than the liquid's; enter it if you know it"
+        for piece in solutions
+        if piece.concentrated
+    ]
+    if 80 <= totals[0] <= 120 and all(abs(total - 100) > 0.5 for total in totals):
+        found.append(f"the parts add up to {totals[0]:g}, not 100: read as {phase.name}")
+    apart = [c.solvent.name for c in phase.components if not c.solvent.mixes_with_water]
+    if apart and any(c.solvent.viscosity is None for c in phase.components):
+        found.append(f"{' and '.join(apart)} and water do not mix in all parts: one liquid phase is taken")
+    return found

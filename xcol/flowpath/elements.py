@@ -199,12 +199,11 @@ class Block(WithoutDrop):
 
 
 @dataclass(frozen=True)
-class BestAndWorst:
-    """A reduced plate height curve with the best and the worst that is usual of such a packing."""
+class Curves:
+    """The reduced plate height curve of a packing, with the best and the worst that is usual (None: not known)."""
 
     usual: PlateHeightCurve
-    best: PlateHeightCurve
-    worst: PlateHeightCurve
+    ends: tuple[PlateHeightCurve, PlateHeightCurve] | None = None
 
 
 @dataclass(frozen=True)
@@ -223,7 +222,7 @@ class Bed:
     void_volume: float
     porosity: tuple[float, float, float]  # value, smallest, largest
     plates_at: float | None = None
-    curve: BestAndWorst | None = None
+    curve: Curves | None = None  # needs the particle
     porosity_from: str = ""  # source of an assumed interstitial porosity
     contribution: str = "column"
     of_signal: bool = False
@@ -253,7 +252,7 @@ class Bed:
 
     def plates_for(self, stream: Stream) -> Real:
         """Plate number [-] for this flow and solute: entered, scaled with the curve, or from it alone."""
-        if self.curve is None or (self.plates is not None and self.plates_at is None):
+        if self.curve is None:
             return self.plates if self.plates is not None else 1.0
         usual = self._from(self.curve.usual, stream)
         if self.plates is None or self.plates_at is None:
@@ -262,9 +261,10 @@ class Bed:
 
     def plates_range(self, stream: Stream) -> tuple[Real, Real] | None:
         """Return the fewest and the most plates that such packings give; None where they were entered."""
-        if self.curve is None or self.plates is not None:
+        if self.curve is None or self.curve.ends is None or self.plates is not None:
             return None
-        return self._from(self.curve.worst, stream), self._from(self.curve.best, stream)
+        best, worst = self.curve.ends
+        return self._from(worst, stream), self._from(best, stream)
 
     def velocity(self, stream: Stream) -> Real:
         """Reduced velocity ν of a solute [-], by L/t₀; needs the particle size."""

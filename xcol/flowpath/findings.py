@@ -12,6 +12,7 @@ from xcol.flowpath.model import Assumption
 from xcol.units import plain, quote
 
 if TYPE_CHECKING:
+    from xcol.catalog_records import Record
     from xcol.flowpath.keys import Value
     from xcol.units import UnitError
 
@@ -65,6 +66,8 @@ class Draft:
     values: dict[str, Value] = field(default_factory=dict)
     written: dict[str, str] = field(default_factory=dict)  # values as typed, for messages
     inner: dict[str, Draft] = field(default_factory=dict)  # its tables
+    within: str = ""  # the table it is, "at." for instance
+    row: Record | None = None  # the catalog row that its name stands for
 
     def number(self, key: str) -> float | None:
         """Return a number in SI units, None where the key was not given."""
@@ -85,7 +88,8 @@ class Draft:
         """Return the draft of an inner table of this part or peak; faults name the table's place."""
         line = self.lines.get(key) or self.lines.get("")
         lines = {"": line} if line else {}
-        return Draft(self.kind, self.name, self.position, self.file, lines, self.findings, self.catalogs)
+        within = f"{self.within}{key}."
+        return Draft(self.kind, self.name, self.position, self.file, lines, self.findings, self.catalogs, within=within)
 
     @property
     def label(self) -> str:
@@ -105,7 +109,7 @@ class Draft:
     def place(self, key: str = "") -> Place:
         """Return the place of a key, or of the part."""
         line = self.lines.get(key) or self.lines.get("")
-        return Place(self.file, line, self.label, plain(key)[:60])
+        return Place(self.file, line, self.label, f"{self.within}{plain(key)}"[:60])
 
     def fault(self, key: str, expected: str, suggestion: str, read: str = "") -> None:
         """Add a fault at a key; ``read`` defaults to what was typed there."""

@@ -14,6 +14,8 @@ from xcol.units import (
     Quantity,
     UnitError,
     convert,
+    described,
+    is_huge,
     missing_unit,
     parse,
     plain,
@@ -60,7 +62,7 @@ class Measure:
 
     def __call__(self, raw: object) -> float:
         """Return the value in SI units."""
-        if _is_huge(raw):
+        if is_huge(raw):
             raise UnitError(described(raw), f"{self.quantity.name} with its unit", "a smaller number")
         if isinstance(raw, int | float) and not isinstance(raw, bool) and self.quantity is not RATIO:
             likely = [unit for unit in self._sensible(float(raw)) if unit != "thou"]
@@ -245,26 +247,6 @@ def _si(number: float, unit: str, quantity: Quantity) -> float:
 def yes(raw: object) -> bool:
     """Return true: the reader of a key of which only ``true`` is computed yet."""
     return True
-
-
-def described(raw: object) -> str:
-    """Say what a TOML value is, for a message."""
-    if isinstance(raw, str):
-        return quote(raw) if raw.strip() else "an empty text"
-    if isinstance(raw, bool):
-        return str(raw).lower()
-    if isinstance(raw, list):
-        return "a list"
-    if isinstance(raw, dict):
-        return "a table"
-    if _is_huge(raw):
-        return "a whole number of very many digits"
-    return str(raw)[:60]
-
-
-def _is_huge(raw: object) -> bool:
-    """Whether this is a whole number that Python may refuse to write, and float to hold."""
-    return isinstance(raw, int) and abs(raw) > 10**18
 
 
 def as_typed(raw: object) -> str:

@@ -95,6 +95,7 @@ class Instrument:
     parts: tuple[Part, ...]
     peaks: tuple[Peak, ...]
     place: Place
+    files: tuple[str, ...] = ()  # that it was read from: the path file and the catalogs that it names
     assumed: tuple[Assumption, ...] = ()
     warnings: tuple[str, ...] = ()
 

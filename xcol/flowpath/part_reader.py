@@ -9,10 +9,10 @@ from xcol.catalogs import Catalogs
 from xcol.flowpath import slips
 from xcol.flowpath.file_keys import FILE_KEYS, OTHER_WORDS
 from xcol.flowpath.findings import Draft, Findings
-from xcol.flowpath.keys import Key, Later, Measure, Table, as_typed, described, nearest
+from xcol.flowpath.keys import Key, Later, Measure, Table, as_typed, nearest
 from xcol.flowpath.kinds import KINDS, KINDS_LATER, Kind
 from xcol.flowpath.model import Part, Reading
-from xcol.units import UnitError, plain, quote
+from xcol.units import UnitError, described, plain, quote
 
 ANY_KIND = (*KINDS, *KINDS_LATER)
 
@@ -160,8 +160,10 @@ def _read_size(raw: object, kind: Kind, draft: Draft) -> None:
             sizes = kind.size(text)
         except UnitError as problem:
             error = problem
-            if not started and kind.from_catalog and (sizes := kind.from_catalog(draft, text)):
-                _take_sizes(sizes, started, kind, draft)
+            row = draft.catalogs.find(kind.catalog, text) if kind.catalog and not started else None
+            if row is not None and kind.of_row:
+                draft.row = row
+                draft.values |= kind.of_row(row, draft)
                 return
         else:
             _take_sizes(sizes, started, kind, draft)
@@ -214,7 +216,8 @@ def _size_is_missing(started: set[str], kind: Kind, draft: Draft) -> None:
         draft.fault("", f"its size: {ways}", f"add {' and '.join(missing) or ways}", read)
         return
     shown = draft.written[kind.name]
-    suggestion = _size_within(shown, kind) or kind.example
+    near = draft.catalogs.near(kind.catalog, shown) if kind.catalog else ""
+    suggestion = _size_within(shown, kind) or (f'{kind.name} = "{near}", of the catalog' if near else kind.example)
     draft.fault(kind.name, f"its size: {ways}", suggestion, f"{quote(shown)}, a name, and no size")
 
 

@@ -4,16 +4,25 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING
 
-from xcol.catalogs import SOLUTES
+from xcol.catalog_kinds import SOLUTES
 from xcol.flowpath.composition import water_of
-from xcol.flowpath.conditions import ROOM, Conditions, check_range, composition_of
-from xcol.liquids.diffusion import MEASURED, SWITCH, globular, mass_in_words, scaled, small_molecule
+from xcol.flowpath.conditions import Conditions, check_range, composition_of, say_what_was_left_out
+from xcol.liquids.diffusion import (
+    CATALOG_VALUE,
+    SMALL_ELSEWHERE,
+    SMALL_IN_WATER,
+    SWITCH,
+    globular,
+    mass_in_words,
+    scaled,
+    small_molecule,
+)
 from xcol.liquids.estimate import Estimate, as_entered
 from xcol.units import significant
 
 if TYPE_CHECKING:
-    from xcol.catalog_records import Solute
     from xcol.flowpath.findings import Draft
+    from xcol.liquids.mobile_phase import MobilePhase
 
 WAYS = ("diffusion", "solute", "molar_mass")
 LARGEST_SMALL = 2.0  # kg/mol: above, Wilke and Chang is far too low
@@ -29,9 +38,14 @@ def typical(conditions: Conditions) -> Estimate | None:
     """Return what is taken of a solute of which nothing is said; None without a mobile phase."""
     if conditions.phase is None or conditions.viscosity is None:
         return None
-    found = _small(conditions, conditions.viscosity, None, TYPICAL_MASS)
+    found = _small(conditions, conditions.phase, conditions.viscosity, None, TYPICAL_MASS)
     text = f"assumed: a small molecule of {mass_in_words(TYPICAL_MASS)} (half to twice of it), by Wilke–Chang"
     return Estimate(found.value, max(TYPICAL_UNCERTAINTY, found.uncertainty), text)
+
+
+def is_given(draft: Draft) -> bool:
+    """Whether a peak says anything about its diffusion coefficient."""
+    return bool({*WAYS, "at", "molecule"} & set(draft.written))
 
 
 def peak_diffusion(draft: Draft, conditions: Conditions) -> Estimate | None:
@@ -65,35 +79,34 @@ def _of_solute(draft: Draft, conditions: Conditions) -> Estimate | None:
             f'solute = "{near}"' if near else 'molar_mass = "350 g/mol" in its place, or diffusion',
         )
         return None
-    if row.molecule == "globular":
+    molecule = row.molecule or _molecule(row.molar_mass or 0.0)
+    if molecule == "globular":
         _warn_of_unfolding(draft, row.molar_mass or 0.0, conditions)
-    if row.diffusion is not None and row.at is not None:
-        return _of_measured(draft, row, row.diffusion, row.at, conditions)
-    if row.molecule not in ("small", "globular"):
+    # the value in water tells little of a liquid without water: there a small molecule is better estimated
+    in_water = conditions.phase is None or conditions.phase.organic_fraction < 1
+    better = molecule == "small" and not in_water and row.molar_mass is not None
+    if row.diffusion is not None and row.at is not None and not better:
+        return _of_catalog_value(draft, row.diffusion, row.at, conditions)
+    if row.molar_mass is None or molecule not in ("small", "globular"):
         _refuse_chain(draft, "solute")
         return None
-    if row.molar_mass is None:
-        return None
-    if row.molecule == "globular":
-        return _folded(draft, "solute", row.molar_mass, conditions)
-    return _of_small(draft, "solute", row.molar_volume, row.molar_mass, conditions)
+    return _by_mass(draft, "solute", molecule, row.molar_volume, row.molar_mass, conditions)
 
 
-def _of_measured(draft: Draft, row: Solute, value: float, at: float, conditions: Conditions) -> Estimate | None:
-    """Return the measured value in water, scaled to the mobile phase."""
+def _of_catalog_value(draft: Draft, value: float, at: float, conditions: Conditions) -> Estimate | None:
+    """Return the catalog's value in water, scaled to the mobile phase."""
     here = _viscosity(draft, "solute", conditions)
-    water = water_of(draft.catalogs)
     if here is None:
         return None
-    there = water.viscosity(at)
-    temperature = conditions.temperature or ROOM
-    in_water = conditions.phase is not None and conditions.phase.is_water
-    origin = f"measured in water at {at - 273.15:.4g} °C"
-    if not in_water or temperature != at or conditions.entered is not None:
+    there = water_of(draft.catalogs).viscosity(at)
+    phase = conditions.phase
+    same = phase is not None and phase.is_water and conditions.entered is None
+    origin = f"catalog value in water at {_degrees(at)}"
+    if not same or conditions.reference != at:
         origin += f", scaled with T/η to {_where(conditions)}"
-    known = Estimate(value, MEASURED, origin)
-    found = scaled(known, temperature, here, at=at, viscosity_there=there, same_liquid=in_water)
-    return found
+    known = Estimate(value, CATALOG_VALUE, origin)
+    rule = 0.0 if phase is not None and phase.is_water else SMALL_ELSEWHERE
+    return scaled(known, conditions.reference, here, at=at, viscosity_there=there, rule=rule)
 
 
 def _of_mass(draft: Draft, conditions: Conditions) -> Estimate | None:
@@ -101,34 +114,54 @@ def _of_mass(draft: Draft, conditions: Conditions) -> Estimate | None:
     if molecule == "chain":
         _refuse_chain(draft, "molecule")
         return None
+    words = mass_in_words(mass)
     if molecule is None:
-        molecule = "small" if mass < SWITCH else "globular"
+        molecule = _molecule(mass)
+        if molecule == "globular" and conditions.phase is not None and conditions.phase.organic_fraction == 1:
+            draft.fault(
+                "molar_mass",
+                "the molecule beside it: in an organic liquid nothing above 500 g/mol is taken as folded",
+                'molecule = "small" for a compact drug; diffusion for a chain (polymer)',
+            )
+            return None
         if molecule == "globular":
             draft.assume(
                 "large molecules folded",
-                f"{mass_in_words(mass)} read as a folded (globular) molecule, being above {mass_in_words(SWITCH)}: "
+                f"{words} read as a folded (globular) molecule, being above {mass_in_words(SWITCH)}: "
                 'molecule = "small" for a compact drug; a chain (polymer, unfolded protein) needs its diffusion',
+                leads=True,
             )
     elif molecule == "small" and mass > LARGEST_SMALL:
-        draft.warn(f'molecule = "small" with {mass_in_words(mass)}: the estimate for small molecules is too low for it')
+        draft.warn(f'molecule = "small" with {words}: the estimate for small molecules is too low for it')
     elif molecule == "globular" and mass < SWITCH:
-        draft.warn(f'molecule = "globular" with {mass_in_words(mass)}: is the unit meant?')
+        draft.warn(f'molecule = "globular" with {words}: is the unit meant?')
     if molecule == "globular":
         _warn_of_unfolding(draft, mass, conditions)
-        return _folded(draft, "molar_mass", mass, conditions)
-    return _of_small(draft, "molar_mass", None, mass, conditions)
+    return _by_mass(draft, "molar_mass", molecule, None, mass, conditions)
 
 
-def _folded(draft: Draft, key: str, mass: float, conditions: Conditions) -> Estimate | None:
+def _molecule(mass: float) -> str:
+    """Return what a molecule of this mass [kg/mol] is taken for, where nobody says."""
+    return "small" if mass <= SWITCH else "globular"
+
+
+def _by_mass(
+    draft: Draft, key: str, molecule: str, volume: float | None, mass: float, conditions: Conditions
+) -> Estimate | None:
+    """Return the estimate for a small or a globular molecule; a fault at the key without a liquid."""
     viscosity = _viscosity(draft, key, conditions)
     if viscosity is None:
         return None
-    return globular(conditions.temperature or ROOM, viscosity, mass)
+    if molecule == "globular":
+        return globular(conditions.reference, viscosity, mass)
+    if conditions.phase is None:
+        draft.fault(key, "mobile_phase beside it: the estimate needs the liquid, not its viscosity alone", _BY_HAND)
+        return None
+    return _small(conditions, conditions.phase, viscosity, volume, mass)
 
 
 def _warn_of_unfolding(draft: Draft, mass: float, conditions: Conditions) -> None:
-    phase = conditions.phase
-    organic = sum(c.fraction for c in phase.components if c.solvent.viscosity is not None) if phase else 0.0
+    organic = conditions.phase.organic_fraction if conditions.phase else 0.0
     if organic > MOST_ORGANIC and mass > SMALLEST_PROTEIN:
         draft.warn(
             f"a protein may unfold in {100 * organic:.3g} % of organic liquid, and then diffuses more slowly than "
@@ -136,25 +169,14 @@ def _warn_of_unfolding(draft: Draft, mass: float, conditions: Conditions) -> Non
         )
 
 
-def _of_small(draft: Draft, key: str, volume: float | None, mass: float, conditions: Conditions) -> Estimate | None:
-    viscosity = _viscosity(draft, key, conditions)
-    if viscosity is None:
-        return None
-    if conditions.phase is None:
-        draft.fault(key, "mobile_phase beside it: the estimate needs the liquid, not its viscosity alone", _BY_HAND)
-        return None
-    return _small(conditions, viscosity, volume, mass)
-
-
-def _small(conditions: Conditions, viscosity: Estimate, volume: float | None, mass: float) -> Estimate:
-    phase = conditions.phase
-    if phase is None:
-        raise LookupError("mobile_phase")
+def _small(
+    conditions: Conditions, phase: MobilePhase, viscosity: Estimate, volume: float | None, mass: float
+) -> Estimate:
     return small_molecule(
-        conditions.temperature or ROOM,
+        conditions.reference,
         viscosity,
         phase.association_mass(),
-        in_water=phase.is_water,
+        method=SMALL_IN_WATER if phase.is_water else SMALL_ELSEWHERE,
         molar_mass=mass,
         molar_volume=volume,
     )
@@ -167,30 +189,26 @@ def _known_elsewhere(draft: Draft, value: float, conditions: Conditions) -> Esti
     composition = composition_of(inner)
     if here is None or inner.has_fault:
         return None
-    there_phase = composition.phase if composition else conditions.phase
-    at = inner.number("temperature")
+    example = 'at = { mobile_phase = "water", temperature = "25 degC" }'
+    at, viscosity = inner.number("temperature"), inner.number("viscosity")
     if at is None:
-        at = conditions.temperature or ROOM
-    if not inner.values:
-        draft.fault("at", "its temperature, its mobile_phase, or both", 'at = { temperature = "25 degC" }')
+        draft.fault("at", "the temperature at which it is known", example, "no temperature in it")
         return None
-    there = Conditions(there_phase, inner.number("viscosity"), at, None)
+    phase = None if viscosity is not None else composition.phase if composition else conditions.phase
+    there = Conditions(phase, viscosity, at, None)
     if there.viscosity is None:
-        expected = "the liquid in which it is known: mobile_phase, or viscosity"
-        draft.fault("at", expected, 'at = { mobile_phase = "water", temperature = "25 degC" }')
+        draft.fault("at", "the liquid in which it is known: mobile_phase, or viscosity", example)
         return None
-    same = there_phase is not None and conditions.phase is not None and there_phase == conditions.phase
-    if (
-        there.phase is not None
-        and there.entered is None
-        and not check_range(there.phase, at, draft.place("at"), draft.findings)
-    ):
+    if composition:
+        say_what_was_left_out(composition, f"{draft.label}, at", draft.findings)
+    if there.phase is not None and not check_range(there.phase, at, draft.place("at"), draft.findings):
         return None
-    origin = f"{significant(value)} m²/s as entered, in {_where(there)}, scaled with T/η to {_where(conditions)}"
+    rule = 0.0 if phase is not None and phase == conditions.phase and conditions.entered is None else SMALL_ELSEWHERE
+    origin = f"{significant(value)} m²/s as entered, in {_where(there)}"
+    if rule or at != conditions.reference:
+        origin += f", scaled with T/η to {_where(conditions)}"
     known = Estimate(value, 0.0, origin)
-    temperature = conditions.temperature or ROOM
-    found = scaled(known, temperature, here, at=at, viscosity_there=there.viscosity, same_liquid=same)
-    return found
+    return scaled(known, conditions.reference, here, at=at, viscosity_there=there.viscosity, rule=rule)
 
 
 def _viscosity(draft: Draft, key: str, conditions: Conditions) -> Estimate | None:
@@ -213,8 +231,11 @@ def _refuse_chain(draft: Draft, key: str) -> None:
 
 
 def _where(conditions: Conditions) -> str:
-    pieces = [conditions.phase.name] if conditions.phase else []
+    liquid = conditions.phase.name if conditions.phase else "a liquid"
     if conditions.entered is not None:
-        pieces.append(f"{significant(conditions.entered * 1e3)} mPa s")
-    temperature = conditions.temperature if conditions.temperature is not None else ROOM
-    return f"{', '.join(pieces)} at {temperature - 273.15:.4g} °C"
+        liquid += f" of {significant(conditions.entered * 1e3)} mPa s"
+    return f"{liquid} at {_degrees(conditions.reference)}"
+
+
+def _degrees(temperature: float) -> str:
+    return f"{temperature - 273.15:.4g} °C"

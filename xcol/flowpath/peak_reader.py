@@ -8,13 +8,12 @@ from xcol.flowpath import slips
 from xcol.flowpath.chain import dead_time, delays, transit
 from xcol.flowpath.file_keys import PEAK_KEYS
 from xcol.flowpath.findings import Draft, Findings
-from xcol.flowpath.keys import described
 from xcol.flowpath.locate import KeyLines
 from xcol.flowpath.model import Instrument, Peak
 from xcol.flowpath.part_reader import read_keys, refuse_unknown
-from xcol.flowpath.peak_diffusion import WAYS, peak_diffusion, typical
+from xcol.flowpath.peak_diffusion import WAYS, is_given, peak_diffusion, typical
 from xcol.liquids.estimate import Estimate, as_entered
-from xcol.units import DIFFUSION, TIME, plain, write
+from xcol.units import DIFFUSION, TIME, described, plain, write
 
 if TYPE_CHECKING:
     from xcol.catalogs import Catalogs
@@ -104,8 +103,7 @@ def estimates_of(drafts: list[Draft], top: Draft, conditions: Conditions) -> lis
         return [usual]
     found = []
     for draft in drafts:
-        given = {*WAYS, "at", "molecule"} & set(draft.written)
-        estimate = peak_diffusion(draft, conditions) if given else usual
+        estimate = peak_diffusion(draft, conditions) if is_given(draft) else usual
         if estimate:
             _say(estimate, f'peak "{draft.name}"' if draft.name else draft.label, top)
         found.append(estimate)

@@ -14,14 +14,13 @@ from xcol.flowpath.conditions import Conditions, check_range, density_of, read_c
 from xcol.flowpath.elements import Bed, Cell
 from xcol.flowpath.file_keys import FILE_KEYS
 from xcol.flowpath.findings import Draft, Findings
-from xcol.flowpath.keys import described
 from xcol.flowpath.locate import KeyLines, key_lines
 from xcol.flowpath.model import Assumption, Instrument, Part, Peak
 from xcol.flowpath.part_reader import read_keys, read_part, refuse_unknown
 from xcol.flowpath.peak_reader import check_diffusion, check_positions, estimates_of, peaks_of, read_peaks
 from xcol.flowpath.source import read_text
 from xcol.flowpath.toml_text import load
-from xcol.units import VISCOSITY, write
+from xcol.units import VISCOSITY, described, write
 
 if TYPE_CHECKING:
     from xcol.catalogs import Catalogs
@@ -54,7 +53,10 @@ def parse(text: str, file: str, catalogs: Iterable[str] = ()) -> Instrument:
     read_keys(data, FILE_KEYS.values(), top)
     refuse_unknown(data, FILE_KEYS.values(), ("path", "peaks"), top)
     beside = [str(Path(file).parent / name) for name in top.texts("catalogs")]
+    before = len(findings.faults)
     top.catalogs = read_catalogs([*beside, *catalogs], findings)
+    if len(findings.faults) > before:  # what a catalog lacks would be missed all over the path
+        findings.raise_faults()
     if "flow" not in data:
         _report_missing_flow(data, file, lines, findings)
 
@@ -62,7 +64,7 @@ def parse(text: str, file: str, catalogs: Iterable[str] = ()) -> Instrument:
     drafts = read_peaks(data.get("peaks"), file, lines, findings, top.catalogs)
     check_positions(drafts, "column" in kinds or not kinds)
     check_diffusion(drafts, data.get("peaks") not in (None, []), top)
-    conditions = read_conditions(top, "column" in kinds)
+    conditions = read_conditions(top, "column" in kinds).with_columns(parts)
     estimates = _estimates(conditions, parts, drafts, top)
     flow = top.number("flow")
     if flow is not None and findings.faults:  # what can be told all the same
@@ -111,11 +113,12 @@ def _instrument(top: Draft, conditions: Conditions, parts: list[Part]) -> Instru
         mobile_phase=conditions.phase.name if conditions.phase else "",
         viscosity=conditions.viscosity,
         density=density_of(top, conditions),
-        temperature=conditions.temperature,
+        temperature=conditions.known,
         pump_pressure=top.number("pump_pressure"),
         parts=tuple(parts),
         peaks=(),
         place=Place(top.file),
+        files=(top.file, *(str(Path(top.file).parent / name) for name in top.texts("catalogs"))),
     )
 
 
@@ -128,7 +131,8 @@ def _with_peaks(
     peaks = peaks_of(drafts, instrument, estimates, findings)
     _warn_of_twins([peak.name for peak in peaks], "peaks", findings)
     _notes_on_beds(instrument, findings)
-    _notes_on_viscosity(instrument, peaks, findings)
+    slips.of_scaled_plates(instrument, peaks, findings)
+    _notes_on_liquid(instrument, peaks, findings)
     findings.raise_faults()
     return replace(
         instrument,
@@ -142,18 +146,21 @@ def _with_peaks(
     )
 
 
-def _notes_on_viscosity(instrument: Instrument, peaks: tuple[Peak, ...], findings: Findings) -> None:
+def _notes_on_liquid(instrument: Instrument, peaks: tuple[Peak, ...], findings: Findings) -> None:
     """Say which numbers are the user's own, and which come from the mobile phase."""
-    own = []
-    if (viscosity := instrument.viscosity) is not None:
-        if viscosity.entered:
-            own.append("viscosity")
-        else:
-            shown = write(viscosity.value, "mPa s", VISCOSITY)
-            findings.assume("viscosity computed", f"viscosity {shown}: {viscosity.stated}", leads=True)
-    own += ["diffusion coefficients"] if any(peak.estimate.entered for peak in peaks) else []
+    viscosity = instrument.viscosity
+    if viscosity is not None and not viscosity.entered:
+        shown = write(viscosity.value, "mPa s", VISCOSITY)
+        findings.assume("viscosity computed", f"viscosity {shown}: {viscosity.stated}", leads=True)
+    if instrument.temperature is None and any(not peak.estimate.entered for peak in peaks):
+        findings.assume("temperature 25 degC", "no temperature entered: D estimated at 25 °C", leads=True)
+    typed = {
+        "viscosity": viscosity is not None and viscosity.entered,
+        "diffusion coefficients": any(peak.estimate.entered for peak in peaks),
+    }
+    own = [name for name, is_own in typed.items() if is_own]
     if own:
-        short = "D" if len(own) == 1 and own[0] != "viscosity" else "viscosity" if len(own) == 1 else "viscosity and D"
+        short = " and ".join(own).replace("diffusion coefficients", "D")
         verb = "is" if own == ["viscosity"] else "are"
         findings.assume(f"{short} as entered", f"{' and '.join(own)} {verb} taken as entered, at whatever temperature")
 

@@ -7,10 +7,11 @@ from __future__ import annotations
 
 import math
 from collections.abc import Callable, Iterable
+from dataclasses import replace
 from typing import TYPE_CHECKING
 
-from xcol.catalogs import MATERIALS, SOLVENTS, TUBING
-from xcol.flowpath.elements import Bore, Cell
+from xcol.catalog_kinds import MATERIALS, SOLVENTS, TUBING
+from xcol.flowpath.elements import Bore, Cell, Stream
 from xcol.flowpath.hydraulics import LAMINAR_LIMIT, reynolds_number
 from xcol.flowpath.model import beds_of
 from xcol.units import FLOW, LENGTH, PRESSURE, VISCOSITY, VOLUME, significant, write
@@ -19,7 +20,8 @@ if TYPE_CHECKING:
     from xcol.catalogs import Catalogs
     from xcol.errors import Place
     from xcol.flowpath.findings import Draft, Findings
-    from xcol.flowpath.model import Instrument, Part
+    from xcol.flowpath.model import Instrument, Part, Peak
+    from xcol.liquids.estimate import Estimate
     from xcol.liquids.mobile_phase import MobilePhase
 
 _OUTSIDE_DIAMETERS = {"1/32 in": 0.0254 / 32, "1/16 in": 0.0254 / 16, "1/8 in": 0.0254 / 8}
@@ -50,7 +52,7 @@ def of_path(instrument: Instrument, flow_place: Place, findings: Findings) -> No
     if instrument.viscosity is None:
         findings.warn("no viscosity entered: pressures and Reynolds numbers are not computed")
     else:
-        _viscosity(instrument, instrument.viscosity.value, findings)
+        _viscosity(instrument, instrument.viscosity, findings)
 
 
 def of_materials(parts: Iterable[Part], phase: MobilePhase, catalogs: Catalogs, findings: Findings) -> None:
@@ -66,6 +68,28 @@ def of_materials(parts: Iterable[Part], phase: MobilePhase, catalogs: Catalogs, 
             findings.warn(
                 f"{part.label}: {material.name} is usually kept away from {' and '.join(met)}: check with its maker"
             )
+
+
+def of_scaled_plates(instrument: Instrument, peaks: Iterable[Peak], findings: Findings) -> None:
+    """Report plates that, scaled from the flow at which they hold, are more than a column can have."""
+    for part in instrument.parts:
+        for bed in beds_of([part]):
+            if bed.plates is None or bed.plates_at is None or not bed.particle:
+                continue
+            most, place = bed.length / bed.particle, replace(part.place, key="plates_at")
+            held = write(bed.plates_at, "mL/min", FLOW)
+            here = write(instrument.flow, "mL/min", FLOW)
+            streams = (Stream(instrument.flow, peak.diffusion_in(part)) for peak in peaks)
+            plates = max((float(bed.plates_for(stream)) for stream in streams), default=0.0)
+            if plates > most:
+                findings.fault(
+                    place,
+                    f"{bed.plates:g} plates at {held}, which are {plates:.0f} at {here}",
+                    f"at most {most:.0f} plates here, length over particle diameter (h = 1)",
+                    "check plates_at and its unit",
+                )
+            elif not 0.05 <= bed.plates_at / instrument.flow <= 20:
+                findings.warn(f"{part.label}: plates hold at {held}, and the flow is {here}: is the unit meant?")
 
 
 def flow_in_columns(flow: float, parts: Iterable[Part], place: Place, findings: Findings) -> None:
@@ -307,12 +331,12 @@ def _order(instrument: Instrument, findings: Findings) -> None:
             findings.warn(f"{part.label} is not the end of the path: other parts follow it")
 
 
-def _viscosity(instrument: Instrument, viscosity: float, findings: Findings) -> None:
-    if not 1.5e-4 <= viscosity <= 5e-3:
-        shown = write(viscosity, "mPa s", VISCOSITY)
+def _viscosity(instrument: Instrument, viscosity: Estimate, findings: Findings) -> None:
+    if viscosity.entered and not 1.5e-4 <= viscosity.value <= 5e-3:
+        shown = write(viscosity.value, "mPa s", VISCOSITY)
         findings.warn(f"a viscosity of {shown} is unusual: 0.2 to 3 mPa s is usual; Pa s or mPa s?")
     for part in instrument.parts:
-        here = part.viscosity.value if part.viscosity else viscosity
+        here = part.viscosity.value if part.viscosity else viscosity.value
         for bore in (element.bore for element in part.elements if isinstance(element, Bore)):
             number = float(reynolds_number(instrument.flow, bore, here, instrument.density))
             if number > LAMINAR_LIMIT:

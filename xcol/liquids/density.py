@@ -25,7 +25,9 @@ def water_density(temperature: Real) -> Real:
 
 
 def organic_density(temperature: Real, at_25: float, expansion: float) -> Real:
-    """Density of a liquid [kg/m³], ρ₂₅·(1 − β·(T − 298.15 K)); β ``expansion`` [1/K].
+    """Density of a liquid [kg/m³], ρ₂₅·(1 − β·(T − 298.15 K)).
+
+    ``temperature`` [K], ``at_25`` density at 25 °C [kg/m³], ``expansion`` β [1/K].
 
     >>> round(organic_density(333.15, 776.8, 1.41e-3), 1)  # acetonitrile at 60 °C
     738.5

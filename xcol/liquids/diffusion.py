@@ -19,7 +19,7 @@ SMALL_IN_WATER = 0.20
 SMALL_ELSEWHERE = 0.25
 GLOBULAR = 0.25
 FROM_MASS = 0.08  # more, where the molar volume comes from the molar mass
-MEASURED = 0.05  # of a measured value itself, assumed
+CATALOG_VALUE = 0.10  # of a handbook-type value from memory, assumed
 SWITCH = 0.5  # kg/mol: where the relations for small and for globular molecules meet in water
 
 _VOLUME_PER_MASS = 1.11e-3  # m³/kg
@@ -95,22 +95,29 @@ def small_molecule(
     viscosity: Estimate,
     association_mass: float,
     *,
-    in_water: bool,
+    method: float,
     molar_mass: float,
     molar_volume: float | None,
 ) -> Estimate:
-    """Return the estimate by Wilke and Chang, from the molar volume, or from the molar mass without one."""
+    """Return the estimate by Wilke and Chang, from the molar volume, or from the molar mass without one.
+
+    ``temperature`` [K], ``viscosity`` [Pa s], ``association_mass`` ψM [kg/mol], ``molar_mass`` [kg/mol],
+    ``molar_volume`` [m³/mol]; ``method`` is the relative doubt of the correlation in this liquid.
+    """
     if molar_volume is None:
         source, volume, more = mass_in_words(molar_mass), float(molar_volume_of(molar_mass)), FROM_MASS
     else:
         source, volume, more = f"a molar volume of {molar_volume * 1e6:.3g} cm³/mol", molar_volume, 0.0
     value = float(wilke_chang(temperature, viscosity.value, volume, association_mass))
-    own = together(SMALL_IN_WATER if in_water else SMALL_ELSEWHERE, more)
+    own = together(method, more)
     return Estimate(value, _with(own, viscosity), f"estimated by Wilke–Chang from {source}")
 
 
 def globular(temperature: float, viscosity: Estimate, molar_mass: float) -> Estimate:
-    """Return the estimate by Young, Carroad and Bell for a folded protein of this molar mass [kg/mol]."""
+    """Return the estimate by Young, Carroad and Bell for a folded protein.
+
+    ``temperature`` [K], ``viscosity`` [Pa s], ``molar_mass`` [kg/mol].
+    """
     value = float(young_carroad_bell(temperature, viscosity.value, molar_mass))
     return Estimate(
         value,
@@ -120,22 +127,23 @@ def globular(temperature: float, viscosity: Estimate, molar_mass: float) -> Esti
 
 
 def scaled(
-    known: Estimate, temperature: float, viscosity: Estimate, *, at: float, viscosity_there: Estimate, same_liquid: bool
+    known: Estimate, temperature: float, viscosity: Estimate, *, at: float, viscosity_there: Estimate, rule: float
 ) -> Estimate:
     """Return a known coefficient at other conditions, D·η/T = constant.
 
-    ``known`` holds at the temperature ``at`` [K] in a liquid of ``viscosity_there`` [Pa s]; wanted is it
-    at ``temperature`` in a liquid of ``viscosity``. In another liquid the rule is as doubtful as an estimate.
+    ``known`` [m²/s] holds at the temperature ``at`` [K] in a liquid of ``viscosity_there`` [Pa s]; wanted
+    is it at ``temperature`` [K] in a liquid of ``viscosity`` [Pa s]. ``rule`` is the relative doubt of the
+    rule itself: 0 in the same liquid, ``SMALL_ELSEWHERE`` in another. At the same conditions D stays as it is.
 
     >>> there = Estimate(1e-3, 0.0, "")
-    >>> scaled(Estimate(1e-9, 0.05, "x"), 300, Estimate(5e-4, 0.0, ""), at=300, viscosity_there=there, same_liquid=True)
+    >>> scaled(Estimate(1e-9, 0.05, "x"), 300, Estimate(5e-4, 0.0, ""), at=300, viscosity_there=there, rule=0.0)
     Estimate(value=2e-09, uncertainty=0.05, origin='x', entered=False)
     """
-    factor = (temperature / viscosity.value) / (at / viscosity_there.value)
-    own = known.uncertainty if same_liquid else together(known.uncertainty, SMALL_ELSEWHERE)
-    if same_liquid and at == temperature:
-        return Estimate(known.value * factor, own, known.origin)
-    return Estimate(known.value * factor, together(own, viscosity.uncertainty), known.origin)
+    if not rule and at == temperature and viscosity.value == viscosity_there.value:
+        return known
+    value = known.value * (temperature / viscosity.value) / (at / viscosity_there.value)
+    doubt = together(known.uncertainty, rule, viscosity.uncertainty, viscosity_there.uncertainty)
+    return Estimate(value, doubt, known.origin)
 
 
 def mass_in_words(molar_mass: float) -> str:

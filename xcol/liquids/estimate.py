@@ -19,15 +19,18 @@ class Estimate:
     entered: bool = False
 
     @property
+    def doubt(self) -> str:
+        """The uncertainty in words, '±20 %'; '' for what was entered."""
+        return "" if self.entered else f"±{100 * self.uncertainty:.0f} %"
+
+    @property
     def stated(self) -> str:
         """The origin with the uncertainty, 'estimated by Wilke–Chang from 194 g/mol, ±20 %'.
 
         >>> Estimate(1e-9, 0.2, "estimated by Wilke–Chang from 194 g/mol").stated
         'estimated by Wilke–Chang from 194 g/mol, ±20 %'
         """
-        if self.entered:
-            return self.origin
-        return f"{self.origin}, ±{100 * self.uncertainty:.0f} %"
+        return f"{self.origin}, {self.doubt}".removesuffix(", ")
 
 
 def as_entered(value: float) -> Estimate:

@@ -16,10 +16,13 @@ if TYPE_CHECKING:
     from xcol.catalog_records import Mixture, Solvent
     from xcol.liquids.viscosity import Real
 
-# Relative uncertainty of logarithmic mixing by volume fraction.
+# Relative uncertainty of mixing by rule: organic liquids; water with a liquid that nobody measured with it.
 MIXED_ORGANICS = 0.20
 MIXED_WITH_WATER = 0.50
 FAR = 40.0  # K outside the fitted range: beyond, nothing is computed
+ROOM = 298.15  # K, where a liquid's uncertainty is stated
+# Compilations part by some 0.1 % for each kelvin from there, extrapolation by some 0.25 % for each beyond a fit.
+APART_PER_KELVIN, BEYOND_PER_KELVIN = 0.001, 0.0025
 
 
 @dataclass(frozen=True)
@@ -47,7 +50,12 @@ class MobilePhase:
     @property
     def is_water(self) -> bool:
         """Whether it is water alone."""
-        return all(component.solvent.viscosity is None for component in self.components)
+        return all(component.solvent.is_water for component in self.components)
+
+    @property
+    def organic_fraction(self) -> float:
+        """Volume fraction of all that is not water."""
+        return sum(component.fraction for component in self.components if not component.solvent.is_water)
 
     def viscosity(self, temperature: float) -> Estimate:
         """Viscosity at this temperature [K], with its uncertainty and the rule that gave it."""
@@ -57,20 +65,22 @@ class MobilePhase:
     def viscosity_at(self, temperature: Real) -> Real:
         """Viscosity [Pa s] at ``temperature`` [K], a float or an array.
 
-        Logarithmic by volume fraction, with the measured excess of pairs with water; of three and more
-        liquids a pair's excess counts at its own composition, times (φ_i + φ_j)² (Kohler 1960, from memory).
+        Logarithmic by volume fraction, with the measured excess of pairs with water; a pair that nobody
+        measured has the mean of the measured ones. Of three and more liquids a pair's excess counts at its
+        own composition, times (φ_i + φ_j)² (Kohler 1960, from memory).
         """
         viscosities = [_viscosity(component.solvent, temperature) for component in self.components]
         excess: Real = 0.0
         for organic, water, mixture in self._pairs():
-            if mixture is not None:
-                both = organic.fraction + water.fraction
-                share = organic.fraction / both
-                excess = excess + both**2 * excess_with_water(share, temperature, mixture.excess, mixture.heat)
+            both = organic.fraction + water.fraction
+            known = [mixture] if mixture is not None else list(self.excesses.values())
+            for row in known:
+                pair = excess_with_water(organic.fraction / both, temperature, row.excess, row.heat)
+                excess = excess + both**2 * pair / len(known)
         return mixed_viscosity([component.fraction for component in self.components], viscosities, excess)
 
     def density(self, temperature: float) -> float:
-        """Density [kg/m³] by volume fraction; the contraction on mixing, up to 3 %, is left out."""
+        """Density [kg/m³] at ``temperature`` [K] by volume fraction; the contraction, up to 3 %, is left out."""
         return sum(c.fraction * _density(c.solvent, temperature) for c in self.components)
 
     def association_mass(self) -> float:
@@ -80,31 +90,34 @@ class MobilePhase:
         return sum(n * product for n, product in zip(moles, products, strict=True)) / sum(moles)
 
     def outside(self, temperature: float) -> tuple[float, Solvent]:
-        """Return by how many kelvin this is outside the fitted range (0: it is not), and of which liquid."""
+        """Return by how many kelvin a temperature [K] is outside the fitted range (0: not), and of which liquid."""
         distances = [
             (max(c.solvent.span[0] - temperature, temperature - c.solvent.span[1], 0.0), c.solvent)
             for c in self.components
         ]
         return max(distances, key=lambda pair: pair[0])
 
-    def extrapolated(self, temperature: float) -> Mixture | None:
-        """Return the mixture whose measured rows do not reach to this temperature, if there is one."""
+    def out_of_reach(self, temperature: float) -> Mixture | None:
+        """Return the mixture whose rows do not reach to this temperature [K], None where all do."""
         known = (mixture for _, _, mixture in self._pairs() if mixture is not None)
         return next((row for row in known if not row.span[0] <= temperature <= row.span[1]), None)
 
+    def unmeasured(self) -> list[Solvent]:
+        """Return the liquids of which nothing is known with the water that is in it."""
+        return [organic.solvent for organic, _, mixture in self._pairs() if mixture is None]
+
     def rule(self) -> str:
-        """Return how the liquids are mixed, in words; "" for one liquid and for a measured pair."""
-        if len(self.components) == 1:
-            return ""
-        unknown = [organic.solvent.name for organic, _, mixture in self._pairs() if mixture is None]
-        if unknown:
+        """Return how the liquids are mixed, in words; "" for one liquid and for a known pair."""
+        unmeasured = self.unmeasured()
+        if unmeasured:
+            names, known = " and ".join(solvent.name for solvent in unmeasured), ", ".join(self.excesses)
             return (
-                f"logarithmic mixing by volume fraction, and no measured rows for {' and '.join(unknown)} with water: "
-                "the true viscosity is likely higher, with an alcohol up to twice as high"
+                "logarithmic mixing by volume fraction, with an excess for "
+                f"{names} with water that is the mean of those known (of {known})"
             )
-        if len(self.components) == 2 and self._pairs():
+        if len(self.components) == 1 or (len(self.components) == 2 and self._pairs()):
             return ""
-        with_pairs = ", with the measured excess of each pair with water" if self._pairs() else ""
+        with_pairs = ", with the known excess of each pair with water" if self._pairs() else ""
         return f"logarithmic mixing by volume fraction{with_pairs}"
 
     def _pairs(self) -> list[tuple[Component, Component, Mixture | None]]:
@@ -112,19 +125,22 @@ class MobilePhase:
         found = []
         for first, second in combinations(self.components, 2):
             for organic, water in ((first, second), (second, first)):
-                if water.solvent.viscosity is None and organic.solvent.viscosity is not None:
+                if water.solvent.is_water and not organic.solvent.is_water:
                     found.append((organic, water, self.excesses.get(organic.solvent.name)))
         return found
 
     def _uncertainty(self, temperature: float) -> float:
-        pure = max(component.solvent.uncertainty for component in self.components)
+        pure = max(_of_liquid(component.solvent, temperature) for component in self.components)
         if len(self.components) == 1:
             return pure
+        beyond = BEYOND_PER_KELVIN * self.outside(temperature)[0]
         pairs = self._pairs()
-        if any(mixture is None for _, _, mixture in pairs):
-            return MIXED_WITH_WATER
-        known = [_uncertainty(mixture, temperature) for _, _, mixture in pairs if mixture is not None]
-        return max(known) if len(self.components) == 2 and known else max([MIXED_ORGANICS, *known])
+        known = [_of_mixture(mixture, temperature) for _, _, mixture in pairs if mixture is not None]
+        if len(known) < len(pairs):
+            known.append(MIXED_WITH_WATER)
+        elif not pairs or len(self.components) > 2:
+            known.append(MIXED_ORGANICS)
+        return max(known) + beyond
 
 
 def _viscosity(solvent: Solvent, temperature: Real) -> Real:
@@ -139,8 +155,16 @@ def _density(solvent: Solvent, temperature: float) -> float:
     return float(organic_density(temperature, solvent.density, solvent.expansion))
 
 
-def _uncertainty(mixture: Mixture, temperature: float) -> float:
-    """Return the uncertainty: that of the fit within its span, rising to the far one outside."""
+def _of_liquid(solvent: Solvent, temperature: float) -> float:
+    """Return a liquid's uncertainty: more away from room temperature (but for water's formula) and beyond the fit."""
+    low, high = solvent.span
+    outside = max(low - temperature, temperature - high, 0.0)
+    apart = 0.0 if solvent.viscosity is None else APART_PER_KELVIN * abs(temperature - ROOM)
+    return solvent.uncertainty + apart + BEYOND_PER_KELVIN * outside
+
+
+def _of_mixture(mixture: Mixture, temperature: float) -> float:
+    """Return a mixture's uncertainty: that of the fit within its span, rising to the far one outside."""
     low, high = mixture.span
     outside = max(low - temperature, temperature - high, 0.0)
     share = min(outside / (mixture.far - high), 1.0)

@@ -7,9 +7,11 @@ import io
 from typing import TYPE_CHECKING, Any
 
 from xcol import __version__
+from xcol.answers.doubt import over_diffusion
 
 if TYPE_CHECKING:
     from xcol.answers.budget import Budget, DetectorBudget, PeakBudget, Row
+    from xcol.answers.doubt import Doubt
     from xcol.answers.pressure import PressureRow
     from xcol.flowpath.hydraulics import PressureRange
 
@@ -29,7 +31,10 @@ def budget_record(answer: Budget) -> dict[str, Any]:
         "warnings": list(answer.warnings),
         "cautions": list(answer.cautions),
         "pressure": [_pressure(row) for row in answer.pressure.rows],
-        "detectors": [_detector(answer, found) for found in answer.detectors],
+        "detectors": [
+            _detector(answer, found, doubts)
+            for found, doubts in zip(answer.detectors, over_diffusion(answer), strict=True)
+        ],
     }
 
 
@@ -40,6 +45,7 @@ def budget_csv(answer: Budget) -> str:
         for peak in detector["peaks"]:
             parts = peak.pop("parts")
             ahead = {"detector": detector["name"], "peak": peak["name"], "k": peak["k"]}
+            ahead |= {key: peak[key] for key in ("diffusion_m2_s", "diffusion_uncertainty")}
             ahead |= {key: peak[key] for key in ("plates_column", "plates_observed", "plates_kept")}
             lines += [ahead | part for part in parts]
     out = io.StringIO()
@@ -78,16 +84,16 @@ def _bar(drop: PressureRange | None) -> float | None:
     return drop.value / 1e5 if drop is not None else None
 
 
-def _detector(answer: Budget, found: DetectorBudget) -> dict[str, Any]:
+def _detector(answer: Budget, found: DetectorBudget, doubts: list[Doubt | None]) -> dict[str, Any]:
     return {
         "name": found.detector.name or "detector",
         "position": found.detector.position,
         "delay_s": found.delay,
-        "peaks": [_peak(answer, peak, found.delay) for peak in found.peaks],
+        "peaks": [_peak(answer, peak, doubt, found.delay) for peak, doubt in zip(found.peaks, doubts, strict=True)],
     }
 
 
-def _peak(answer: Budget, peak: PeakBudget, delay: float) -> dict[str, Any]:
+def _peak(answer: Budget, peak: PeakBudget, doubt: Doubt | None, delay: float) -> dict[str, Any]:
     return {
         "name": peak.peak.name,
         "k": peak.peak.k,
@@ -98,7 +104,7 @@ def _peak(answer: Budget, peak: PeakBudget, delay: float) -> dict[str, Any]:
         "plates_column": peak.plates_column,
         "plates_column_range": list(peak.columns_range) if peak.columns_range else None,
         "plates_observed": peak.plates_observed,
-        "plates_observed_over_diffusion": _over_diffusion(peak),
+        "plates_observed_over_diffusion": list(doubt.plates) if doubt and doubt.plates else None,
         "plates_kept": peak.plates_kept,
         "interval_plates_kept": None,
         "resolution_kept": peak.resolution_kept,
@@ -113,12 +119,6 @@ def _peak(answer: Budget, peak: PeakBudget, delay: float) -> dict[str, Any]:
         "points_4sigma": peak.points,
         "parts": [_row(answer, row) for row in peak.rows],
     }
-
-
-def _over_diffusion(peak: PeakBudget) -> list[float] | None:
-    """Return the plates recorded at both ends of an estimated diffusion coefficient, the fewer first."""
-    ends = [end.plates for end in peak.over_diffusion or () if end.plates is not None]
-    return sorted(ends) or None
 
 
 def _row(answer: Budget, row: Row) -> dict[str, Any]:

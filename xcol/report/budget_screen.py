@@ -5,7 +5,7 @@ from __future__ import annotations
 from typing import TYPE_CHECKING
 
 from xcol.report.budget_tables import bars, parts_grid, peaks_grid
-from xcol.report.budget_text import heading, total_pressure, verdict
+from xcol.report.budget_text import heading, liquid_line, total_pressure, verdict
 from xcol.report.labels import name_of, show
 from xcol.report.sheet import Sheet
 from xcol.units import PRESSURE
@@ -25,6 +25,8 @@ _LEAST_PARTS = 6  # lines of the table of parts that are kept whatever else ther
 def first_screen(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: Sheet) -> None:
     """Write the first screen for one peak at one detector."""
     heading(answer, sheet)
+    if liquid := liquid_line(answer, peak):
+        _at_most(2, liquid, sheet)
     for line in verdict(answer, at, peak):
         _at_most(2, line, sheet)
     _at_most(1, _CAVEAT, sheet)

@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from typing import TYPE_CHECKING
 
+from xcol.answers.doubt import over_diffusion
 from xcol.report.budget_tables import (
     bars,
     detail_grid,
@@ -21,6 +22,7 @@ from xcol.units import FLOW, PRESSURE, TEMPERATURE, VISCOSITY, VOLUME, significa
 
 if TYPE_CHECKING:
     from xcol.answers.budget import Budget, DetectorBudget, PeakBudget
+    from xcol.answers.doubt import Doubt
 
 HARDLY = 0.03  # of the plates: what an uncertain diffusion coefficient may move without mattering
 NO_RANGES = (
@@ -32,12 +34,12 @@ NO_RANGES = (
 def full_report(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: Sheet) -> None:
     """Write everything: all detectors and peaks, pressure, warnings, assumptions, cautions."""
     heading(answer, sheet)
-    if liquid := mobile_phase_line(answer):
+    if liquid := liquid_line(answer, peak):
         sheet.line(liquid, hang=2)
     for line in verdict(answer, at, peak):
         sheet.line(line, hang=2)
     sheet.line(NO_RANGES, hang=2)
-    for found in answer.detectors:
+    for found, doubts in zip(answer.detectors, over_diffusion(answer), strict=True):
         sheet.line()
         volume = found.delay * answer.instrument.flow
         sheet.line(
@@ -46,9 +48,9 @@ def full_report(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: She
             "bold",
         )
         sheet.grid(peaks_grid(answer, found.peaks), indent=2)
-        for one in found.peaks:
+        for one, doubt in zip(found.peaks, doubts, strict=True):
             sheet.line()
-            sheet.line(_peak_line(one, answer), indent=2)
+            sheet.line(_peak_line(one, doubt, answer), indent=2)
             sheet.grid(detail_grid(answer, one, wide=sheet.width >= 110), indent=2)
     sheet.line()
     sheet.line("Pressure", "bold")
@@ -71,13 +73,14 @@ def full_report(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: She
 def budget_markdown(answer: Budget, at: DetectorBudget, peak: PeakBudget) -> str:
     """Return the report in Markdown."""
     pieces = [f"# {answer.instrument.title or 'Budget'}\n", _conditions(answer) + "\n"]
-    pieces += [liquid + "\n"] if (liquid := mobile_phase_line(answer)) else []
+    pieces += [liquid + "\n"] if (liquid := liquid_line(answer, peak)) else []
     pieces += [line + "\n" for line in (*verdict(answer, at, peak), NO_RANGES)]
-    for found in answer.detectors:
+    for found, doubts in zip(answer.detectors, over_diffusion(answer), strict=True):
         pieces.append(f"## Detector {name_of(found.detector)}\n")
         pieces.append(markdown(peaks_grid(answer, found.peaks)))
-        for one in found.peaks:
-            pieces.append(f"### {_peak_line(one, answer)}\n")
+        for one, doubt in zip(found.peaks, doubts, strict=True):
+            pieces.append(f"### {one.peak.name}\n")
+            pieces.append(_peak_line(one, doubt, answer) + "\n")
             pieces.append(markdown(detail_grid(answer, one, wide=True)))
     pieces += ["## Pressure\n", markdown(pressure_grid(answer)), _pressure_line(answer) + "\n"]
     for title, lines in titled_lists(answer):
@@ -129,14 +132,18 @@ def _conditions(answer: Budget) -> str:
     return ", ".join(["isocratic", *pieces])
 
 
-def mobile_phase_line(answer: Budget) -> str:
-    """Return what flows, as it was understood; "" where no mobile phase was entered."""
-    instrument = answer.instrument
-    if not instrument.mobile_phase or instrument.viscosity is None:
-        return ""
-    viscosity = instrument.viscosity
-    doubt = viscosity.origin if viscosity.entered else f"±{100 * viscosity.uncertainty:.0f} %"
-    return f"Mobile phase {instrument.mobile_phase}: {show(viscosity.value, VISCOSITY)} at the column ({doubt})"
+def liquid_line(answer: Budget, peak: PeakBudget) -> str:
+    """Return what flows and what of one peak was estimated, each with its doubt; "" where all was entered."""
+    instrument, estimated, liquid = answer.instrument, [], ""
+    if instrument.mobile_phase and instrument.viscosity is not None:
+        shown = show(instrument.viscosity.value, VISCOSITY)
+        liquid = f"{instrument.mobile_phase}: {shown} {instrument.viscosity.doubt or 'as entered'}"
+    if not peak.peak.estimate.entered:
+        estimated.append(f"D {peak.peak.estimate.doubt}")
+    if peak.columns_range:
+        fewest, most = peak.columns_range
+        estimated.append(f"N {plates(fewest)}-{plates(most)}")
+    return "; ".join(piece for piece in (liquid, f"estimated: {', '.join(estimated)}" if estimated else "") if piece)
 
 
 def heading(answer: Budget, sheet: Sheet) -> None:
@@ -147,7 +154,7 @@ def heading(answer: Budget, sheet: Sheet) -> None:
     sheet.line(f"{fitted(title, room)}  {conditions}", "bold")
 
 
-def _peak_line(peak: PeakBudget, answer: Budget) -> str:
+def _peak_line(peak: PeakBudget, doubt: Doubt | None, answer: Budget) -> str:
     points = f", {significant(peak.points)} data points across 4σ" if peak.points is not None else ""
     from_retention = ""
     if peak.peak.retention is not None:
@@ -157,22 +164,19 @@ def _peak_line(peak: PeakBudget, answer: Budget) -> str:
         f'Peak "{peak.peak.name}"{k}, D = {significant(peak.peak.diffusion)} m²/s ({peak.peak.estimate.stated}): '
         f"{three(answer.in_uL2(peak.variance_extra))} µL² added, "
         f"{three(answer.in_uL2(peak.variance_total))} µL² in all{points}"
-        f"{_over_diffusion(peak, answer)}{_of_columns(peak)}"
+        f"{_over_diffusion(peak, doubt, answer)}{_of_columns(peak)}"
     )
 
 
-def _over_diffusion(peak: PeakBudget, answer: Budget) -> str:
+def _over_diffusion(peak: PeakBudget, doubt: Doubt | None, answer: Budget) -> str:
     """Say how far the answer hangs on an estimated diffusion coefficient."""
-    if peak.over_diffusion is None:
+    if doubt is None:
         return ""
-    low, high = sorted(peak.over_diffusion, key=lambda end: end.plates or -end.variance)
-    if low.plates is None or high.plates is None or peak.plates_observed is None:
-        spread = high.variance / low.variance
-        ends = f"{three(answer.in_uL2(high.variance))} to {three(answer.in_uL2(low.variance))} µL² in all"
+    if doubt.plates:
+        ends = f"{plates(doubt.plates[0])} to {plates(doubt.plates[1])} plates recorded"
     else:
-        spread = low.plates / high.plates
-        ends = f"{plates(low.plates)} to {plates(high.plates)} plates recorded"
-    matters = "it hardly matters" if spread > 1 - HARDLY else "it matters: measure D or look it up"
+        ends = " to ".join(three(answer.in_uL2(end)) for end in doubt.variance) + " µL² in all"
+    matters = "it hardly matters" if doubt.spread < HARDLY else "it matters: measure D or look it up"
     return f"; over the ±{100 * peak.peak.estimate.uncertainty:.0f} % of D {ends}, so {matters}"
 
 
@@ -203,8 +207,10 @@ def total_pressure(answer: Budget) -> str:
     if total is None:
         return "Pressure: not computed (viscosity or a drop is missing)."
     viscosity = answer.instrument.viscosity
-    unsure = "bed porosity and viscosity" if viscosity and not viscosity.entered else "the bed porosity"
-    ends = f" ({span(total)} over {unsure})" if span(total) else ""
+    beds = any(bed.porosity_is_assumed for bed in answer.instrument.beds)
+    unsure = ["bed porosity"] if beds else []
+    unsure += ["viscosity"] if viscosity and not viscosity.entered else []
+    ends = f" ({span(total)} over {' and '.join(unsure)})" if span(total) else ""
     return f"Pressure {bars(total)} bar{ends}."
 
 

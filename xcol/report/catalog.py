@@ -4,31 +4,19 @@ from __future__ import annotations
 
 import csv
 import io
-import math
-from collections.abc import Callable
 from dataclasses import dataclass
 from typing import TYPE_CHECKING, Any
 
 from xcol import __version__
-from xcol.catalog_records import (
-    CellFormat,
-    ColumnFormat,
-    InstrumentClass,
-    Material,
-    Mixture,
-    Packing,
-    Record,
-    Solute,
-    Solvent,
-    Tubing,
-)
-from xcol.catalogs import KINDS, PACKINGS, Catalogs, Kind, normal
+from xcol.catalog_kinds import KINDS, Kind
+from xcol.catalog_records import Record
+from xcol.catalogs import Catalogs, normal, row_text
 from xcol.errors import Place, refusal
 from xcol.flowpath.keys import nearest
-from xcol.liquids.mobile_phase import Component, MobilePhase
 from xcol.report.budget_record import spreadsheet_cell
+from xcol.report.catalog_values import VALUES
 from xcol.report.sheet import Grid, markdown
-from xcol.units import quote, significant
+from xcol.units import quote
 
 if TYPE_CHECKING:
     from collections.abc import Iterable
@@ -37,9 +25,6 @@ if TYPE_CHECKING:
 
 SCHEMA = "xcol.catalog/1"
 FEW_ROWS = 3  # so many are shown in full
-_ROOM = 298.15  # K, of the figures that are shown of a liquid
-
-Value = float | str | tuple[str, ...] | None
 
 
 @dataclass(frozen=True)
@@ -126,10 +111,16 @@ def _row_text(row: Record, catalogs: Catalogs, sheet: Sheet) -> None:
     sheet.line(row.name, "bold", indent=2)
     if row.also:
         sheet.line(f"also: {', '.join(row.also)}", indent=4, hang=2)
-    for shown in _VALUES[type(row)](row, catalogs).values():
+    for shown in VALUES[type(row)](row, catalogs).values():
         if shown.value is not None:
             sheet.line(f"{shown.label}: {shown.text}", indent=4, hang=2)
     sheet.line(f"source: {_source(row)}", indent=4, hang=2)
+    if text := row_text(row):
+        sheet.line("as a row of a catalog file:", indent=4)
+        for line in text.splitlines():
+            key, equals, value = line.partition("=")
+            value = '"..."' if key.strip() == "source" else value.strip()
+            sheet.line(f"{key.strip()} {equals} {value}".strip(), indent=6, hang=4)
 
 
 def listings_markdown(listings: tuple[Listing, ...]) -> str:
@@ -167,19 +158,19 @@ def listings_csv(listings: Iterable[Listing]) -> str:
             record = _record(row, listing.catalogs)
             for key, value in record.items():
                 if key != "name" and value not in (None, [], ""):
-                    shown = "; ".join(map(str, value)) if isinstance(value, list) else value
-                    writer.writerow((listing.kind.name, spreadsheet_cell(row.name), key, spreadsheet_cell(shown)))
+                    shown = "; ".join(map(str, value)) if isinstance(value, list) else spreadsheet_cell(value)
+                    writer.writerow((listing.kind.name, spreadsheet_cell(row.name), key, shown))
     return out.getvalue()
 
 
 def _record(row: Record, catalogs: Catalogs) -> dict[str, Any]:
-    values = {key: shown.value for key, shown in _VALUES[type(row)](row, catalogs).items()}
+    values = {key: shown.value for key, shown in VALUES[type(row)](row, catalogs).items()}
     listed = {key: list(value) if isinstance(value, tuple) else value for key, value in values.items()}
     return {"name": row.name, "also": list(row.also)} | listed | {"source": row.source, "file": row.file or None}
 
 
 def _grid(listing: Listing, sources: list[str]) -> Grid:
-    rows = [_VALUES[type(row)](row, listing.catalogs) for row in listing.rows]
+    rows = [VALUES[type(row)](row, listing.catalogs) for row in listing.rows]
     headers = {key: shown.header for key, shown in rows[0].items() if shown.header}
     right = tuple(all(isinstance(row[key].value, float | None) for row in rows) for key in headers)
     lines = tuple(
@@ -199,163 +190,3 @@ def _marks(rows: tuple[Record, ...]) -> dict[str, str]:
 
 def _source(row: Record) -> str:
     return f"{row.file}: {row.source}" if row.file else row.source
-
-
-@dataclass(frozen=True)
-class _Shown:
-    """One value of a row, with its unit in the ``label``; ``header`` is its column in a table, "" for none."""
-
-    label: str
-    value: Value
-    header: str = ""
-    digits: int = 4
-
-    @property
-    def text(self) -> str:
-        """The value as it is printed."""
-        if self.value is None:
-            return "-"
-        if isinstance(self.value, tuple):
-            return ", ".join(self.value)
-        return significant(self.value, self.digits) if isinstance(self.value, float) else self.value
-
-
-_Values = dict[str, _Shown]  # by key, which has the unit
-
-
-def _solvent(row: Solvent, catalogs: Catalogs) -> _Values:
-    alone = MobilePhase((Component(row, 1.0),))
-    fit = "IAPWS" if row.viscosity is None else ", ".join(f"{value:g}" for value in row.viscosity)
-    return {
-        "molar_mass_g_mol": _Shown("molar mass, g/mol", row.molar_mass * 1e3, "g/mol"),
-        "density_25degC_kg_m3": _Shown("density at 25 °C, kg/m³", row.density, "kg/m³, 25 °C"),
-        "expansion_per_K": _Shown("its fall, 1/K", row.expansion),
-        "viscosity_25degC_mPa_s": _Shown(
-            "viscosity at 25 °C, mPa s", alone.viscosity(_ROOM).value * 1e3, "mPa s, 25 °C"
-        ),
-        "viscosity_fit": _Shown("A, B, C of ln(η/mPa s) = A + B (1000/T) + C (1000/T)²", fit),
-        "uncertainty_percent": _Shown("its uncertainty, ±%", 100 * row.uncertainty, "±%"),
-        "fitted_degC": _Shown("fitted over, °C", _degrees(row.span)),
-        "association": _Shown("association ψ of Wilke and Chang", row.association),
-    }
-
-
-def _mixture(row: Mixture, catalogs: Catalogs) -> _Values:
-    return {
-        "excess": _Shown("a, b, c, e of the excess", ", ".join(f"{value:g}" for value in row.excess)),
-        "heat": _Shown("d, of its temperature term", row.heat),
-        "fitted_degC": _Shown("fitted over, °C", _degrees(row.span), "°C"),
-        "uncertainty_percent": _Shown("uncertainty there, ±%", 100 * row.uncertainty, "±%"),
-        "far_degC": _Shown("far outside, °C", row.far - 273.15, "far, °C"),
-        "uncertainty_far_percent": _Shown("uncertainty there, ±%", 100 * row.uncertainty_far, "±%, far"),
-    }
-
-
-def _solute(row: Solute, catalogs: Catalogs) -> _Values:
-    return {
-        "formula": _Shown("formula", row.formula or None),
-        "molecule": _Shown("molecule", row.molecule, "molecule"),
-        "molar_mass_g_mol": _Shown("molar mass, g/mol", _times(row.molar_mass, 1e3), "g/mol"),
-        "molar_volume_cm3_mol": _Shown("molar volume (Le Bas), cm³/mol", _times(row.molar_volume, 1e6), "cm³/mol"),
-        "diffusion_in_water_m2_s": _Shown("D in water, m²/s", row.diffusion, "D, m²/s"),
-        "at_degC": _Shown("measured at, °C", None if row.at is None else row.at - 273.15, "at °C"),
-    }
-
-
-def _packing(row: Packing, catalogs: Catalogs) -> _Values:
-    return {
-        "total_porosity": _Shown("total porosity", row.total_porosity, "total"),
-        "total_porosity_range": _Shown("its usual range", _span(row.total_range), "range"),
-        "interstitial_porosity": _Shown("interstitial porosity", row.interstitial, "bed"),
-        "interstitial_porosity_range": _Shown("its usual range", _span(row.interstitial_range), "range "),
-        "knox": _Shown("A, B, C of h = A ν^1/3 + B/ν + C ν", _coefficients(row.knox), "A, B, C"),
-        "knox_best": _Shown("at best", _coefficients(row.knox_best)),
-        "knox_worst": _Shown("at worst", _coefficients(row.knox_worst)),
-        "velocity": _Shown("velocity of ν", _VELOCITY[row.velocity] if row.knox else None),
-    }
-
-
-def _column(row: ColumnFormat, catalogs: Catalogs) -> _Values:
-    packing = catalogs.find(PACKINGS, row.packing)
-    return {
-        "bore_mm": _Shown("bore, mm", row.bore * 1e3),
-        "length_mm": _Shown("length, mm", row.length * 1e3),
-        "particle_um": _Shown("particle, µm", row.particle * 1e6),
-        "packing": _Shown("packing", row.packing),
-        "total_porosity": _Shown("total porosity", packing.total_porosity if packing else None, "total"),
-        "interstitial_porosity": _Shown("interstitial porosity", packing.interstitial if packing else None, "bed"),
-        "knox": _Shown(
-            "A, B, C of h = A ν^1/3 + B/ν + C ν", _coefficients(packing.knox if packing else None), "A, B, C"
-        ),
-        "velocity": _Shown("velocity of ν", _VELOCITY[packing.velocity] if packing and packing.knox else None),
-        "curve_source": _Shown("source of porosities and curve", packing.source if packing else None),
-        "plates": _Shown("plates", row.plates),
-    }
-
-
-def _tubing(row: Tubing, catalogs: Catalogs) -> _Values:
-    return {
-        "bore_mm": _Shown("bore, mm", row.bore * 1e3),
-        "bore_in": _Shown("bore, in", row.bore / 0.0254, "in", 3),
-        "reel_in": _Shown("as reels carry it, in", row.reel_inches),
-        "volume_uL_per_cm": _Shown("volume, µL/cm", math.pi / 4 * row.bore**2 * 1e7, "µL/cm", 3),
-        "tolerance_percent": _Shown("tolerance of the bore, ±%", 100 * row.tolerance, "±%"),
-        "tolerance_from": _Shown("which is", row.tolerance_from, "which is"),
-        "materials": _Shown("materials", row.materials, "materials"),
-    }
-
-
-def _material(row: Material, catalogs: Catalogs) -> _Values:
-    return {
-        "avoid": _Shown("keep away from", row.avoid or None, "keep away from"),
-        "caution": _Shown("caution", row.caution),
-    }
-
-
-def _cell_format(row: CellFormat, catalogs: Catalogs) -> _Values:
-    return {
-        "volume_uL": _Shown("volume, µL", row.volume * 1e9, "µL"),
-        "path_length_mm": _Shown("optical path, mm", _times(row.path_length, 1e3), "path, mm"),
-        "max_pressure_bar": _Shown("pressure limit, bar", _times(row.max_pressure, 1e-5)),
-    }
-
-
-def _instrument(row: InstrumentClass, catalogs: Catalogs) -> _Values:
-    low, high = (significant(end * 1e18) for end in row.variance)
-    return {
-        "variance_uL2": _Shown("variance, µL²", low if low == high else f"{low} to {high}", "µL²"),
-        "convention": _Shown("stated as", row.convention, "stated as"),
-        "conditions": _Shown("conditions", row.conditions),
-    }
-
-
-_VELOCITY = {"hold-up": "u = L/t0 (hold-up)", "interstitial": "interstitial"}
-
-
-def _degrees(span: tuple[float, float]) -> str:
-    return f"{span[0] - 273.15:.4g} to {span[1] - 273.15:.4g}"
-
-
-def _span(ends: tuple[float, float]) -> str:
-    return f"{ends[0]:g} to {ends[1]:g}"
-
-
-def _coefficients(values: tuple[float, float, float] | None) -> str | None:
-    return None if values is None else ", ".join(f"{value:g}" for value in values)
-
-
-def _times(value: float | None, factor: float) -> float | None:
-    return None if value is None else value * factor
-
-
-_VALUES: dict[type[Record], Callable[[Any, Catalogs], _Values]] = {
-    Solvent: _solvent,
-    Mixture: _mixture,
-    Solute: _solute,
-    Packing: _packing,
-    ColumnFormat: _column,
-    Tubing: _tubing,
-    Material: _material,
-    CellFormat: _cell_format,
-    InstrumentClass: _instrument,
-}

@@ -144,7 +144,7 @@ def _grids(answer: Budget) -> list[tuple[str, Grid]]:
             significant(peak.k, 4) if peak.k is not None else "-",
             show(peak.retention, TIME, 4) if peak.retention is not None else "-",
             show(peak.diffusion, DIFFUSION),
-            "as entered" if peak.estimate.entered else f"±{100 * peak.estimate.uncertainty:.0f} %",
+            peak.estimate.doubt or "as entered",
             significant(peak.plates, 6) if peak.plates is not None else "-",
         )
         for peak in instrument.peaks

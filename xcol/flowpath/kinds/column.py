@@ -4,18 +4,18 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING
 
-from xcol.catalogs import COLUMNS, PACKINGS, VELOCITIES
+from xcol.catalog_kinds import COLUMNS, PACKINGS, VELOCITIES
 from xcol.filters.column import PlateHeightCurve, void_volume
-from xcol.flowpath.elements import Bed, BestAndWorst
+from xcol.flowpath.elements import Bed, Curves
 from xcol.flowpath.file_keys import FLOWS
 from xcol.flowpath.findings import Draft
-from xcol.flowpath.keys import Choice, Key, Later, Measure, Number, Table, Text
+from xcol.flowpath.keys import Choice, Key, Later, Measure, Number, Table, Text, Value
 from xcol.flowpath.kinds.table import DROP, Elements, Kind, must
 from xcol.flowpath.shorthand import column_size, length_first
 from xcol.units import LENGTH, RATIO, VOLUME, significant
 
 if TYPE_CHECKING:
-    from xcol.catalog_records import Packing
+    from xcol.catalog_records import ColumnFormat, Packing
 
 _KNOX_EXAMPLE = "knox = { A = 0.9, B = 1.75, C = 0.065 }"
 
@@ -23,7 +23,7 @@ _KNOX_EXAMPLE = "knox = { A = 0.9, B = 1.75, C = 0.065 }"
 def _column(draft: Draft) -> Elements:
     bore, length = must(draft, "bore"), must(draft, "length")
     written = draft.written["column"]
-    if "bore" not in draft.written and not draft.values.get("from_catalog") and length_first(written):
+    if "bore" not in draft.written and draft.row is None and length_first(written):
         draft.warn(f'"{written}" has the length first: read as bore {bore * 1e3:g} mm, length {length * 1e3:g} mm')
     packing = _packing(draft)
     if packing is None:
@@ -31,8 +31,14 @@ def _column(draft: Draft) -> Elements:
     void = _void_volume(draft, packing, bore, length)
     bed = draft.number("interstitial_porosity")
     low, high = (bed, bed) if bed is not None else packing.interstitial_range
-    porosity = (bed or packing.interstitial, low, high)
+    porosity = (bed or packing.interstitial_porosity, low, high)
     plates, plates_at = draft.number("plates"), draft.number("plates_at")
+    if plates is not None and plates_at is None and "knox" in draft.inner:
+        draft.fault("knox", "plates or knox, not both (with plates_at, knox scales the plates)", "leave one out")
+    if draft.row is not None and plates is not None and "plates" not in draft.written:
+        draft.assume(
+            "plates of a catalog", f"{significant(plates, 6)} plates, from {draft.row.file}: {draft.row.source}"
+        )
     if plates_at is not None and plates is None:
         draft.fault("plates_at", "plates with it, which hold at this flow", "plates = 11000, or leave plates_at out")
         return ()
@@ -76,19 +82,20 @@ def _void_volume(draft: Draft, packing: Packing, bore: float, length: float) -> 
     return float(void_volume(bore, length, total))
 
 
-def _curve(draft: Draft, packing: Packing, total_over_interstitial: float) -> BestAndWorst | None:
+def _curve(draft: Draft, packing: Packing, total_over_interstitial: float) -> Curves | None:
     """Return the reduced plate height curve that the file enters, or the packing's; None with a fault."""
     velocity, source = packing.velocity, packing.source
     triples = (packing.knox, packing.knox_best, packing.knox_worst)
+    whose = f" of well packed {packing.name} columns"
     if entered := draft.inner.get("knox"):
         a, b, c = (entered.number(key) for key in ("A", "B", "C"))
         if a is None or b is None or c is None:
             draft.fault("knox", "all of A, B and C", _KNOX_EXAMPLE, f"{len(entered.values)} of its keys")
             return None
-        triples = ((a, b, c),) * 3
+        triples, whose = ((a, b, c), None, None), ""
         velocity, source = entered.text("velocity") or VELOCITIES[0], "as entered"
     usual, best, worst = triples
-    if usual is None or best is None or worst is None:
+    if usual is None:
         draft.fault(
             "plates",
             f"the plate number: no reduced plate height curve is known for {packing.name} packings",
@@ -105,7 +112,6 @@ def _curve(draft: Draft, packing: Packing, total_over_interstitial: float) -> Be
     which = "u = L/t0" if velocity == VELOCITIES[0] else "interstitial velocity"
     shown = f"h = {usual[0]:g} ν^1/3 + {usual[1]:g}/ν + {usual[2]:g} ν ({which}; {source})"
     if draft.number("plates") is None:
-        whose = "" if draft.inner.get("knox") else f" of well packed {packing.name} columns"
         text = f"no plates entered: N from the reduced plate height{whose}, {shown}, for each peak's D"
         draft.assume("N estimated", text, leads=True)
     else:
@@ -114,7 +120,8 @@ def _curve(draft: Draft, packing: Packing, total_over_interstitial: float) -> Be
             f"plates scaled from the flow at which they hold to this one by {shown}, with each peak's own D",
             leads=True,
         )
-    return BestAndWorst(*(PlateHeightCurve(*triple, ratio) for triple in (usual, best, worst)))
+    ends = [PlateHeightCurve(*triple, ratio) for triple in (best, worst) if triple is not None]
+    return Curves(PlateHeightCurve(*usual, ratio), (ends[0], ends[1]) if len(ends) == 2 else None)
 
 
 def _particle_is_known(draft: Draft) -> bool:
@@ -129,17 +136,19 @@ def _particle_is_known(draft: Draft) -> bool:
     return False
 
 
-def _from_catalog(draft: Draft, name: str) -> dict[str, float]:
-    """Return bore, length and particle of the column format of this name; its packing and plates go to the draft."""
-    row = draft.catalogs.find(COLUMNS, name)
-    if row is None:
-        return {}
-    draft.values.setdefault("packing", row.packing)
-    draft.values["from_catalog"] = True
-    if row.plates is not None:
-        draft.values.setdefault("plates", row.plates)
-        draft.assume("plates of the catalog", f"{significant(row.plates, 6)} plates; {row.file}: {row.source}")
-    return {"bore": row.bore, "length": row.length, "particle": row.particle}
+def _of_row(row: ColumnFormat, draft: Draft) -> dict[str, Value]:
+    """Return what a catalog's column gives, by key; what the file enters in its place is left out."""
+    values: dict[str, Value | None] = {
+        "bore": row.bore,
+        "length": row.length,
+        "particle": row.particle,
+        "packing": row.packing,
+        "total_porosity": None if "void_volume" in draft.written else row.total_porosity,
+        "plates": None if "knox" in draft.written else row.plates,
+        "plates_at": None if {"knox", "plates"} & set(draft.written) else row.plates_at,
+        "max_pressure": row.max_pressure,
+    }
+    return {key: value for key, value in values.items() if value is not None and key not in draft.written}
 
 
 COLUMN = Kind(
@@ -177,5 +186,6 @@ COLUMN = Kind(
     size=column_size,
     elements=_column,
     sizes={},
-    from_catalog=_from_catalog,
+    catalog=COLUMNS,
+    of_row=_of_row,
 )

@@ -4,11 +4,13 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass
+from typing import Any
 
+from xcol import catalog_kinds
 from xcol.flowpath.elements import Element
 from xcol.flowpath.file_keys import TEMPERATURES
 from xcol.flowpath.findings import Draft
-from xcol.flowpath.keys import Key, Later, Measure, Number, Text
+from xcol.flowpath.keys import Key, Later, Measure, Number, Text, Value
 from xcol.units import LENGTH, PRESSURE, VOLUME, Quantity, parse
 
 Elements = tuple[Element, ...]
@@ -52,8 +54,9 @@ class Kind:
     size: Callable[[str], dict[str, float]] | None
     elements: Callable[[Draft], Elements]
     sizes: dict[str, tuple[str, ...]]  # for each contribution the keys that say how large it is
-    # sizes of the catalog row that has this name, {} without one; the draft takes what else the row says
-    from_catalog: Callable[[Draft, str], dict[str, float]] | None = None
+    # the catalog whose rows are used by their name, and what such a row gives, by key
+    catalog: catalog_kinds.Kind[Any] | None = None
+    of_row: Callable[[Any, Draft], dict[str, Value]] | None = None
 
     def key(self, name: str) -> Key | None:
         """Return the key of this name, None where this kind has none."""

@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from xcol.catalogs import MIXTURES, PACKINGS, SOLUTES, SOLVENTS, Catalogs
+from xcol.catalog_kinds import MIXTURES, PACKINGS, SOLUTES, SOLVENTS
+from xcol.catalogs import Catalogs
 from xcol.filters.column import PlateHeightCurve, reduced_velocity, void_volume
 from xcol.flowpath.composition import read_composition
 from xcol.liquids.diffusion import (

@@ -16,7 +16,7 @@ def _pressure() -> str:
     tube = float(tube_drop(_FLOW, 2.0, 0.3e-3, 0.89e-3)) / 1e5
     usual = Catalogs().usual_packing()
     tight, loose = usual.interstitial_range
-    porosities = (usual.interstitial, loose, tight)
+    porosities = (usual.interstitial_porosity, loose, tight)
     bed = [float(bed_drop(_FLOW, 0.15, 4.6e-3, 0.9e-3, 5e-6, e)) / 1e5 for e in porosities]
     at, low, high = (significant(value) for value in bed)
     return (
