@@ -246,7 +246,7 @@ def test_a_catalog_of_one_s_own_is_added_and_overrides_with_a_message(run, tmp_p
         "path = [", 'mobile_phase = "water"\npath = ['
     )
     record = json.loads(run("budget", "-", "--catalog", "mine.toml", "--format", "json", stdin=text).stdout)
-    assert "measured" in record["detectors"][0]["peaks"][1]["diffusion_from"]
+    assert "catalog value" in record["detectors"][0]["peaks"][1]["diffusion_from"]
     assert run("check", "-", stdin=text).returncode == 2
     (tmp_path / "mine.toml").write_text(MINE.replace("our marker", "caffeine"), encoding="utf-8")
     done = run("catalog", "solutes", "caffeine", "--catalog", "mine.toml")
@@ -256,6 +256,25 @@ def test_a_catalog_of_one_s_own_is_added_and_overrides_with_a_message(run, tmp_p
     done = run("catalog", "--catalog", "mine.toml", "--output", "mine.toml", "--force")
     assert done.returncode == 2
     assert (tmp_path / "mine.toml").read_text(encoding="utf-8") == MINE.replace("our marker", "caffeine")
+
+
+def test_a_catalog_that_the_path_file_names_is_never_written_over(run, tmp_path, plain):
+    (tmp_path / "mine.toml").write_text(MINE, encoding="utf-8")
+    (tmp_path / "f.toml").write_text('catalogs = ["mine.toml"]\n' + plain, encoding="utf-8")
+    for command in ("budget", "check"):
+        for target in ("mine.toml", "f.toml"):
+            assert run(command, "f.toml", "--output", target, "--force").returncode == 2
+    assert (tmp_path / "mine.toml").read_text(encoding="utf-8") == MINE
+
+
+def test_catalogs_are_files(run, tmp_path, plain):
+    (tmp_path / "folder").mkdir()
+    (tmp_path / "empty.toml").write_text("", encoding="utf-8")
+    for name in ("-", "folder", "empty.toml", "none.toml"):
+        done = run("budget", "-", "--catalog", name, stdin=plain)
+        assert done.returncode == 2, name
+        assert b"catalog" in done.stderr
+        assert b"path file" not in done.stderr
 
 
 def test_a_faulty_catalog_is_named_with_its_line(run, tmp_path):
@@ -269,7 +288,7 @@ def test_a_faulty_catalog_is_named_with_its_line(run, tmp_path):
 
 def test_a_report_says_where_its_numbers_came_from(run, examples):
     flat = " ".join(run("budget", examples / "core-shell-by-name.toml", "--full").stdout.decode().split())
-    for words in ("Wilke–Chang from 284 g/mol, ±26 %", "measured in water at 25 °C", "±3 %", "reduced plate height"):
+    for words in ("Wilke–Chang from 284 g/mol", "±26 %", "in water at 25 °C", "±3 %", "reduced plate height"):
         assert words in flat
 
 

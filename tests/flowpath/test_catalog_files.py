@@ -72,6 +72,7 @@ def test_shipped_columns_are_found_by_their_name():
         ('"310 g/mol"', "310", 3, "molar_mass"),
         ('"310 g/mol"', '"310 g"', 3, "molar_mass"),
         ("[[column]]", "[[colum]]", 8, "colum"),
+        ('"core-shell"', '"coreshel"', None, "packing"),
         ('"an invented certificate"', '""', 15, "source"),
         ('at         = "25 degC"\n', "", 1, "at"),
         ('"310 g/mol"', '"310 g/mol', 3, ""),
@@ -85,9 +86,44 @@ def test_an_invalid_row_is_named_by_file_and_line(folder, old, new, line, key):
     assert (fault.place.line, fault.place.key) == (line, key)
 
 
-def test_a_missing_catalog_is_named_beside_the_file_s_own_faults(folder):
+def test_a_catalog_that_is_missing_or_wrong_is_named_alone(folder):
+    """What it lacks would be missed all over the path."""
+    for catalogs in ('["none.toml"]', '["mine.toml", "none.toml"]', '"none.toml"'):
+        with pytest.raises(InputError) as caught:
+            parse(text(f"catalogs = {catalogs}"), str(folder / "path.toml"))
+        (fault,) = caught.value.faults
+        assert fault.place.file.endswith("none.toml")
+        assert "catalog" in fault.expected
+
+
+def test_what_the_file_enters_stands_before_its_catalog(folder):
+    column = '{ column = "our C18", plates = 9000, total_porosity = 0.6 }'
+    found = parse(text(column=column), str(folder / "path.toml"))
+    assert found.beds[0].plates == 9000
+    assert found.beds[0].void_volume == pytest.approx(0.6 * 3.4636e-7, rel=1e-3)
+    assert not any("17000" in assumption.text for assumption in found.assumed)
+    assert any("17000" in assumption.text for assumption in parse(text(), str(folder / "path.toml")).assumed)
+
+
+def test_an_own_column_may_have_all_that_a_certificate_has(folder):
+    more = 'plates = 17000\nplates_at = "0.3 mL/min"\ntotal_porosity = "52 %"\nmax_pressure = "500 bar"'
+    (folder / "mine.toml").write_text(MINE.replace("plates   = 17000", more))
+    found = parse(text(), str(folder / "path.toml"))
+    assert found.beds[0].plates_at == pytest.approx(0.3e-6 / 60)
+    assert found.beds[0].void_volume == pytest.approx(0.52 * 3.4636e-7, rel=1e-3)
+    assert found.parts[1].max_pressure == pytest.approx(500e5)
+    curve = parse(text(column='{ column = "our C18", knox = { A = 1, B = 2, C = 0.1 } }'), str(folder / "path.toml"))
+    assert curve.beds[0].plates is None
+
+
+def test_a_misspelled_column_of_a_catalog_is_proposed(folder):
     with pytest.raises(InputError) as caught:
-        parse(text('catalogs = ["none.toml"]', peak="kk = 2"), str(folder / "path.toml"))
-    places = {(fault.place.file.rsplit("/")[-1], fault.place.key) for fault in caught.value.faults}
-    assert ("none.toml", "") in places
-    assert ("path.toml", "kk") in places
+        parse(text(column='{ column = "our C8" }'), str(folder / "path.toml"))
+    assert "our C18" in caught.value.faults[0].suggestion
+
+
+def test_an_own_solute_is_small_or_globular_by_its_mass(folder):
+    row = MINE.replace('diffusion  = "5.4e-10 m^2/s"\nat         = "25 degC"\n', "")
+    for mass, author in (("310 g/mol", "Wilke"), ("31 kDa", "Young")):
+        (folder / "mine.toml").write_text(row.replace("310 g/mol", mass))
+        assert author in parse(text(), str(folder / "path.toml")).peaks[0].estimate.origin

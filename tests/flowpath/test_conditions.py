@@ -151,8 +151,8 @@ def test_the_pressure_s_range_holds_the_viscosity_s_doubt(budget_of):
     ("phase", "words"),
     [
         ("hexane/2-propanol 90:10", "logarithmic mixing"),
-        ("water/THF 60:40", "likely higher"),
-        ("water/acetonitrile/methanol 50:25:25", "excess of each pair"),
+        ("water/THF 60:40", "mean of those known"),
+        ("water/acetonitrile/methanol 50:25:25", "known excess of each pair"),
         ("0.1 % formic acid in water", "taken as water"),
     ],
 )
@@ -171,7 +171,32 @@ peaks = [ { molar_mass = "300 g/mol" } ]"""
 
 def test_a_material_that_is_kept_away_from_the_liquid_is_warned_of():
     tube = ', material = "PEEK"'
-    assert any("tetrahydrofuran" in w for w in instrument('mobile_phase = "water/THF 50:50"', tube=tube).warnings)
+    assert any("PEEK" in warning for warning in instrument('mobile_phase = "hexane/THF 50:50"', tube=tube).warnings)
     assert not instrument('mobile_phase = "water/ACN 50:50"', tube=tube).warnings
-    assert not instrument('mobile_phase = "water/THF 50:50"', tube=', material = "steel"').warnings
-    assert not instrument('mobile_phase = "water/THF 50:50"', tube=', material = "unobtainium"').warnings
+    assert not instrument('mobile_phase = "hexane/THF 50:50"', tube=', material = "steel"').warnings
+    assert not instrument('mobile_phase = "hexane/THF 50:50"', tube=', material = "unobtainium"').warnings
+
+
+def test_a_column_s_own_temperature_is_the_one_its_peaks_are_stated_for():
+    head = ('mobile_phase = "water"', 'temperature = "25 degC"')
+    peaks = 'peaks = [ { k = 2, molar_mass = "300 g/mol" } ]'
+    own = instrument(*head, peaks=peaks, column=', temperature = "60 degC"')
+    oven = instrument('mobile_phase = "water"', 'temperature = "60 degC"', 'ambient = "25 degC"', peaks=peaks)
+    assert own.temperature == pytest.approx(333.15)
+    assert own.peaks[0].diffusion == pytest.approx(oven.peaks[0].diffusion)
+    assert [part.mobility for part in own.parts] == pytest.approx([part.mobility for part in oven.parts])
+    assert [part.temperature for part in own.parts] == pytest.approx([part.temperature for part in oven.parts])
+
+
+def test_the_reynolds_number_is_that_of_a_part_s_own_viscosity(budget_of):
+    head = ('mobile_phase = "water"', 'temperature = "60 degC"', 'ambient = "15 degC"')
+    tube = budget_of(text(*head))["pressure"][1]
+    expected = 4 * 983.2 * 0.4e-6 / 60 / (3.141592653589793 * 0.17e-3 * 1.1375e-3)
+    assert tube["reynolds_number"] == pytest.approx(expected, rel=2e-3)
+    assert tube["viscosity_mPa_s"] == pytest.approx(1.1375, rel=1e-3)
+    assert tube["temperature_degC"] == pytest.approx(15)
+
+
+def test_a_pair_that_nobody_measured_is_warned_of():
+    for phase, warned in (("water/THF 50:50", True), ("water/ACN 50:50", False), ("hexane/THF 50:50", False)):
+        assert bool(instrument(f'mobile_phase = "{phase}"').warnings) == warned

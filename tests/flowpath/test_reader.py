@@ -138,7 +138,7 @@ WRONG = {
         path(INJECT, '  { column = "2.1 x 100 mm, 3 um", knox = [1, 2, 3] },\n', DETECTOR), "knox", 6
     ),
     "unknown key of a curve": (
-        path(INJECT, '  { column = "2.1 x 100 mm, 3 um", knox = { A = 1, B = 2, D = 3 } },\n', DETECTOR), "D", 6
+        path(INJECT, '  { column = "2.1 x 100 mm, 3 um", knox = { A = 1, B = 2, D = 3 } },\n', DETECTOR), "knox.D", 6
     ),
     "a curve below h = 1": (
         path(INJECT, '  { column = "2.1 x 100 mm, 3 um", knox = { A = 0, B = 0, C = 0 } },\n', DETECTOR), "knox", 6

@@ -27,14 +27,17 @@ def test_the_shape_of_each_correlation():
     assert d.hayduk_laudie(2e-3, 1e-4) / d.hayduk_laudie(1e-3, 1e-4) == pytest.approx(2**-1.14)
 
 
-def test_an_estimate_says_where_it_comes_from():
-    small = {"molar_mass": 0.194, "in_water": True}
+def test_an_estimate_carries_its_origin_and_doubt():
+    small = {"molar_mass": 0.194, "method": d.SMALL_IN_WATER}
     from_volume = d.small_molecule(298.15, WATER, 40.7e-3, molar_volume=196e-6, **small)
     from_mass = d.small_molecule(298.15, WATER, 40.7e-3, molar_volume=None, **small)
-    assert from_volume.stated == "estimated by Wilke–Chang from a molar volume of 196 cm³/mol, ±20 %"
-    assert from_mass.stated == "estimated by Wilke–Chang from 194 g/mol, ±22 %"
+    assert from_volume.uncertainty == pytest.approx(0.20)
+    assert from_mass.uncertainty == pytest.approx(together(0.20, 0.08))
     assert from_mass.value == pytest.approx(d.wilke_chang(298.15, 0.89e-3, 0.194 * 1.11e-3, 40.7e-3))
-    assert d.globular(298.15, WATER, 150.0).stated == "estimated by Young–Carroad–Bell from 150 kg/mol, folded, ±25 %"
+    for found, words in ((from_volume, "196 cm³/mol"), (from_mass, "194 g/mol"), (from_mass, "±22 %")):
+        assert words in found.stated
+    assert "150 kg/mol" in d.globular(298.15, WATER, 150.0).stated
+    assert as_entered(1e-9).doubt == ""
     assert as_entered(1e-9).stated == "as entered"
 
 
@@ -42,15 +45,17 @@ def test_a_doubtful_viscosity_adds_its_doubt():
     doubtful = Estimate(0.89e-3, 0.5, "a mixture")
     found = d.globular(298.15, doubtful, 150.0)
     assert found.uncertainty == pytest.approx(together(d.GLOBULAR, 0.5))
+    slightly = Estimate(0.89e-3, 0.12, "a mixture")
+    assert d.globular(298.15, slightly, 150.0).uncertainty == pytest.approx(together(d.GLOBULAR, 0.12))
+    assert d.globular(298.15, WATER, 150.0).uncertainty == pytest.approx(d.GLOBULAR)
 
 
 def test_scaling_goes_with_t_over_eta_and_back():
-    known = Estimate(1e-9, 0.05, "measured")
+    known = Estimate(1e-9, 0.05, "known")
     there = Estimate(2e-3, 0.1, "x")
-    moved = d.scaled(known, 320.0, there, at=298.15, viscosity_there=WATER, same_liquid=False)
+    moved = d.scaled(known, 320.0, there, at=298.15, viscosity_there=WATER, rule=d.SMALL_ELSEWHERE)
     assert moved.value == pytest.approx(1e-9 * 320 / 2e-3 / (298.15 / 0.89e-3))
-    assert moved.uncertainty == pytest.approx(together(0.05, d.SMALL_ELSEWHERE, 0.1))
-    back = d.scaled(moved, 298.15, WATER, at=320.0, viscosity_there=there, same_liquid=False)
+    assert moved.uncertainty == pytest.approx(together(0.05, d.SMALL_ELSEWHERE, 0.1, 0.01))
+    back = d.scaled(moved, 298.15, WATER, at=320.0, viscosity_there=there, rule=d.SMALL_ELSEWHERE)
     assert back.value == pytest.approx(known.value)
-    same = d.scaled(known, 298.15, WATER, at=298.15, viscosity_there=WATER, same_liquid=True)
-    assert (same.value, same.uncertainty) == (pytest.approx(1e-9), 0.05)
+    assert d.scaled(known, 298.15, WATER, at=298.15, viscosity_there=WATER, rule=0.0) == known

@@ -6,7 +6,6 @@ computed with the libraries that the rows name. Libraries: extra "reference".
 """
 
 import csv
-import warnings
 
 import numpy as np
 import pytest
@@ -63,13 +62,6 @@ def test_mixtures_agree_with_the_measured_rows_within_three_per_cent(rows, liqui
             print(f"  {celsius:g} °C, vol % organic: residual %   {line}")
     assert len(found) >= 2
     assert max(abs(residual) for _, _, residual in found) < 0.03
-
-
-def test_the_stated_uncertainty_covers_nine_in_ten_measured_rows(rows):
-    for liquid in ("acetonitrile/water", "methanol/water"):
-        found = residuals(rows, liquid)
-        stated = [phase(f"{liquid} {p:g}:{100 - p:g}").viscosity(t + 273.15).uncertainty for p, t, _ in found]
-        assert np.mean([abs(r) <= u for (_, _, r), u in zip(found, stated, strict=True)]) >= 0.9
 
 
 def test_pure_liquids_agree_with_the_computed_rows(rows):
@@ -137,50 +129,21 @@ def test_pure_liquids_agree_with_coolprop(name, fluid):
         assert pure(name).density(temperature) == pytest.approx(density, rel=0.012)
 
 
-def test_pure_liquids_lie_within_the_scatter_of_compilations():
-    """The package chemicals: DIPPR (Perry 8th ed.) and VDI PPDS, each with its own coefficients."""
-    pytest.importorskip("chemicals")
-    with warnings.catch_warnings():
-        warnings.simplefilter("ignore")  # the library's own, of how it reads its tables
-        from chemicals import CAS_from_any, viscosity
-        from chemicals.dippr import EQ101
-        from chemicals.viscosity import PPDS9
-
-        viscosity._load_mu_data()
-    compared = 0
-    for solvent in KNOWN.rows(SOLVENTS):
-        if solvent.viscosity is None:
-            continue
-        cas = CAS_from_any(solvent.name)
-        liquid, temperature = pure(solvent.name), 298.15
-        value, others = liquid.viscosity(temperature), []
-        if cas in viscosity.mu_data_Perrys_8E_2_313.index:
-            row = viscosity.mu_data_Perrys_8E_2_313.loc[cas]
-            others.append(EQ101(temperature, *(row[f"C{n}"] for n in range(1, 6))))
-        if cas in viscosity.mu_data_VDI_PPDS_7.index:
-            row = viscosity.mu_data_VDI_PPDS_7.loc[cas]
-            others.append(PPDS9(temperature, *(row[letter] for letter in "ABCDE")))
-        compared += len(others)
-        low, high = 1 - value.uncertainty, 1 + value.uncertainty
-        assert min(others) * low <= value.value <= max(others) * high, solvent.name
-    assert compared >= 30
-
-
-# CoolProp INCOMP::MMA (methanol/water) and INCOMP::MEA (ethanol/water), Melinder's fits, to 60 % by mass and 40 °C.
-@pytest.mark.parametrize(
-    ("liquid", "solution", "fluid", "within"),
-    [("methanol", "INCOMP::MMA", "Methanol", 0.035), ("ethanol", "INCOMP::MEA", "Ethanol", 0.035)],
-)
-def test_mixtures_agree_with_coolprop(liquid, solution, fluid, within, capsys):
+# CoolProp INCOMP::MMA (methanol/water) and INCOMP::MEA (ethanol/water), Melinder's fits, to 60 % by mass and 40 °C. The
+# second is what the ethanol row was fitted to: no check from outside, but of the fit.
+@pytest.mark.parametrize(("liquid", "solution"), [("methanol", "INCOMP::MMA"), ("ethanol", "INCOMP::MEA")])
+def test_mixtures_agree_with_coolprop_where_it_reaches(liquid, solution, capsys):
     coolprop = pytest.importorskip("CoolProp.CoolProp")
     worst = 0.0
     for mass in (0.1, 0.2, 0.3, 0.4, 0.5, 0.59):
         solvent = KNOWN.find(SOLVENTS, liquid)
         volumes = mass / solvent.density, (1 - mass) / 997.1
         percent = 100 * volumes[0] / sum(volumes)
-        for celsius in (20, 25, 30, 40):
+        for celsius in (5, 10, 20, 25, 30, 40):
             reference = coolprop.PropsSI("V", "T", celsius + 273.15, "P", 101325, f"{solution}[{mass}]") * 1e3
-            worst = max(worst, abs(viscosity(f"{liquid}/water", percent, celsius) / reference - 1), key=abs)
+            error = viscosity(f"{liquid}/water", percent, celsius) / reference - 1
+            stated = phase(f"{liquid}/water {percent:g}:{100 - percent:g}").viscosity(celsius + 273.15).uncertainty
+            assert abs(error) < stated, (mass, celsius)
+            worst = max(worst, error, key=abs)
     with capsys.disabled():
-        print(f"\n{liquid}/water against {solution}: worst {100 * worst:.1f} %")
-    assert worst < within
+        print(f"\n{liquid}/water against {solution}: worst {100 * worst:+.1f} %")
