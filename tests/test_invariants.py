@@ -26,17 +26,35 @@ conditions = st.fixed_dictionaries(
         "diffusion": st.floats(1e-11, 5e-9),
         "k": st.just(0.0) | st.floats(0.01, 20),
         "inject": st.just(0.0) | st.floats(0.01, 50),
+        # None: all is entered; otherwise liquid, plates and diffusion come from the catalogs
+        "liquid": st.none() | st.fixed_dictionaries(
+            {
+                "organic": st.sampled_from(["acetonitrile", "methanol", "THF"]),
+                "percent": st.integers(1, 99),
+                "celsius": st.floats(20, 70),
+                "ambient": st.none() | st.floats(15, 40),
+                "mass": st.floats(60, 490),
+            }
+        ),
     }
-)
+)  # fmt: skip
 
+BY_CURVE = '{ column = "2.1 x 100 mm, 3 um", packing = "core-shell", total_porosity = 0.6 }'
 COLUMN = '{ column = "2.1 x 100 mm, 3 um", plates = 12000, total_porosity = 0.6 }'
 DETECTOR = '{ detector = "UV", cell = "2.5 uL", time_constant = "0.1 s", rate = "10 Hz" }'
 
 
 def peak_of(before, after, c, flow_unit="mL/min", flow_factor=1.0):
-    parts = [f'{{ inject = "{c["inject"]!r} uL" }}', *before, COLUMN, *after, DETECTOR]
-    text = f'flow = "{c["flow"] * flow_factor!r} {flow_unit}"\npath = [\n' + ",\n".join(parts) + "\n]\n"
-    text += f'peaks = [ {{ k = {c["k"]!r}, diffusion = "{c["diffusion"]!r} m^2/s" }} ]\n'
+    liquid = c["liquid"]
+    parts = [f'{{ inject = "{c["inject"]!r} uL" }}', *before, BY_CURVE if liquid else COLUMN, *after, DETECTOR]
+    text, solute = f'flow = "{c["flow"] * flow_factor!r} {flow_unit}"\n', f'diffusion = "{c["diffusion"]!r} m^2/s"'
+    if liquid:
+        share = liquid["percent"]
+        text += f'mobile_phase = "{liquid["organic"]}/water {share}:{100 - share}"\n'
+        text += f'temperature = "{liquid["celsius"]!r} degC"\n'
+        text += f'ambient = "{liquid["ambient"]!r} degC"\n' if liquid["ambient"] else ""
+        solute = f'molar_mass = "{liquid["mass"]!r} g/mol"'
+    text += "path = [\n" + ",\n".join(parts) + f"\n]\npeaks = [ {{ k = {c['k']!r}, {solute} }} ]\n"
     answer = budget(parse(text, "f"))
     return answer.detectors[0], answer.detectors[0].peaks[0]
 

@@ -13,6 +13,16 @@ TEMPERATURES = Measure(TEMPERATURE, 233.15, 523.15)
 VISCOSITIES = Measure(VISCOSITY, 1e-5, 1.0)
 MOBILE_PHASE = Key("mobile_phase", Text(200), 'liquids in volume parts, "acetonitrile/water 60:40"')
 
+MOLECULES = (
+    ("protein", "globular"),
+    ("antibody", "globular"),
+    ("folded", "globular"),
+    ("polymer", "chain"),
+    ("rod", "chain"),
+    ("unfolded", "chain"),
+    ("drug", "small"),
+    ("large", "globular"),
+)
 AT_KEYS = (
     Key("temperature", TEMPERATURES, "temperature at which the diffusion coefficient was known"),
     MOBILE_PHASE,
@@ -59,7 +69,7 @@ PEAK_KEYS = {
         ),
         Key("solute", Text(60), "name of the solute in the catalog, in place of its diffusion coefficient"),
         Key("molar_mass", Measure(MOLAR_MASS, 2e-3, 1e5), "molar mass, in place of the diffusion coefficient"),
-        Key("molecule", Choice(("small", "globular", "chain")), "what the molar mass is that of"),
+        Key("molecule", Choice(("small", "globular", "chain"), MOLECULES), "what the molar mass is that of"),
         Key("k_start", Later("k"), "retention factor at the start of the gradient"),
         Key("S", Later("k"), "slope of log k with composition"),
         Key("k_in_sample", Later(), "retention factor in the sample's solvent"),

@@ -168,9 +168,10 @@ class Text:
 
 @dataclass(frozen=True)
 class Choice:
-    """One of a few words."""
+    """One of a few words; ``instead`` has what people write in their place."""
 
     options: tuple[str, ...]
+    instead: tuple[tuple[str, str], ...] = ()
 
     def __call__(self, raw: object) -> str:
         """Return the word."""
@@ -178,8 +179,8 @@ class Choice:
         if word in self.options:
             return word
         listed = ", ".join(f'"{option}"' for option in self.options)
-        near = nearest(word, self.options)
-        raise UnitError(described(raw), f"one of {listed}", f'"{near or self.options[0]}"')
+        near = dict(self.instead).get(word) or nearest(word, self.options) or self.options[0]
+        raise UnitError(described(raw), f"one of {listed}", f'"{near}"')
 
 
 @dataclass(frozen=True)

@@ -183,7 +183,8 @@ def _k_from(retention: float, draft: Draft, instrument: Instrument) -> float | N
         key,
         f"{expected}: {write(hold_up, 's', TIME)} of hold-up, and {write(delay, 's', TIME)} outside the column, "
         f"most of it in {slowest[0].label} ({write(slowest[1], 's', TIME)})",
-        "check retention and flow, the column's void volume, and the size of that part",
+        "check retention and flow, the column's void volume, and the size of that part; in size exclusion, enter "
+        "void_volume as the peak's own elution volume, with k = 0",
     )
     return None
 

@@ -38,7 +38,7 @@ def _diffusion() -> str:
     value = float(wilke_chang(_ROOM, eta, caffeine.molar_volume, psi_mass))
     return (
         f"caffeine in water at 25 °C, from {caffeine.molar_volume * 1e6:.0f} cm³/mol: {significant(value)} m²/s by "
-        f"Wilke and Chang, {significant(caffeine.diffusion)} measured"
+        f"Wilke and Chang, {significant(caffeine.diffusion)} in the catalog"
     )
 
 
@@ -67,14 +67,14 @@ LIQUIDS = (
         "Mobile phase: viscosity and density",
         "mobile_phase names liquids in volume parts before mixing. Water has the IAPWS formula, an organic liquid "
         "a fit "
-        "to a compilation (xcol catalog solvents). Acetonitrile, methanol and ethanol with water have a measured "
-        "excess "
-        "over logarithmic mixing. Any other mixture is mixed logarithmically by volume fraction "
-        f"(±{100 * MIXED_ORGANICS:.0f} % of organic liquids, ±{100 * MIXED_WITH_WATER:.0f} % with water, where it is "
-        "likely too low); of three or more, each measured pair with water keeps its excess. Additives and dilute "
-        "buffers "
-        "are taken as their liquid, and said so. With ambient, the columns have temperature, all other parts ambient. "
-        "Pressure raises the viscosity of water by up to 6 % at 1000 bar, which is left out.",
+        "to a compilation (xcol catalog solvents). Acetonitrile, methanol and ethanol with water have a known excess "
+        "over logarithmic mixing (xcol catalog mixtures). Any other liquid with water gets the mean excess of those, "
+        f"±{100 * MIXED_WITH_WATER:.0f} % and a warning; organic liquids are mixed logarithmically by volume fraction, "
+        f"±{100 * MIXED_ORGANICS:.0f} %; of three or more, each pair with water has its excess. Additives and dilute "
+        "buffers are taken as their liquid, and said so; a word that is not known is refused. With ambient, the "
+        "columns "
+        "have temperature, all other parts ambient, and a part may say its own. Pressure raises the viscosity of water "
+        "by up to 6 % at 1000 bar, which is left out.",
         (
             "ln η = Σ φ_i ln η_i + Σ (φ_i+φ_w)²·φ(1−φ)·(a + b·u + c·u² + e·u³ + d·θ)",
             "φ of the liquid in its pair with water, u = 2φ−1, θ = 1000/T − 1000/298.15 K",
@@ -94,7 +94,7 @@ LIQUIDS = (
     Topic(
         "diffusion",
         "Diffusion coefficient of a solute",
-        "A peak gives diffusion, or solute (a name of the catalog: a value measured in water, scaled; without one, "
+        "A peak gives diffusion, or solute (a name of the catalog: its value in water, scaled; without one, "
         f"its molar volume), or molar_mass. Up to {SWITCH * 1e3:.0f} g/mol, and with molecule = \"small\", a small "
         "molecule is estimated by Wilke and Chang (V = 1.11 cm³/g times the molar mass, if that is all there is); "
         "above, "
@@ -108,7 +108,7 @@ LIQUIDS = (
             "elsewhere: D·η/T = constant",
         ),
         f"±{100 * SMALL_IN_WATER:.0f} % in water and ±{100 * SMALL_ELSEWHERE:.0f} % in other liquids and mixtures, "
-        f"±{100 * GLOBULAR:.0f} % for globular proteins (rods diffuse up to 75 % more slowly than that), and the "
+        f"±{100 * GLOBULAR:.0f} % for globular proteins (rods diffuse some 40 % more slowly than that), and the "
         "viscosity's own doubt. A long tube's variance goes as 1/D, a short one's hardly changes: xcol budget --full "
         "says for each peak how far the plates move over the doubt of D. Estimates can fail: a dye in "
         "ethanol/water was "
@@ -131,8 +131,8 @@ LIQUIDS = (
         "plate-height",
         "Plates from the reduced plate height",
         "Without plates, a column's N comes from the reduced plate height of well packed columns of its packing "
-        "(packing "
-        '= "fully porous" unless you say "core-shell", or knox = { A, B, C } of your own), at this flow and for each '
+        '(packing = "fully porous" unless you say "core-shell", or a curve of your own, knox), at this flow and '
+        'for each '
         "peak's own D. With plates and plates_at, the N of the certificate is scaled from its flow to this one by the "
         "same curve, with the peak's D for both. The dependence of h on k is left out.",
         (
@@ -140,7 +140,7 @@ LIQUIDS = (
             "N = L/(h·d_p);  with plates_at: N = N_entered·h(ν there)/h(ν here)",
         ),
         'Coefficients found with the interstitial velocity (velocity = "interstitial") belong to a ν that is larger by '
-        "total over interstitial porosity. The range of N shown in --full is that of the usual coefficients; a real "
+        "total over interstitial porosity. The range of N shown is that of the usual coefficients; a real "
         "column, its frits and its age can lie outside it: a measured N is better.",
         (
             "form: Knox, J. Chromatogr. Sci. 15 (1977) 352, from memory",
@@ -155,15 +155,18 @@ LIQUIDS = (
     Topic(
         "catalogs",
         "Catalogs, and your own",
-        "What the program supplies stands in catalogs, every row with its source: xcol catalog lists them. Rows "
-        "of your "
-        'own go into a TOML file, catalogs = ["mine.toml"] in the path file (looked up beside it) or --catalog '
-        "mine.toml: tables [[solute]], [[solvent]], [[mixture]], [[packing]], [[column]], [[tubing]], [[material]], "
-        "[[cell]], [[instrument]], with the keys of the shipped files. A row with the name of a shipped one stands in "
-        'its place, with a warning. A column is taken from the catalog by its name: column = "my column".',
+        "What the program supplies stands in catalogs, every row with its source: xcol catalog lists them. Rows of "
+        'your own go into a TOML file, catalogs = ["mine.toml"] in the path file (looked up beside it) or --catalog '
+        "mine.toml, with the tables and keys of the shipped ones: xcol catalog KIND NAME prints a row to begin with. "
+        "What a row can do without: expansion, association, span and uncertainty of a solvent, whose viscosity may be "
+        "two or more measured points; the ranges of a packing; molecule of a solute (its molar mass decides). A row "
+        "with the name of a shipped one stands in its place, with a warning. A column is used by its name: column = "
+        '"our C18"; plates, plates_at, total_porosity and max_pressure may stand in its row.',
         (
-            '[[solute]]  name = "our marker"  molar_mass = "310 g/mol"  diffusion = "5.4e-10 m^2/s"',
-            '            at = "25 degC"  source = "our notebook"',
+            '[[solute]]  name = "our marker"  molar_mass = "310 g/mol"  source = "our notebook"',
+            '            diffusion = "5.4e-10 m^2/s"  at = "25 degC"',
+            '[[solvent]] name = "our diluent"  molar_mass = "76 g/mol"  density = "1.04 g/mL"  source = "..."',
+            '            viscosity = [["20 degC", "2.4 mPa s"], ["40 degC", "1.4 mPa s"]]',
         ),
         "diffusion and at of a solute are those in water.",
         ("each row's own",),
