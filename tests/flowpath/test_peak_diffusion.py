@@ -180,6 +180,11 @@ def test_what_is_wrong_is_found_at_its_place(peak, key, faults_of):
     assert faults[0].suggestion
 
 
+def test_an_unknown_solute_is_told_beside_an_unknown_liquid(faults_of):
+    faults = faults_of(text('solute = "cafeine"', 'mobile_phase = "beer"\n'))
+    assert [fault.place.key for fault in faults] == ["mobile_phase", "solute"]
+
+
 def test_near_solutes_are_proposed(faults_of):
     assert '"caffeine"' in faults_of(text('solute = "cafeine"'))[0].suggestion
 

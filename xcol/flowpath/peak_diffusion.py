@@ -21,6 +21,7 @@ from xcol.liquids.estimate import Estimate, as_entered
 from xcol.units import significant
 
 if TYPE_CHECKING:
+    from xcol.catalog_records import Solute
     from xcol.flowpath.findings import Draft
     from xcol.liquids.mobile_phase import MobilePhase
 
@@ -68,7 +69,8 @@ def peak_diffusion(draft: Draft, conditions: Conditions) -> Estimate | None:
     return _known_elsewhere(draft, value, conditions) if "at" in draft.inner else as_entered(value)
 
 
-def _of_solute(draft: Draft, conditions: Conditions) -> Estimate | None:
+def solute_of(draft: Draft) -> Solute | None:
+    """Return the catalog's row of the solute that a peak names; a fault where there is none."""
     name = draft.text("solute") or ""
     row = draft.catalogs.find(SOLUTES, name)
     if row is None:
@@ -78,6 +80,12 @@ def _of_solute(draft: Draft, conditions: Conditions) -> Estimate | None:
             "a solute of the catalog (xcol catalog solutes lists them), or one of a catalog of your own",
             f'solute = "{near}"' if near else 'molar_mass = "350 g/mol" in its place, or diffusion',
         )
+    return row
+
+
+def _of_solute(draft: Draft, conditions: Conditions) -> Estimate | None:
+    row = solute_of(draft)
+    if row is None:
         return None
     molecule = row.molecule or _molecule(row.molar_mass or 0.0)
     if molecule == "globular":

@@ -17,6 +17,7 @@ from xcol.flowpath.findings import Draft, Findings
 from xcol.flowpath.locate import KeyLines, key_lines
 from xcol.flowpath.model import Assumption, Instrument, Part, Peak
 from xcol.flowpath.part_reader import read_keys, read_part, refuse_unknown
+from xcol.flowpath.peak_diffusion import solute_of
 from xcol.flowpath.peak_reader import check_diffusion, check_positions, estimates_of, peaks_of, read_peaks
 from xcol.flowpath.source import read_text
 from xcol.flowpath.toml_text import load
@@ -87,7 +88,12 @@ def _estimates(conditions: Conditions, parts: list[Part], drafts: list[Draft], t
         if phase is not None and temperature is not None
     ]
     wanted = "mobile_phase" not in top.written or conditions.phase is not None  # or the fault is there already
-    return estimates_of(drafts, top, conditions) if all(known) and wanted else []
+    if all(known) and wanted:
+        return estimates_of(drafts, top, conditions)
+    for draft in drafts:  # what can be told all the same
+        if "solute" in draft.values:
+            solute_of(draft)
+    return []
 
 
 def _report_missing_flow(data: dict[str, Any], file: str, lines: KeyLines, findings: Findings) -> None:
