@@ -9,6 +9,7 @@ from xcol.flowpath.composition import Composition, read_composition
 from xcol.flowpath.file_keys import VISCOSITIES
 from xcol.liquids.estimate import Estimate, as_entered
 from xcol.liquids.mobile_phase import FAR, MIXED_WITH_WATER, MobilePhase
+from xcol.liquids.viscosity import ROOM
 from xcol.units import TEMPERATURE, VISCOSITY, UnitError, write
 
 if TYPE_CHECKING:
@@ -18,7 +19,6 @@ if TYPE_CHECKING:
     from xcol.flowpath.findings import Draft, Findings
     from xcol.flowpath.model import Part
 
-ROOM = 298.15  # K, where nobody says
 _DENSITY = 1000.0  # kg/m³, where no mobile phase is entered: for the Reynolds number only
 
 
@@ -98,7 +98,7 @@ def read_conditions(top: Draft, has_column: bool) -> Conditions:
     if ambient is not None and ambient != temperature and entered is None:
         top.findings.assume(
             "outside the oven: ambient",
-            f"all parts but the columns have {_degrees(ambient)}: the first centimetres behind a column are nearer to "
+            f"all parts but the columns have {degrees(ambient)}: the first centimetres behind a column are nearer to "
             "its own temperature",
         )
     conditions = Conditions(phase, entered, temperature, ambient)
@@ -136,11 +136,11 @@ def check_range(phase: MobilePhase, temperature: float, place: Place, findings: 
     Returns whether the liquid can be computed there.
     """
     distance, solvent = phase.outside(temperature)
-    low, high = (_degrees(end) for end in solvent.span)
+    low, high = (degrees(end) for end in solvent.span)
     if distance > FAR:
         findings.fault(
             place,
-            f"{_degrees(temperature)}, with {phase.name}",
+            f"{degrees(temperature)}, with {phase.name}",
             f"a temperature near {low} to {high}, for which the viscosity of {solvent.name} is known",
             'viscosity = "0.5 mPa s" as measured or looked up, and each peak\'s diffusion',
         )
@@ -149,23 +149,23 @@ def check_range(phase: MobilePhase, temperature: float, place: Place, findings: 
     if not VISCOSITIES.low <= computed <= VISCOSITIES.high:
         findings.fault(
             place,
-            f"{phase.name}, which the catalogs give {write(computed, 'mPa s', VISCOSITY)} at {_degrees(temperature)}",
+            f"{phase.name}, which the catalogs give {write(computed, 'mPa s', VISCOSITY)} at {degrees(temperature)}",
             "a liquid that flows",
             "check the rows of your own catalog, or enter viscosity",
         )
         return False
     if distance > 0:
         findings.warn(
-            f"{_degrees(temperature)} is outside {low} to {high}, where the viscosity of {solvent.name} was fitted: "
+            f"{degrees(temperature)} is outside {low} to {high}, where the viscosity of {solvent.name} was fitted: "
             "viscosity and diffusion are extrapolated"
         )
     mixture = phase.out_of_reach(temperature)
     if mixture is not None:
-        low, high = (_degrees(end) for end in mixture.span)
+        low, high = (degrees(end) for end in mixture.span)
         uncertainty = phase.viscosity(temperature).uncertainty
         findings.assume(
             "viscosity extrapolated",
-            f"{_degrees(temperature)} is outside {low} to {high}, where the viscosity of {mixture.name} is known: "
+            f"{degrees(temperature)} is outside {low} to {high}, where the viscosity of {mixture.name} is known: "
             f"extrapolated, ±{100 * uncertainty:.0f} %",
         )
     return True
@@ -200,5 +200,6 @@ def _compare(computed: Estimate, entered: float, top: Draft) -> None:
         )
 
 
-def _degrees(temperature: float) -> str:
+def degrees(temperature: float) -> str:
+    """Return a temperature [K] as people read it, '25 °C'."""
     return write(temperature, "degC", TEMPERATURE, 4).replace("degC", "°C")

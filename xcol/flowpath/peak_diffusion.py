@@ -6,7 +6,7 @@ from typing import TYPE_CHECKING
 
 from xcol.catalog_kinds import SOLUTES
 from xcol.flowpath.composition import water_of
-from xcol.flowpath.conditions import Conditions, check_range, composition_of, say_what_was_left_out
+from xcol.flowpath.conditions import Conditions, check_range, composition_of, degrees, say_what_was_left_out
 from xcol.liquids.diffusion import (
     CATALOG_VALUE,
     SMALL_ELSEWHERE,
@@ -109,7 +109,7 @@ def _of_catalog_value(draft: Draft, value: float, at: float, conditions: Conditi
     there = water_of(draft.catalogs).viscosity(at)
     phase = conditions.phase
     same = phase is not None and phase.is_water and conditions.entered is None
-    origin = f"catalog value in water at {_degrees(at)}"
+    origin = f"catalog value in water at {degrees(at)}"
     if not same or conditions.reference != at:
         origin += f", scaled with T/η to {_where(conditions)}"
     known = Estimate(value, CATALOG_VALUE, origin)
@@ -242,8 +242,4 @@ def _where(conditions: Conditions) -> str:
     liquid = conditions.phase.name if conditions.phase else "a liquid"
     if conditions.entered is not None:
         liquid += f" of {significant(conditions.entered * 1e3)} mPa s"
-    return f"{liquid} at {_degrees(conditions.reference)}"
-
-
-def _degrees(temperature: float) -> str:
-    return f"{temperature - 273.15:.4g} °C"
+    return f"{liquid} at {degrees(conditions.reference)}"

@@ -4,6 +4,8 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING
 
+from xcol.liquids.viscosity import ROOM
+
 if TYPE_CHECKING:
     from xcol.liquids.viscosity import Real
 
@@ -32,4 +34,4 @@ def organic_density(temperature: Real, at_25: float, expansion: float) -> Real:
     >>> round(organic_density(333.15, 776.8, 1.41e-3), 1)  # acetonitrile at 60 °C
     738.5
     """
-    return at_25 * (1 - expansion * (temperature - 298.15))
+    return at_25 * (1 - expansion * (temperature - ROOM))

@@ -20,8 +20,8 @@ class Estimate:
 
     @property
     def doubt(self) -> str:
-        """The uncertainty in words, '±20 %'; '' for what was entered."""
-        return "" if self.entered else f"±{100 * self.uncertainty:.0f} %"
+        """The uncertainty in words, '±20 %'; '' for what was entered, and where it has none."""
+        return "" if self.entered or not self.uncertainty else f"±{100 * self.uncertainty:.0f} %"
 
     @property
     def stated(self) -> str:

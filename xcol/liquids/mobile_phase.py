@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING
 
 from xcol.liquids.density import organic_density, water_density
 from xcol.liquids.estimate import Estimate
-from xcol.liquids.viscosity import excess_with_water, mixed_viscosity, organic_viscosity, water_viscosity
+from xcol.liquids.viscosity import ROOM, excess_with_water, mixed_viscosity, organic_viscosity, water_viscosity
 
 if TYPE_CHECKING:
     from collections.abc import Mapping
@@ -20,8 +20,7 @@ if TYPE_CHECKING:
 MIXED_ORGANICS = 0.20
 MIXED_WITH_WATER = 0.50
 FAR = 40.0  # K outside the fitted range: beyond, nothing is computed
-ROOM = 298.15  # K, where a liquid's uncertainty is stated
-# Compilations part by some 0.1 % for each kelvin from there, extrapolation by some 0.25 % for each beyond a fit.
+# Compilations part by some 0.1 % for each kelvin from 25 °C, extrapolation by some 0.25 % for each beyond a fit.
 APART_PER_KELVIN, BEYOND_PER_KELVIN = 0.001, 0.0025
 
 

@@ -14,7 +14,7 @@ if TYPE_CHECKING:
     Real = float | npt.NDArray[np.float64]
 
 _WATER = ((280.68, -1.9), (511.45, -7.7), (61.131, -19.6), (0.45903, -40.0))  # µPa s, power of T/300 K
-_ROOM = 298.15
+ROOM = 298.15  # K, 25 °C
 
 
 def water_viscosity(temperature: Real) -> Real:
@@ -60,7 +60,7 @@ def excess_with_water(
     """
     a, b, c, e = excess
     u = 2 * fraction - 1
-    theta = 1000.0 / temperature - 1000.0 / _ROOM
+    theta = 1000.0 / temperature - 1000.0 / ROOM
     return fraction * (1 - fraction) * (a + b * u + c * u**2 + e * u**3 + heat * theta)
 
 

@@ -138,7 +138,7 @@ def liquid_line(answer: Budget, peak: PeakBudget) -> str:
     if instrument.mobile_phase and instrument.viscosity is not None:
         shown = show(instrument.viscosity.value, VISCOSITY)
         liquid = f"{instrument.mobile_phase}: {shown} {instrument.viscosity.doubt or 'as entered'}"
-    if not peak.peak.estimate.entered:
+    if peak.peak.estimate.doubt:
         estimated.append(f"D {peak.peak.estimate.doubt}")
     if peak.columns_range:
         fewest, most = peak.columns_range

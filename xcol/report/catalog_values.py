@@ -20,7 +20,8 @@ from xcol.catalog_records import (
     Solvent,
     Tubing,
 )
-from xcol.liquids.mobile_phase import ROOM, Component, MobilePhase
+from xcol.liquids.mobile_phase import Component, MobilePhase
+from xcol.liquids.viscosity import ROOM
 from xcol.units import significant
 
 if TYPE_CHECKING:
