@@ -163,10 +163,13 @@ LIQUIDS = (
         "with the name of a shipped one stands in its place, with a warning. A column is used by its name: column = "
         '"our C18"; plates, plates_at, total_porosity and max_pressure may stand in its row.',
         (
-            '[[solute]]  name = "our marker"  molar_mass = "310 g/mol"  source = "our notebook"',
-            '            diffusion = "5.4e-10 m^2/s"  at = "25 degC"',
-            '[[solvent]] name = "our diluent"  molar_mass = "76 g/mol"  density = "1.04 g/mL"  source = "..."',
-            '            viscosity = [["20 degC", "2.4 mPa s"], ["40 degC", "1.4 mPa s"]]',
+            '[[solute]]',
+            'name = "our marker"; molar_mass = "310 g/mol"; source = "our notebook"',
+            'diffusion = "5.4e-10 m^2/s"; at = "25 degC"',
+            '[[solvent]]',
+            'name = "our diluent"; molar_mass = "76 g/mol"; density = "1.04 g/mL"',
+            'viscosity = [["20 degC", "2.4 mPa s"], ["40 degC", "1.4 mPa s"]]',
+            'source = "our notebook"; each key on a line of its own',
         ),
         "diffusion and at of a solute are those in water.",
         ("each row's own",),
