@@ -213,6 +213,8 @@ SOLVENT = {
         ("viscosity", [["20 degC", "1 mPa s"], ["20 degC", "1.1 mPa s"]]),
         ("viscosity", [["20 degC", "1 bar"], ["30 degC", "1.1 mPa s"]]),
         ("viscosity", [[20, 1], [30, 1]]),
+        ("viscosity", [["20 degC", "1 mPa s"], ["40 degC", "1.4 mPa s"]]),
+        ("viscosity", "1 mPa s"),
         ("mixes_with_water", "no"),
         pytest.param("name", int("f" * 5000, 16), id="huge"),
         ("expansion", float("inf")),
@@ -305,6 +307,16 @@ def test_an_own_liquid_under_another_name_keeps_what_is_known_of_it():
     assert mixed.value * 1e3 == pytest.approx(0.88, abs=0.02)
 
 
+def test_another_name_that_is_a_shipped_one_is_told_and_never_hides_a_shipped_liquid():
+    row = {k: SOLVENT[k] for k in ("molar_mass", "density", "viscosity")}
+    known = Catalogs(records(("solvent", row | {"name": "our diluent", "also": ["water", "ACN", "ours"]})))
+    assert [remark.split('"')[1] for remark in known.remarks()] == ["water", "ACN"]
+    phase = read_composition("ours/water 20:80", known).phase
+    assert [component.solvent.name for component in phase.components] == ["our diluent", "water"]
+    assert known.find(SOLVENTS, "ACN").name == "our diluent"
+    assert known.find(SOLVENTS, "acetonitrile").name == "acetonitrile"
+
+
 def test_an_own_water_is_still_water():
     for row in ({"viscosity": [["20 degC", "1.0 mPa s"], ["40 degC", "0.65 mPa s"]]}, {"viscosity": "IAPWS"}):
         for name in ("water", "H2O"):
@@ -321,6 +333,7 @@ def test_measured_points_give_a_viscosity():
     (row,) = records(
         ("solvent", {"name": "x", "molar_mass": "100 g/mol", "density": "900 kg/m^3", "viscosity": points})
     )
+    assert row.span == pytest.approx((293.15, 313.15))
     for temperature, viscosity in points:
         kelvin, expected = float(temperature.split()[0]) + 273.15, float(viscosity.split()[0])
         assert organic_viscosity(kelvin, row.viscosity) * 1e3 == pytest.approx(expected, rel=0.01)

@@ -43,6 +43,7 @@ from xcol.units import (
     described,
     parse,
     plain,
+    quote,
 )
 
 WATER_FORMULA = "IAPWS"
@@ -186,17 +187,21 @@ class Row:
         return (good[0], good[1], good[2]), velocity
 
     def refuse_unknown(self) -> None:
-        """Report the keys that nobody asked for."""
+        """Report the keys that nobody asked for, each with the nearest that is one."""
+        import difflib  # noqa: PLC0415  (only on the way to an error)
+
         for key in self.values:
             if key not in self.asked:
-                self.fault(str(key), f"one of the row's keys: {', '.join(sorted(self.asked))}")
+                near = difflib.get_close_matches(str(key)[:60], self.asked, n=1, cutoff=0.6)
+                expected = f"one of the row's keys: {', '.join(sorted(self.asked))}"
+                self.fault(str(key), expected, near[0] if near else "leave it out")
 
-    def fault(self, key: str, expected: str, suggestion: str = "correct the row, or leave it out") -> None:
+    def fault(self, key: str, expected: str, suggestion: str = "") -> None:
         """Note what is wrong at a key."""
         place = Place(self.place.file, self.lines.get(key) or self.place.line, self.place.part, plain(key)[:60])
-        raw = self.values.get(key)
-        read = described(raw) if key in self.values else "nothing"
-        self.faults.append(Fault(place, read, expected, suggestion))
+        read = _read(self.values[key]) if key in self.values else "nothing"
+        advice = "correct it, or leave the row out" if key in self.values else f"add {plain(key)[:60]} = ..."
+        self.faults.append(Fault(place, read, expected, suggestion or advice))
 
     def _value(self, key: str) -> Any:
         self.asked.add(key)
@@ -204,7 +209,8 @@ class Row:
 
     def _parsed(self, key: str, raw: object, quantity: Quantity, low: float, high: float) -> float:
         if not isinstance(raw, str):
-            self.fault(key, f'{quantity.name} in quotes with its unit, as in "1 {_unit(quantity)}"')
+            bare = raw if _is_number(raw) else 1
+            self.fault(key, f"{quantity.name} in quotes with its unit", f'{key} = "{bare} {_unit(quantity)}"')
             return low
         try:
             value = parse(raw, quantity)
@@ -215,6 +221,16 @@ class Row:
             self.fault(key, f"{quantity.name} from {low:g} to {high:g} {quantity.si}".rstrip())
             return low
         return value
+
+
+def _read(raw: object) -> str:
+    """Say what was read, lists and tables as they stand."""
+    if isinstance(raw, list | dict):
+        try:
+            return quote(str(raw))
+        except ValueError:  # a whole number of very many digits in it
+            return described(raw)
+    return described(raw)
 
 
 def _unit(quantity: Quantity) -> str:
@@ -231,7 +247,7 @@ _USUAL_SPAN = (283.15, 353.15)
 
 
 def _solvent(row: Row) -> dict[str, Any]:
-    span = row.span("span", *_LIQUID, default=_USUAL_SPAN)
+    span = row.span("span", *_LIQUID, default=_reach(row.values.get("viscosity")))
     return {
         "molar_mass": row.measure("molar_mass", *_MASS),
         "density": row.measure("density", DENSITY, 400.0, 3000.0),
@@ -244,6 +260,18 @@ def _solvent(row: Row) -> dict[str, Any]:
     }
 
 
+def _reach(raw: object) -> Span:
+    """Return from where to where a viscosity holds that gives no span: that of its measured points."""
+    points = raw if isinstance(raw, list) else []
+    temperatures = []
+    for point in points:
+        try:
+            temperatures.append(parse(point[0], TEMPERATURE))
+        except (TypeError, IndexError, AttributeError, KeyError, UnitError):  # told where the points are read
+            return _USUAL_SPAN
+    return (min(temperatures), max(temperatures)) if len(temperatures) > 1 else _USUAL_SPAN
+
+
 def _viscosity(row: Row, span: Span) -> Triple | None:
     """Return A, B, C, as they are or from two or more measured points; None for water's own formula."""
     if row.has("viscosity") and row.values["viscosity"] == WATER_FORMULA:
@@ -251,12 +279,17 @@ def _viscosity(row: Row, span: Span) -> Triple | None:
     raw = row.values.get("viscosity")
     if isinstance(raw, list) and raw and all(isinstance(point, list) for point in raw):
         coefficients = _from_points(row, raw)
+    elif not isinstance(raw, list) or len(raw) != 3:
+        row.fault("viscosity", 'A, B and C, or measured points, [["20 degC", "1.2 mPa s"], ["40 degC", "0.9 mPa s"]]')
+        return 0.0, 0.0, 0.0
     else:
         first, second, third = row.numbers("viscosity", 3)
         coefficients = (first, second, third)
     a, b, c = coefficients
     if not row.faults and not all(-7 < a + b * 1e3 / end + c * (1e3 / end) ** 2 < 7 for end in span):
-        row.fault("viscosity", "a viscosity of 0.001 to 1000 mPa s over the span")
+        row.fault("viscosity", "a viscosity of 0.001 to 1000 mPa s all over the span")
+    if not row.faults and b + 2 * c * 1e3 / span[1] <= 0:
+        row.fault("viscosity", "a viscosity that falls when the liquid is heated")
     return coefficients
 
 
@@ -343,7 +376,7 @@ def _column(row: Row) -> dict[str, Any]:
         "bore": row.measure("bore", LENGTH, 5e-6, 0.2),
         "length": row.measure("length", LENGTH, 1e-3, 20.0),
         "particle": row.measure("particle", LENGTH, 0.1e-6, 0.5e-3),
-        "packing": row.text("packing"),
+        "packing": row.text("packing") if row.has("packing") else "",
         "plates": plates,
         "plates_at": plates_at,
         "total_porosity": row.maybe("total_porosity", RATIO, 0.2, 0.99),

@@ -53,6 +53,12 @@ class Catalogs:
             self._names[kind.name] = others | {normal(row.name): row for row in rows}
         return self._names[kind.name].get(normal(word))
 
+    def own(self, kind: Kind[R], word: str) -> R | None:
+        """Return the user's own row of that name, None without one."""
+        asked = normal(word)
+        rows = (record for record in reversed(self._own) if isinstance(record, kind.record))
+        return next((row for row in rows if normal(row.name) == asked), None)
+
     def _made(self, kind: Kind[R]) -> tuple[R, ...]:
         own: dict[str, R] = {}
         for record in self._own:
@@ -83,6 +89,10 @@ class Catalogs:
             for row in _shipped(kind):
                 if normal(record.name) in _names(row):
                     found.append(f'{record.file}: "{record.name}" stands in place of the shipped "{row.name}"')
+            for other in record.also:
+                meant = self.find(kind, other)
+                if any(normal(other) in _names(row) for row in _shipped(kind)) and meant is not None:
+                    found.append(f'{record.file}: "{other}" is a shipped name too: it means "{meant.name}"')
             twins = [row for row in self._own[:number] if type(row) is type(record)]
             if any(normal(row.name) == normal(record.name) for row in twins):
                 found.append(f'{record.file}: a second {kind.table} "{record.name}": the last one stands')
@@ -95,7 +105,7 @@ class Catalogs:
         liquids: list[Tie] = [("mixture", "liquid", row.liquid, row, SOLVENTS) for row in self.rows(MIXTURES)]
         found = []
         for table, key, name, record, known in (*packings, *liquids):
-            if record.file and self.find(known, name) is None:
+            if record.file and name and self.find(known, name) is None:
                 names = ", ".join(row.name for row in self.rows(known))
                 place = Place(record.file, None, f'{table} "{record.name}"', key)
                 near = self.near(known, name) or f"one of them, or a [[{known.table}]] of your own"

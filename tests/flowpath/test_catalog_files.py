@@ -60,6 +60,20 @@ def test_a_row_in_place_of_a_shipped_one_is_warned_of(folder):
     assert any("caffeine" in warning and "mine.toml" in warning for warning in found.warnings)
 
 
+def test_an_own_column_stands_even_where_its_name_reads_as_a_size(folder):
+    (folder / "mine.toml").write_text(MINE.replace("our C18", "2.1 x 100 mm, 2.7 um"))
+    found = parse(text(column='{ column = "2.1 x 100 mm, 2.7 um" }'), str(folder / "path.toml"))
+    assert found.beds[0].plates == 17000
+    assert found.beds[0].void_volume == pytest.approx(0.54 * 3.4636e-7, rel=1e-3)
+
+
+def test_an_own_column_needs_no_packing(folder):
+    (folder / "mine.toml").write_text(MINE.replace('packing  = "core-shell"\n', ""))
+    found = parse(text(), str(folder / "path.toml"))
+    assert found.beds[0].void_volume == pytest.approx(0.65 * 3.4636e-7, rel=1e-3)
+    assert any("porosity" in assumption.text for assumption in found.assumed)
+
+
 def test_shipped_columns_are_found_by_their_name():
     found = parse(text("", '{ column = "2.1 x 50 mm, 2.7 um, core-shell" }', 'molar_mass = "200 g/mol"'), "path.toml")
     assert found.beds[0].length == pytest.approx(0.05)

@@ -197,6 +197,17 @@ def test_the_reynolds_number_is_that_of_a_part_s_own_viscosity(budget_of):
     assert tube["temperature_degC"] == pytest.approx(15)
 
 
+def test_a_concentrated_solution_is_as_doubtful_as_it_is():
+    found = instrument('mobile_phase = "6 M guanidine hydrochloride in water"')
+    assert found.viscosity.uncertainty >= 0.5
+    assert found.warnings
+
+
 def test_a_pair_that_nobody_measured_is_warned_of():
-    for phase, warned in (("water/THF 50:50", True), ("water/ACN 50:50", False), ("hexane/THF 50:50", False)):
+    for phase, warned in (
+        ("water/THF 50:50", True),
+        ("water/acetone 99:1", False),
+        ("water/ACN 50:50", False),
+        ("hexane/THF 50:50", False),
+    ):
         assert bool(instrument(f'mobile_phase = "{phase}"').warnings) == warned

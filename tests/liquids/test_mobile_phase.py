@@ -42,7 +42,9 @@ def test_its_name_holds_the_parts():
         ("hexane/2-propanol 90:10", 25, 0.298**0.9 * 2.049**0.1, MIXED_ORGANICS),
         # the mean of a/4 of the three known pairs above logarithmic mixing
         ("water/THF 50:50", 25, (0.89 * 0.456) ** 0.5 * 2.71828 ** ((1.5086 + 3.1986 + 3.6149) / 12), MIXED_WITH_WATER),
-        ("water/acetonitrile/THF 60:30:10", 25, None, MIXED_WITH_WATER),
+        ("water/acetonitrile/THF 60:30:10", 25, None, MIXED_WITH_WATER * 8 * 0.6 * 0.1),
+        ("water/acetone 99:1", 25, None, 0.05),
+        ("water/THF 15:85", 25, None, MIXED_WITH_WATER),
         # by hand: ln η = Σ φ ln η + 0.75² (E of ACN/water 1:2 + E of MeOH/water 1:2)
         (
             "water/acetonitrile/methanol 50:25:25",

@@ -45,7 +45,8 @@ def read_catalogs(names: Iterable[str], findings: Findings) -> Catalogs:
         records += found
         findings.faults += faults
     catalogs = Catalogs(records)
-    findings.faults += catalogs.loose_ends()
+    if not findings.faults:  # otherwise what is missed may be what was not read
+        findings.faults += catalogs.loose_ends()
     for remark in catalogs.remarks():
         findings.warn(remark)
     return catalogs

@@ -24,9 +24,10 @@ if TYPE_CHECKING:
 LONGEST = 200  # characters
 MOST_LIQUIDS = 6
 DILUTE_PERCENT, DILUTE_MOLAR = 2.0, 0.2  # above, a solution is noticeably more viscous than its liquid
+DISSOLVED_DOUBT = 0.50  # relative, of such a solution's viscosity
 TRACE = 0.02  # share of a part that may be an additive by name alone, as in "acetonitrile/water/TFA 30:70:0.1"
 
-_NAMING = (Sort.SOLVENT, Sort.SOLUTE, Sort.BUFFER, Sort.PH, Sort.UNKNOWN, Sort.WEIGHT)
+_NAMING = (Sort.SOLVENT, Sort.SOLUTE, Sort.BUFFER, Sort.AQUEOUS, Sort.PH, Sort.UNKNOWN, Sort.WEIGHT)
 _EXPECTED = 'liquids in volume parts, as in "acetonitrile/water 60:40"'
 
 
@@ -53,6 +54,7 @@ class _Piece:
     solvent: Solvent | None
     percent: float | None = None
     part: float | None = None
+    leading: bool = False  # its per cent stand before its name
     dissolved: bool = False
     watery: bool = False
     concentrated: bool = False
@@ -69,9 +71,10 @@ def read_composition(text: str, catalogs: Catalogs) -> Composition:
         raise UnitError(shown, _EXPECTED, "the names of the liquids before their parts")
     _refuse_unknown(words, shown, catalogs)
     entered = sum(parts or ())
+    line = _blanked(line, words_of(line, catalogs))
     pieces = _pieces(words, line, shown, catalogs, parts)
     liquids, parts, traces = _liquids(pieces, parts, shown)
-    fractions = _fractions(liquids, parts, shown, rest=any(word.sort is Sort.IN for word in words))
+    fractions = _fractions(liquids, parts, shown, rest=_tells_the_rest(liquids, words, line))
     together: dict[str, Component] = {}
     for piece, fraction in zip(liquids, fractions, strict=True):
         if piece.solvent is not None and fraction > 0:
@@ -79,7 +82,8 @@ def read_composition(text: str, catalogs: Catalogs) -> Composition:
             total = fraction + (before.fraction if before else 0.0)
             together[piece.solvent.name] = Component(piece.solvent, total)
     solutions = [piece for piece in pieces if piece.dissolved]
-    phase = MobilePhase(tuple(together.values()), excesses_of(catalogs))
+    more = DISSOLVED_DOUBT if any(piece.concentrated for piece in solutions) else 0.0
+    phase = MobilePhase(tuple(together.values()), excesses_of(catalogs), more)
     left_out = [_left_out(piece) for piece in (*solutions, *traces)]
     return Composition(
         phase, tuple(dict.fromkeys(left_out)), tuple(_warnings(solutions, (entered, sum(parts or ())), phase))
@@ -115,6 +119,28 @@ def _without_parts(words: list[Word], shown: str) -> tuple[list[Word], list[floa
     return kept, list(found[0].values) if found else None
 
 
+def _blanked(line: str, words: list[Word]) -> str:
+    """Return the line with blanks for what is no part of a name: the parts, "v/v"."""
+    for word in words:
+        if word.sort is Sort.PARTS or (word.sort is Sort.NOISE and "/" in word.text):
+            line = line[: word.start] + " " * len(word.text) + line[word.end :]
+    return line
+
+
+def _tells_the_rest(liquids: list[_Piece], words: list[Word], line: str) -> bool:
+    """Whether the liquid without a share is the rest: "40 % X in Y", "X 40 % in Y", "Y with 40 % X"."""
+    shared = [piece for piece in liquids if piece.percent is not None]
+    if len(shared) != 1 or any(word.sort is Sort.SLASH and not word.inside for word in words):
+        return False
+    (piece,) = shared
+    behind, before = line[piece.end :].split(), line[: piece.start].lower().split()
+    if behind and behind[0].lower() == "in":
+        return True
+    joined = bool(before) and before[-1] in ("with", "containing", "contains", "w/")
+    first_water = piece is liquids[0] and bool(behind) and behind[0].lower() in ("with", "w/")
+    return (joined and piece.leading) or (first_water and all(other.watery for other in liquids[1:]))
+
+
 def _refuse_unknown(words: list[Word], shown: str, catalogs: Catalogs) -> None:
     if any(word.sort is Sort.WEIGHT for word in words):
         raise UnitError(f"{shown}, by weight", _EXPECTED, "the volume parts")
@@ -123,11 +149,13 @@ def _refuse_unknown(words: list[Word], shown: str, catalogs: Catalogs) -> None:
         return
     read = f"{shown}, in which {quote(unknown.text)} is not known here"
     place = words.index(unknown)
+    if unknown.text.lower() in ("a", "b", "gradient", "→", "->", ">"):
+        raise UnitError(read, f"{_EXPECTED}: gradients are not computed yet", "one composition, its liquids by name")
     if unknown.text == "-" and 0 < place < len(words) - 1 and words[place + 1].sort is Sort.PERCENT:
         raise UnitError(f"{shown}, a range", f"{_EXPECTED}: gradients are not computed yet", "one composition")
     near = catalogs.near(SOLVENTS, unknown.text)
     by_hand = "viscosity and each peak's diffusion, or a catalog of your own"
-    suggestion = f'"{near}"' if near else f"leave it out if it is a dilute additive; otherwise {by_hand}"
+    suggestion = f'"{near}"' if near else f"{by_hand}; or leave it out, if it is a dilute additive"
     raise UnitError(read, f"{_EXPECTED}; xcol catalog solvents lists what is known", suggestion)
 
 
@@ -156,8 +184,8 @@ def _is_water(piece: _Piece, pieces: list[_Piece], *, strong: bool, parts: list[
         return False
     if strong or len(pieces) == 1 or piece.percent is not None or piece.part is not None:
         return True
-    if parts is not None:
-        return len(parts) == len(pieces)
+    if parts is not None:  # "acetonitrile, 0.1 % TFA 60:40"
+        return len(parts) == len(pieces) and not any(other.solvent and other.solvent.is_water for other in pieces)
     liquids = [other for other in pieces if other.solvent]  # "90 % ACN in 10 mM ammonium formate"
     return rest and len(liquids) == 1 and liquids[0].percent is not None and piece.start > liquids[0].start
 
@@ -175,18 +203,15 @@ def _cut(words: Sequence[Word], at: tuple[Sort, ...]) -> list[list[Word]]:
 def _piece(words: list[Word], line: str, shown: str) -> _Piece:
     """Read one piece: its liquid, the numbers that belong to it, and whether anything is dissolved in it."""
     start, end = words[0].start, words[-1].end
-    text = line[start:end].rstrip(" ,;(")
+    text = " ".join(line[start:end].split()).rstrip(" ,;(")
     solvents = {word.solvent.name: word.solvent for word in words if word.solvent}
     if len(solvents) > 1:
-        raise UnitError(
-            f"{shown}, with {' and '.join(solvents)} side by side", _EXPECTED, f'"{"/".join(solvents)} 60:40"'
-        )
+        read = f"{shown}, with {' and '.join(solvents)} side by side"
+        raise UnitError(read, _EXPECTED, f'"{"/".join(solvents)}" and their volume parts')
     solvent = next(iter(solvents.values()), None)
-    dissolved = [word for word in words if word.sort in (Sort.SOLUTE, Sort.BUFFER, Sort.PH)]
+    dissolved = [word for word in words if word.sort in (Sort.SOLUTE, Sort.BUFFER, Sort.PH, Sort.AQUEOUS)]
     sorts = {word.sort for word in words}
-    in_water = bool(sorts & {Sort.BUFFER, Sort.PH, Sort.MOLAR})
-    if solvent and any(word.text.lower().startswith("aq") for word in words) and solvent.viscosity is not None:
-        raise UnitError(f"{shown}, a mixture with water", _EXPECTED, f'"{solvent.name}/water 60:40"')
+    in_water = bool(sorts & {Sort.BUFFER, Sort.PH, Sort.MOLAR, Sort.AQUEOUS})
     own: list[float] = []
     others: list[float] = []
     numbers = [word for word in words if word.sort in (Sort.PERCENT, Sort.NUMBER, Sort.MOLAR)]
@@ -195,6 +220,9 @@ def _piece(words: list[Word], line: str, shown: str) -> _Piece:
         if number.sort is Sort.PERCENT:
             of_solute = after is not None and after.sort is Sort.SOLUTE and Sort.BUFFER not in sorts
             (others if of_solute else own).append(number.values[0])
+    if solvent and Sort.AQUEOUS in sorts and not solvent.is_water:
+        share = f"{own[0]:g}:{100 - own[0]:g}" if own and own[0] < 100 else "60:40"
+        raise UnitError(f"{shown}, a mixture with water", _EXPECTED, f'"{solvent.name}/water {share}"')
     parts = [number.values[0] for number in numbers if number.sort is Sort.NUMBER]
     molar = [number.values[0] for number in numbers if number.sort is Sort.MOLAR]
     if len(own) > 1 or len(parts) > 1 or (own and parts) or (molar and not dissolved):
@@ -208,6 +236,7 @@ def _piece(words: list[Word], line: str, shown: str) -> _Piece:
         solvent,
         own[0] if own else None,
         parts[0] if parts else None,
+        words[0].sort is Sort.PERCENT,
         bool(dissolved),
         in_water or bool(dissolved and others),
         any(value > DILUTE_PERCENT for value in others) or any(value > DILUTE_MOLAR for value in molar),
@@ -217,19 +246,20 @@ def _piece(words: list[Word], line: str, shown: str) -> _Piece:
 def _next(words: list[Word], word: Word) -> Word | None:
     """Return the word that a number belongs to: the one behind it, brackets aside."""
     behind = words[words.index(word) + 1 :]
-    return next((other for other in behind if other.sort is not Sort.BRACKET), None)
+    return next((other for other in behind if other.sort not in (Sort.BRACKET, Sort.AQUEOUS)), None)
 
 
 def _merged(pieces: list[_Piece], line: str, shown: str) -> _Piece:
     """Return what stands between two slashes as one piece: a liquid with all that is dissolved in it."""
     named = {piece.solvent.name: piece for piece in pieces if piece.solvent}
     if len(named) > 1:
-        raise UnitError(f"{shown}, with {' and '.join(named)} in one part", _EXPECTED, f'"{"/".join(named)} 60:40"')
+        read = f"{shown}, with {' and '.join(named)} in one part"
+        raise UnitError(read, _EXPECTED, f'"{"/".join(named)}" and their volume parts')
     liquid = next(iter(named.values()), pieces[0])
     shares = [piece.percent for piece in pieces if piece.percent is not None]
     parts = [piece.part for piece in pieces if piece.part is not None]
     start, end = pieces[0].start, pieces[-1].end
-    text = line[start:end].rstrip(" ,;(")
+    text = " ".join(line[start:end].split()).rstrip(" ,;(")
     if len(shares) > 1 or len(parts) > 1:
         raise UnitError(f"{shown}, with more than one number in {quote(text)}", _EXPECTED, "one for each liquid")
     return _Piece(
@@ -239,6 +269,7 @@ def _merged(pieces: list[_Piece], line: str, shown: str) -> _Piece:
         liquid.solvent,
         shares[0] if shares else None,
         parts[0] if parts else None,
+        pieces[0].leading,
         any(piece.dissolved for piece in pieces),
         any(piece.watery for piece in pieces),
         any(piece.concentrated for piece in pieces),

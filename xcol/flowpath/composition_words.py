@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import re
+import unicodedata
 from dataclasses import dataclass, replace
 from enum import Enum, auto
 from typing import TYPE_CHECKING
@@ -22,6 +23,7 @@ class Sort(Enum):
     SOLVENT = auto()
     SOLUTE = auto()  # an additive or a salt
     BUFFER = auto()  # a word for a solution in water
+    AQUEOUS = auto()
     PH = auto()
     PARTS = auto()  # 60:40
     PERCENT = auto()
@@ -55,44 +57,50 @@ class Word:
 
 _NUMBER = r"\d{1,4}(?:[.,]\d{1,4})?"
 _END = r"(?![\w%])"
+_SHARE = rf"{_NUMBER}\s*%?"
+_NO_UNIT = r"(?:(?<=%)|(?!\w|-[A-Za-z]|[.,]\d|\s*(?:%|mM|M\b|mmol|mol)))"
 _RULES: tuple[tuple[Sort, re.Pattern[str]], ...] = (
     (Sort.NOISE, re.compile(r"\(?\[?\b(?:v\s*/\s*v(?:\s*/\s*v)*|by volume|vol/vol)\b\]?\)?", re.I)),
     (Sort.NOISE, re.compile(r"\d{1,2}\s*[x×](?!\w)", re.I)),
+    (Sort.NOISE, re.compile(r"\d{1,4}\s*(?:ppm|mg/L)\b", re.I)),
     (Sort.WEIGHT, re.compile(r"\b(?:w/w|m/m|w/v|wt\.?|by weight|by mass|weight)(?!\w)", re.I)),
-    (Sort.PH, re.compile(rf"\bpH\s*=?\s*(?:of\s*)?{_NUMBER}(?!\w)", re.I)),
+    (Sort.PH, re.compile(rf"\bpH\s*[=\-]?\s*(?:of\s*)?{_NUMBER}(?!\w)", re.I)),
     (Sort.MOLAR, re.compile(rf"({_NUMBER})\s*(mM|mmol\s*/\s*[lL]|mmol|mol\s*/\s*[lL]|M|N|[uµ]M)(?!\w)")),
-    (Sort.PARTS, re.compile(rf"{_NUMBER}(?:\s*[:/+]\s*{_NUMBER})+(?!\w|[.,]\d|\s*(?:%|mM|M\b|mmol|mol))")),
+    (Sort.PARTS, re.compile(rf"(?:{_SHARE}(?:\s*[:/]\s*{_SHARE})+|{_NUMBER}(?:\s*\+\s*{_NUMBER})+){_NO_UNIT}")),
     (Sort.PERCENT, re.compile(rf"({_NUMBER})\s*(?:%|per ?cent\b|vol\.?\s*-?%)", re.I)),
     (Sort.NUMBER, re.compile(rf"({_NUMBER}){_END}")),
-    (Sort.IN, re.compile(r"\b(?:in|with|containing|dissolved in|contains)\b", re.I)),
+    (Sort.IN, re.compile(r"\b(?:in|with|containing|dissolved in|contains)\b|\bw/", re.I)),
     (Sort.COMMA, re.compile(r"[,;+&]|\band\b|\bplus\b|(?<=\s)[-–—](?=\s)", re.I)),
     (Sort.SLASH, re.compile(r"[/|:]")),
     (Sort.BRACKET, re.compile(r"[()\[\]{}]")),
-    (Sort.NOISE, re.compile(r"=|\b(?:HPLC|LC-?MS|UHPLC|MS|grade|gradient grade|ultrapure|pure|deioni[sz]ed|"
-                            r"distilled|purified|milli-?q|each|both|adjusted|to|with NaOH|modified)\b", re.I)),
+    (Sort.NOISE, re.compile(r"=|\b(?:HPLC|LC-?MS|UHPLC|MS|grade|gradient grade|ultrapure|pure|DI|deioni[sz]ed|"
+                            r"distilled|purified|[a-z]+-?Q(?=\s+water)|each|both|adjusted|to|of|with NaOH|modified|"
+                            r"degassed|filtered|anhydrous|(?:un)?stabili[sz]ed|eluent|isocratic)\b", re.I)),
 )  # fmt: skip
-_BUFFER = re.compile(r"\b(?:buffer(?:ed)?|pbs|saline|aqueous|aq\.?|solution|tris|hepes|mes|mops|bis-tris)(?!\w)", re.I)
+_BUFFER = re.compile(r"\b(?:buffer(?:ed)?|pbs|saline|tris|hepes|mes|mops|bis-tris)(?!\w)", re.I)
+_AQUEOUS = re.compile(r"\b(?:aqueous|aq\.?|solution)(?!\w)", re.I)
 _SOLUTE = re.compile(
     r"\b(?:"
-    r"(?:trifluoro|difluoro|heptafluoro)?(?:acetic|butyric) acid|tfa|dfa|hfba|formic acid|fa|hcooh|hoac|acoh|ch3cooh|"
-    r"(?:ortho)?phosphoric acid|h3po4|sul(?:f|ph)uric acid|h2so4|hydrochloric acid|hcl|perchloric acid|hclo4|"
+    r"(?:pentane|hexane|heptane|octane)[\s\-]?sulfon\w+(?: acid)?|"
+    r"(?:trifluoro|difluoro|heptafluoro)?\s?(?:acetic|butyric) acid|tfa|dfa|hfba|formic acid|fa|hcooh|hoac|acoh|"
+    r"ch3cooh|"
+    r"(?:ortho)?[\s\-]?phosphoric acid|h3po4|sul(?:f|ph)uric acid|h2so4|hydrochloric acid|hcl|perchloric acid|hclo4|"
     r"methanesulfonic acid|citric acid|boric acid|(?:tri|di)ethylamine|tea|dea|ammonia|nh3|nh4oh|naoh|koh|"
     r"(?:di|mono|tri)?-?(?:sodium|potassium|ammonium|lithium|triethylammonium|tetrabutylammonium)|"
     r"(?:di|mono)?-?(?:hydrogen)?-?(?:phosphate|formate|acetate|citrate|borate|tartrate|(?:bi|hydrogen)?carbonate|"
     r"chloride|sul(?:f|ph)ate|hydrogensulfate|perchlorate|fluoride|bromide|iodide|nitrate|hydroxide|trifluoroacetate)|"
-    r"dihydrogen|hydrogen|dibasic|monobasic|edta|sds|dodecyl|nacl|kcl|libr|na2so4|naclo4|"
+    r"dihydrogen|hydrogen|dibasic|monobasic|edta|sds|dodecyl|nacl|kcl|libr|na2so4|na2co3|naoac|msa|teaa|tbahs|naclo4|"
     r"nh4(?:oac|ac|hco2|fa|hco3|cl)|kh2po4|k2hpo4|nah2po4|na2hpo4|nahco3|guanidine|hydrochloride|urea|arginine|"
     r"additives?|modifier|salt"
     r")(?!\w)",
     re.I,
 )
 _ANYTHING = re.compile(r"\w[\w.\-]*(?:\s+(?:acetate|acid|alcohol|ether|chloride|sulfoxide|carbonate))*|.")
-_SUBSCRIPTS = str.maketrans("₀₁₂₃₄₅₆₇₈₉", "0123456789")
 
 
 def line_of(text: str) -> str:
-    """Return a text as its words are looked for: on one line, subscripts as plain digits."""
-    return plain(text).translate(_SUBSCRIPTS)
+    """Return a text as its words are looked for: on one line, with plain digits and signs."""
+    return plain(unicodedata.normalize("NFKC", text.replace("\u2236", ":")))
 
 
 def words_of(line: str, catalogs: Catalogs) -> list[Word]:
@@ -115,21 +123,23 @@ def words_of(line: str, catalogs: Catalogs) -> list[Word]:
 def _joined(words: list[Word], index: int) -> Word:
     """Tell what a hyphen joins: liquids, like a slash; the words of a salt, "Tris-HCl"; anything else is not known."""
     word = words[index]
-    if word.text == "-" and 0 < index < len(words) - 1:
+    if word.text in "-\u2010\u2011\u2013\u2014" and 0 < index < len(words) - 1:
         sides = {words[index - 1].sort, words[index + 1].sort}
-        if sides <= {Sort.SOLUTE, Sort.BUFFER}:
+        if sides <= {Sort.SOLUTE, Sort.BUFFER, Sort.NOISE}:
             return replace(word, sort=Sort.NOISE)
-        if Sort.SOLVENT in sides and sides <= {Sort.SOLVENT, Sort.SOLUTE, Sort.BUFFER, Sort.PH, Sort.MOLAR}:
+        salty = {Sort.SOLVENT, Sort.SOLUTE, Sort.BUFFER, Sort.PH, Sort.MOLAR, Sort.BRACKET}
+        if Sort.SOLVENT in sides and sides <= salty:
             return replace(word, sort=Sort.SLASH)
     return word
 
 
 def _names(catalogs: Catalogs) -> list[tuple[re.Pattern[str], Solvent]]:
     """Return a pattern for each name of a liquid, the longest first; spaces and hyphens are alike."""
-    listed = [(name, row) for row in catalogs.rows(SOLVENTS) for name in (row.name, *row.also)]
-    listed.sort(key=lambda pair: -len(pair[0]))
+    names = {normal(name) for row in catalogs.rows(SOLVENTS) for name in (row.name, *row.also)}
+    listed = [(name, row) for name in names if (row := catalogs.find(SOLVENTS, name))]
+    listed.sort(key=lambda pair: (-len(pair[0]), pair[0]))
     return [
-        (re.compile(r"[\s\-]*".join(map(re.escape, normal(name).split())) + r"(?!\w)", re.I), row)
+        (re.compile(r"[\s\-]*".join(map(re.escape, name.split())) + r"(?!\w|[\s\-]*sulfon)", re.I), row)
         for name, row in listed
     ]
 
@@ -138,7 +148,7 @@ def _word_at(line: str, at: int, names: list[tuple[re.Pattern[str], Solvent]]) -
     for pattern, solvent in names:
         if match := pattern.match(line, at):
             return Word(Sort.SOLVENT, match[0], at, solvent=solvent)
-    for sort, pattern in ((Sort.BUFFER, _BUFFER), (Sort.SOLUTE, _SOLUTE), *_RULES):
+    for sort, pattern in ((Sort.BUFFER, _BUFFER), (Sort.AQUEOUS, _AQUEOUS), (Sort.SOLUTE, _SOLUTE), *_RULES):
         if match := pattern.match(line, at):
             return Word(sort, match[0], at, _values(sort, match))
     match = _ANYTHING.match(line, at)
@@ -147,7 +157,7 @@ def _word_at(line: str, at: int, names: list[tuple[re.Pattern[str], Solvent]]) -
 
 def _values(sort: Sort, match: re.Match[str]) -> tuple[float, ...]:
     if sort is Sort.PARTS:
-        return tuple(_float(number) for number in re.split(r"[:/+]", match[0]))
+        return tuple(_float(number) for number in re.findall(_NUMBER, match[0]))
     if sort is Sort.MOLAR:
         factor = {"m": 1e-3, "u": 1e-6, "µ": 1e-6}.get(match[2][0] if match[2] not in ("mol", "M") else "", 1.0)
         if match[2].replace(" ", "").lower() == "mol/l":

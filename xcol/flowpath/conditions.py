@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING
 from xcol.flowpath.composition import Composition, read_composition
 from xcol.flowpath.file_keys import VISCOSITIES
 from xcol.liquids.estimate import Estimate, as_entered
-from xcol.liquids.mobile_phase import FAR, MIXED_WITH_WATER, MobilePhase
+from xcol.liquids.mobile_phase import FAR, MobilePhase
 from xcol.liquids.viscosity import ROOM
 from xcol.units import TEMPERATURE, VISCOSITY, UnitError, write
 
@@ -186,8 +186,10 @@ def _say_what_was_read(composition: Composition, entered: float | None, top: Dra
         top.findings.assume("viscosity by a mixing rule", f"viscosity of {phase.name} by {rule}")
     if entered is None and (unmeasured := phase.unmeasured()):
         names = " and ".join(solvent.name for solvent in unmeasured)
-        doubt = f"±{100 * MIXED_WITH_WATER:.0f} %"
-        top.findings.warn(f"no viscosity of {names} with water is known here: {doubt}; enter viscosity if you know it")
+        doubt = phase.mixing_doubt()
+        if doubt > 0.1:
+            shown = f"±{100 * doubt:.0f} %"
+            top.findings.warn(f"no viscosity of {names} with water is known here: {shown}; enter it if you know it")
 
 
 def _compare(computed: Estimate, entered: float, top: Draft) -> None:

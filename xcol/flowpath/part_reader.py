@@ -3,8 +3,10 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Iterable
+from collections.abc import Callable, Iterable
+from typing import Any
 
+from xcol.catalog_records import Record
 from xcol.catalogs import Catalogs
 from xcol.flowpath import slips
 from xcol.flowpath.file_keys import FILE_KEYS, OTHER_WORDS
@@ -154,21 +156,15 @@ def _read_size(raw: object, kind: Kind, draft: Draft) -> None:
         draft.fault(kind.name, f"a size or a name, as in {kind.example}", kind.example, described(raw))
         return
     text = as_typed(raw)
-    error = None
-    if kind.size is not None:
-        try:
-            sizes = kind.size(text)
-        except UnitError as problem:
-            error = problem
-            row = draft.catalogs.find(kind.catalog, text) if kind.catalog and not started else None
-            if row is not None and kind.of_row:
-                draft.row = row
-                draft.values |= kind.of_row(row, draft)
-                return
-        else:
-            _take_sizes(sizes, started, kind, draft)
-            return
+    if not started and _is_row(text, kind, draft, draft.catalogs.own):  # even where it reads as a size
+        return
     begins_with_number = text.lstrip(" +-−≈~<>.,")[:1].isdigit()
+    sizes, error = _sizes(text, kind)
+    if sizes is not None:
+        _take_sizes(sizes, started, kind, draft)
+        return
+    if not started and _is_row(text, kind, draft, draft.catalogs.find):
+        return
     if isinstance(raw, str) and (given or not begins_with_number or kind.size is None):
         if draft.name and plain(text) != draft.name and "name" in draft.written:
             draft.warn(f"{quote(text)} is a second name: left out")
@@ -187,6 +183,24 @@ def _read_size(raw: object, kind: Kind, draft: Draft) -> None:
         if not kind.ways:  # a size is not needed, so this may be a name
             suggestion += f', or name = "{text[:40]}" if it is the name'
         draft.findings.fault(draft.place(kind.name), error.read, error.expected, suggestion)
+
+
+def _sizes(text: str, kind: Kind) -> tuple[dict[str, float] | None, UnitError | None]:
+    """Return the sizes that a text reads as, or why it does not (no reason, where the kind has no size)."""
+    try:
+        return (kind.size(text) if kind.size else None), None
+    except UnitError as error:
+        return None, error
+
+
+def _is_row(text: str, kind: Kind, draft: Draft, look_up: Callable[[Any, str], Record | None]) -> bool:
+    """Take a part from the catalog's row of that name; return whether there is one."""
+    row = look_up(kind.catalog, text) if kind.catalog and kind.of_row else None
+    if row is None or kind.of_row is None:
+        return False
+    draft.row = row
+    draft.values |= kind.of_row(row, draft)
+    return True
 
 
 def _take_sizes(sizes: dict[str, float], started: set[str], kind: Kind, draft: Draft) -> None:

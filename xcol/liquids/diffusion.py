@@ -139,7 +139,7 @@ def scaled(
     >>> scaled(Estimate(1e-9, 0.05, "x"), 300, Estimate(5e-4, 0.0, ""), at=300, viscosity_there=there, rule=0.0)
     Estimate(value=2e-09, uncertainty=0.05, origin='x', entered=False)
     """
-    if not rule and at == temperature and viscosity.value == viscosity_there.value:
+    if not rule and at == temperature and viscosity == viscosity_there:
         return known
     value = known.value * (temperature / viscosity.value) / (at / viscosity_there.value)
     doubt = together(known.uncertainty, rule, viscosity.uncertainty, viscosity_there.uncertainty)

@@ -34,10 +34,14 @@ class Component:
 
 @dataclass(frozen=True)
 class MobilePhase:
-    """Liquids in volume parts; ``excesses`` by the name of the liquid that is mixed with water."""
+    """Liquids in volume parts; ``excesses`` by the name of the liquid that is mixed with water.
+
+    ``dissolved`` is the relative doubt that what is dissolved in it adds to the viscosity.
+    """
 
     components: tuple[Component, ...]
     excesses: Mapping[str, Mixture] = field(default_factory=dict)
+    dissolved: float = 0.0
 
     @property
     def name(self) -> str:
@@ -128,18 +132,27 @@ class MobilePhase:
                     found.append((organic, water, self.excesses.get(organic.solvent.name)))
         return found
 
+    def mixing_doubt(self) -> float:
+        """Relative doubt of water with liquids of which nothing is known with it: less where there is little of one."""
+        doubt = 0.0
+        for organic, water, mixture in self._pairs():
+            if mixture is None:
+                amount = 8 * organic.fraction * water.fraction  # 1 from 15 to 85 %
+                doubt = max(doubt, MIXED_WITH_WATER * min(amount, 1.0))
+        return doubt
+
     def _uncertainty(self, temperature: float) -> float:
         pure = max(_of_liquid(component.solvent, temperature) for component in self.components)
         if len(self.components) == 1:
-            return pure
+            return pure + self.dissolved
         beyond = BEYOND_PER_KELVIN * self.outside(temperature)[0]
         pairs = self._pairs()
         known = [_of_mixture(mixture, temperature) for _, _, mixture in pairs if mixture is not None]
         if len(known) < len(pairs):
-            known.append(MIXED_WITH_WATER)
+            known.append(max(self.mixing_doubt(), pure))
         elif not pairs or len(self.components) > 2:
             known.append(MIXED_ORGANICS)
-        return max(known) + beyond
+        return max(known) + beyond + self.dissolved
 
 
 def _viscosity(solvent: Solvent, temperature: Real) -> Real:

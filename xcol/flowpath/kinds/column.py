@@ -99,7 +99,7 @@ def _curve(draft: Draft, packing: Packing, total_over_interstitial: float) -> Cu
         draft.fault(
             "plates",
             f"the plate number: no reduced plate height curve is known for {packing.name} packings",
-            f"plates = 11000, from the certificate or a measurement, or {_KNOX_EXAMPLE}",
+            "plates = 11000, from the certificate or a measurement, or a curve of your own, knox",
         )
         return None
     curve = PlateHeightCurve(*usual)
@@ -142,7 +142,7 @@ def _of_row(row: ColumnFormat, draft: Draft) -> dict[str, Value]:
         "bore": row.bore,
         "length": row.length,
         "particle": row.particle,
-        "packing": row.packing,
+        "packing": row.packing or None,
         "total_porosity": None if "void_volume" in draft.written else row.total_porosity,
         "plates": None if "knox" in draft.written else row.plates,
         "plates_at": None if {"knox", "plates"} & set(draft.written) else row.plates_at,
