@@ -66,12 +66,13 @@ def read_composition(text: str, catalogs: Catalogs) -> Composition:
     if len(text) > LONGEST:
         raise UnitError(shown, f"{_EXPECTED}, {LONGEST} characters at most", "a shorter text")
     line = line_of(text)
-    words, parts = _without_parts(words_of(line, catalogs), shown)
+    every = words_of(line, catalogs)
+    words, parts = _without_parts(every, shown)
     if not any(word.sort in _NAMING for word in words):
         raise UnitError(shown, _EXPECTED, "the names of the liquids before their parts")
     _refuse_unknown(words, shown, catalogs)
     entered = sum(parts or ())
-    line = _blanked(line, words_of(line, catalogs))
+    line = _blanked(line, every)
     pieces = _pieces(words, line, shown, catalogs, parts)
     liquids, parts, traces = _liquids(pieces, parts, shown)
     fractions = _fractions(liquids, parts, shown, rest=_tells_the_rest(liquids, words, line))
