@@ -197,6 +197,16 @@ def test_the_reynolds_number_is_that_of_a_part_s_own_viscosity(budget_of):
     assert tube["temperature_degC"] == pytest.approx(15)
 
 
+def test_temperatures_that_one_figure_cannot_stand_for_are_warned_of():
+    two = text('mobile_phase = "water"', 'temperature = "30 degC"').replace(
+        "  { detector", '  { column = "2.1 x 50 mm, 3 um", plates = 6000, temperature = "60 degC" },\n  { detector'
+    )
+    assert any("different temperatures" in warning for warning in parse(two, "f").warnings)
+    head = ('viscosity = "0.9 mPa s"', 'diffusion = "1e-9 m^2/s"', 'temperature = "40 degC"')
+    assert instrument(*head, 'ambient = "22 degC"').warnings
+    assert not instrument(*head).warnings
+
+
 def test_a_concentrated_solution_is_as_doubtful_as_it_is():
     found = instrument('mobile_phase = "6 M guanidine hydrochloride in water"')
     assert found.viscosity.uncertainty >= 0.5

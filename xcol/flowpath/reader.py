@@ -66,6 +66,7 @@ def parse(text: str, file: str, catalogs: Iterable[str] = ()) -> Instrument:
     check_positions(drafts, "column" in kinds or not kinds)
     check_diffusion(drafts, data.get("peaks") not in (None, []), top)
     conditions = read_conditions(top, "column" in kinds).with_columns(parts)
+    slips.of_temperatures(conditions, parts, findings)
     estimates = _estimates(conditions, parts, drafts, top)
     flow = top.number("flow")
     if flow is not None and findings.faults:  # what can be told all the same

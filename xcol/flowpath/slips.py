@@ -14,11 +14,12 @@ from xcol.catalog_kinds import MATERIALS, SOLVENTS, TUBING
 from xcol.flowpath.elements import Bore, Cell, Stream
 from xcol.flowpath.hydraulics import LAMINAR_LIMIT, reynolds_number
 from xcol.flowpath.model import beds_of
-from xcol.units import FLOW, LENGTH, PRESSURE, VISCOSITY, VOLUME, significant, write
+from xcol.units import FLOW, LENGTH, PRESSURE, TEMPERATURE, VISCOSITY, VOLUME, significant, write
 
 if TYPE_CHECKING:
     from xcol.catalogs import Catalogs
     from xcol.errors import Place
+    from xcol.flowpath.conditions import Conditions
     from xcol.flowpath.findings import Draft, Findings
     from xcol.flowpath.model import Instrument, Part, Peak
     from xcol.liquids.estimate import Estimate
@@ -53,6 +54,19 @@ def of_path(instrument: Instrument, flow_place: Place, findings: Findings) -> No
         findings.warn("no viscosity entered: pressures and Reynolds numbers are not computed")
     else:
         _viscosity(instrument, instrument.viscosity, findings)
+
+
+def of_temperatures(conditions: Conditions, parts: Iterable[Part], findings: Findings) -> None:
+    """Warn of temperatures that one figure of the report cannot stand for."""
+    columns = {part.temperature or conditions.temperature for part in parts if part.kind == "column"}
+    if len(columns) > 1 and None not in columns:
+        shown = write(conditions.reference, "degC", TEMPERATURE, 4)
+        findings.warn(f"the columns have different temperatures: viscosity and D are stated for {shown}")
+    if conditions.entered is not None and conditions.ambient not in (None, conditions.temperature):
+        findings.warn(
+            "the viscosity that was entered is taken at ambient as well: leave it out beside mobile_phase, and it is "
+            "computed for each temperature"
+        )
 
 
 def of_materials(parts: Iterable[Part], phase: MobilePhase, catalogs: Catalogs, findings: Findings) -> None:

@@ -87,8 +87,9 @@ def check_record(answer: Budget) -> dict[str, Any]:
                 "diffusion_m2_s": peak.diffusion,
                 "diffusion_from": peak.estimate.stated,
                 "plates": peak.plates,
+                "plates_column": columns.plates_column,
             }
-            for peak in instrument.peaks
+            for peak, columns in zip(instrument.peaks, answer.detectors[-1].peaks, strict=True)
         ],
         "assumed": [assumption.text for assumption in instrument.assumed],
         "warnings": list(answer.warnings),
@@ -145,9 +146,9 @@ def _grids(answer: Budget) -> list[tuple[str, Grid]]:
             show(peak.retention, TIME, 4) if peak.retention is not None else "-",
             show(peak.diffusion, DIFFUSION),
             peak.estimate.doubt or "as entered",
-            significant(peak.plates, 6) if peak.plates is not None else "-",
+            significant(columns.plates_column, 3) if columns.plates_column is not None else "-",
         )
-        for peak in instrument.peaks
+        for peak, columns in zip(instrument.peaks, answer.detectors[-1].peaks, strict=True)
     )
     return [
         ("Conditions", Grid(("", "value"), flow, (False, True))),
@@ -162,7 +163,7 @@ def _grids(answer: Budget) -> list[tuple[str, Grid]]:
         (
             "Peaks",
             Grid(
-                ("", "k", "recorded at", "diffusion", "", "plates"),
+                ("", "k", "recorded at", "diffusion", "", "column's N"),
                 peaks,
                 (False, True, True, True, True, True),
             ),
