@@ -2,7 +2,7 @@
 
 import pytest
 
-from xcol.answers.budget import budget
+from xcol.answers.budget import budget, recorded
 from xcol.answers.doubt import over_diffusion
 from xcol.flowpath.reader import parse
 
@@ -52,6 +52,14 @@ peaks = [ { solute = "caffeine" } ]"""
     ((doubt,),) = over_diffusion(answer)
     assert doubt.plates is None
     assert doubt.variance[0] < answer.detectors[0].peaks[0].variance_total < doubt.variance[1]
+
+
+def test_the_totals_are_those_of_the_budget():
+    answer = answer_of('{ k = 2, molar_mass = "300 g/mol" }, { k = 0, diffusion = "1e-9 m^2/s" }', "")
+    for found in answer.detectors:
+        totals = recorded(answer.instrument, found.detector)
+        assert [variance for variance, _ in totals] == pytest.approx([peak.variance_total for peak in found.peaks])
+        assert [plates for _, plates in totals] == pytest.approx([peak.plates_observed for peak in found.peaks])
 
 
 def test_where_all_was_entered_there_is_none():

@@ -160,13 +160,28 @@ def budget(instrument: Instrument) -> Budget:
     return Budget(instrument, profile, detectors, tuple(warnings), _cautions(instrument))
 
 
+def recorded(instrument: Instrument, detector: Part) -> list[tuple[float, float | None]]:
+    """Return of every peak at a detector the total variance [s²] and the plates recorded (None: no column).
+
+    What ``budget`` returns of them without the rows, and so without a computation for each link left out.
+    """
+    chain = links(instrument, detector)
+    extra = _Spread(instrument.flow, chain, instrument.peaks).total()
+    found: list[tuple[float, float | None]] = []
+    for peak, outside in zip(instrument.peaks, extra, strict=True):
+        time, bands = _own_bands(instrument, chain, peak)
+        total = sum(band.variance for band in bands) + float(outside)
+        found.append((total, time**2 / total if bands else None))
+    return found
+
+
 def _at_detector(instrument: Instrument, detector: Part) -> DetectorBudget:
     chain = links(instrument, detector)
     delay = transit(instrument, detector)
     spread = _Spread(instrument.flow, chain, instrument.peaks)
     rows = spread.rows()
     extra = sum((row.variance for row in rows.values()), spread.zero)
-    without = {index: spread.total_without(index) for index in rows}
+    without = {index: spread.total(index) for index in rows}
 
     peaks = []
     for n, peak in enumerate(instrument.peaks):
@@ -290,8 +305,8 @@ class _Spread:
                     rows[index] = _LinkSpread(link, variance)
         return dict(sorted(rows.items()))
 
-    def total_without(self, removed: int) -> Values:
-        """Return the variance [s²] of the chain without one link, a run of tubes closing up."""
+    def total(self, removed: int | None = None) -> Values:
+        """Return the variance [s²] of the chain, or of it without one link, a run of tubes closing up."""
         kept = [index for index in range(len(self._chain)) if index != removed]
         return sum((share for group in self._groups(kept) for share in self._shares(group)), self.zero)
 

@@ -5,10 +5,10 @@ from __future__ import annotations
 from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
 
-from xcol.answers.budget import budget
+from xcol.answers.budget import recorded
 
 if TYPE_CHECKING:
-    from xcol.answers.budget import Budget, PeakBudget
+    from xcol.answers.budget import Budget
     from xcol.flowpath.model import Peak
 
 
@@ -38,12 +38,14 @@ def over_diffusion(answer: Budget) -> list[list[Doubt | None]]:
     factors = {n: 1 + instrument.peaks[n].estimate.uncertainty for n in unsure}
     slow = tuple(_at(instrument.peaks[n], 1 / factors[n]) for n in unsure)
     fast = tuple(_at(instrument.peaks[n], factors[n]) for n in unsure)
-    ends = budget(replace(instrument, peaks=(*slow, *fast)))
+    moved = replace(instrument, peaks=(*slow, *fast))
     found = []
-    for here, moved in zip(answer.detectors, ends.detectors, strict=True):
+    for here in answer.detectors:
+        ends = recorded(moved, here.detector)
         doubts: list[Doubt | None] = [None] * len(here.peaks)
         for place, n in enumerate(unsure):
-            doubts[n] = _doubt((moved.peaks[place], here.peaks[n], moved.peaks[place + len(unsure)]))
+            at_d = (here.peaks[n].variance_total, here.peaks[n].plates_observed)
+            doubts[n] = _doubt((ends[place], at_d, ends[place + len(unsure)]))
         found.append(doubts)
     return found
 
@@ -53,7 +55,7 @@ def _at(peak: Peak, factor: float) -> Peak:
     return replace(peak, estimate=replace(peak.estimate, value=peak.estimate.value * factor))
 
 
-def _doubt(three: tuple[PeakBudget, ...]) -> Doubt:
-    variances = [peak.variance_total for peak in three]
-    plates = [peak.plates_observed for peak in three if peak.plates_observed is not None]
+def _doubt(three: tuple[tuple[float, float | None], ...]) -> Doubt:
+    variances = [variance for variance, _ in three]
+    plates = [number for _, number in three if number is not None]
     return Doubt((min(variances), max(variances)), (min(plates), max(plates)) if plates else None)
