@@ -323,9 +323,17 @@ def test_an_own_water_is_still_water():
             own = records(("solvent", {"name": name, "molar_mass": "18 g/mol", "density": "1 g/mL"} | row))
             known = Catalogs(own)
             assert water_of(known).is_water
+            assert read_composition("hexane/water 90:10", known).warnings  # they do not mix
             mixed = read_composition("ACN/water 40:60", known).phase.viscosity(298.15)
             assert mixed.value * 1e3 == pytest.approx(0.885, abs=0.02)
             assert mixed.uncertainty == pytest.approx(0.03)
+
+
+def test_another_liquid_may_have_the_formula_of_water_and_has_its_own_density():
+    row = {"name": "heavy water", "molar_mass": "20.03 g/mol", "density": "1104 kg/m^3", "viscosity": "IAPWS"}
+    phase = read_composition("heavy water", Catalogs(records(("solvent", row)))).phase
+    assert phase.density(298.15) == pytest.approx(1104)
+    assert not phase.is_water
 
 
 def test_measured_points_give_a_viscosity():

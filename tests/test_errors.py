@@ -1,6 +1,6 @@
 """Errors with their place."""
 
-from xcol.errors import Fault, InputError, Place
+from xcol.errors import Fault, InputError, Place, nearest
 
 
 def test_a_place_shows_what_is_known_of_it():
@@ -15,3 +15,8 @@ def test_an_error_shows_all_of_its_faults_in_order():
     text = str(InputError(faults))
     assert text.index("read1") < text.index("read2")
     assert text.count("expected:") == text.count("try:") == 2
+
+
+def test_the_nearest_word():
+    assert nearest("tempreature", ("temperature", "title")) == "temperature"
+    assert nearest("xyz", ("temperature", "title")) == ""

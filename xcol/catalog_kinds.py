@@ -24,7 +24,7 @@ from xcol.catalog_records import (
     Triple,
     Tubing,
 )
-from xcol.errors import Fault, Place
+from xcol.errors import Fault, Place, nearest
 from xcol.units import (
     DENSITY,
     DIFFUSION,
@@ -188,13 +188,10 @@ class Row:
 
     def refuse_unknown(self) -> None:
         """Report the keys that nobody asked for, each with the nearest that is one."""
-        import difflib  # noqa: PLC0415  (only on the way to an error)
-
         for key in self.values:
             if key not in self.asked:
-                near = difflib.get_close_matches(str(key)[:60], self.asked, n=1, cutoff=0.6)
                 expected = f"one of the row's keys: {', '.join(sorted(self.asked))}"
-                self.fault(str(key), expected, near[0] if near else "leave it out")
+                self.fault(str(key), expected, nearest(str(key)[:60], self.asked) or "leave it out")
 
     def fault(self, key: str, expected: str, suggestion: str = "") -> None:
         """Note what is wrong at a key."""

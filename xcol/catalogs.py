@@ -16,7 +16,7 @@ from typing import Any, TypeVar
 
 from xcol.catalog_kinds import COLUMNS, KINDS, MIXTURES, PACKINGS, SOLVENTS, Kind, Row
 from xcol.catalog_records import Packing, Record
-from xcol.errors import Fault, InputError, Place
+from xcol.errors import Fault, InputError, Place, nearest
 from xcol.units import described, plain, quote
 
 # Shipped inside the package in a wheel; at the top of the repository in an editable install.
@@ -75,17 +75,15 @@ class Catalogs:
 
     def near(self, kind: Kind[Any], word: str) -> str:
         """Return the name of a row, or other name, that is a likely misspelling; "" where none is."""
-        import difflib  # noqa: PLC0415  (only on the way to an error)
-
         names = {normal(name): name for row in self.rows(kind) for name in (row.name, *row.also)}
-        found = difflib.get_close_matches(normal(word)[:60], names, n=1, cutoff=0.8)
-        return names[found[0]] if found else ""
+        near = nearest(normal(word)[:60], names, alike=0.8)
+        return names[near] if near else ""
 
     def remarks(self) -> list[str]:
         """Say which of the user's own rows stand in place of others."""
         found = []
         for number, record in enumerate(self._own):
-            kind = next(kind for kind in KINDS if kind.record is type(record))
+            kind = _kind_of(record)
             for row in _shipped(kind):
                 if normal(record.name) in _names(row):
                     found.append(f'{record.file}: "{record.name}" stands in place of the shipped "{row.name}"')
@@ -124,6 +122,10 @@ def normal(word: str) -> str:
     ('n hexane', 'core shell')
     """
     return " ".join(re.sub(r"[-\u2010\u2011_]", " ", word.lower()).split())
+
+
+def _kind_of(record: Record) -> Kind[Any]:
+    return next(kind for kind in KINDS if kind.record is type(record))
 
 
 def _names(row: Record) -> set[str]:
@@ -185,7 +187,7 @@ def shipped_text(kind: Kind[Any]) -> str:
 
 def row_text(record: Record) -> str:
     """Return a shipped row as it stands in its file, "" for a user's own."""
-    kind = next(kind for kind in KINDS if kind.record is type(record))
+    kind = _kind_of(record)
     if record.file:
         return ""
     blocks = re.split(rf"^(?=\[\[{kind.table}\]\])", shipped_text(kind), flags=re.M)[1:]

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterable
 from dataclasses import dataclass
 
 
@@ -54,3 +55,11 @@ class InputError(Exception):
 def refusal(place: Place, read: str, expected: str, suggestion: str) -> InputError:
     """Return the error of one fault."""
     return InputError((Fault(place, read, expected, suggestion),))
+
+
+def nearest(word: str, known: Iterable[str], alike: float = 0.6) -> str:
+    """Return the known word that is closest to this one, or '' where none is ``alike`` enough (0 to 1)."""
+    import difflib  # noqa: PLC0415  (only on the way to an error)
+
+    found = difflib.get_close_matches(word, list(known), n=1, cutoff=alike)
+    return found[0] if found else ""

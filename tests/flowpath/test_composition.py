@@ -79,6 +79,8 @@ DISSOLVED = {
     "50 mM KH2PO4 pH 2.5-acetonitrile (80:20)": ("water", 80, "acetonitrile", 20),
     "10 mmol/L ammonium acetate/ACN 50:50": ("water", 50, "acetonitrile", 50),
     "0.1 M Tris-HCl pH 8": ("water", 100),
+    "50 µM EDTA in water": ("water", 100),  # both micro signs
+    "50 μM EDTA in water": ("water", 100),
     "0.1% aqueous TFA / ACN 60:40": ("water", 60, "acetonitrile", 40),
     "5 mM heptane sulfonate/ACN 70:30": ("water", 70, "acetonitrile", 30),
     "phosphate buffer (pH 3.0 with H3PO4)-acetonitrile 80:20": ("water", 80, "acetonitrile", 20),

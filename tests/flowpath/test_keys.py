@@ -4,7 +4,7 @@ import datetime
 
 import pytest
 
-from xcol.flowpath.keys import Choice, Later, Measure, Number, Only, Text, nearest, yes
+from xcol.flowpath.keys import Choice, Later, Measure, Number, Only, Text, yes
 from xcol.units import LENGTH, RATIO, UnitError, described
 
 BORE = Measure(LENGTH, 1e-6, 1e-2)
@@ -85,11 +85,6 @@ def test_what_is_not_computed_yet_is_refused():
             reader(raw)
         assert "not yet" in caught.value.expected
     assert Only(yes, lambda raw: raw is not True, "")(True) is True
-
-
-def test_the_nearest_word():
-    assert nearest("tempreature", ("temperature", "title")) == "temperature"
-    assert nearest("xyz", ("temperature", "title")) == ""
 
 
 def test_values_are_described():

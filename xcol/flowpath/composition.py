@@ -334,13 +334,10 @@ def _wrong_count(
     """Return the error for liquids and shares that do not go together, with the likely reading."""
     expected = f"{_EXPECTED}, one part for each liquid"
     if len(names) == 1 and len(values) == 2:
-        other = "water" if names[0] != "water" else "acetonitrile"
-        suggestion = f'"{names[0]}/{other} {values[0]:g}:{values[1]:g}", if the other liquid is {other}'
+        suggestion = f"{_example(names, values)}, if the other liquid is {_other(names[0])}"
         return UnitError(f"{shown}, 2 volume parts and 1 liquid", expected, suggestion)
     if len(names) == 1 and len(values) == 1 and 0 < values[0] < 100:
-        other = "water" if names[0] != "water" else "acetonitrile"
-        share = values[0]
-        suggestion = f'"{names[0]}/{other} {share:g}:{100 - share:g}", if the rest is {other}'
+        suggestion = f"{_example(names, [values[0], 100 - values[0]])}, if the rest is {_other(names[0])}"
         return UnitError(f"{shown}, a share of one liquid alone", expected, suggestion)
     if not values:
         return UnitError(f"{shown}, without volume parts", expected, _example(names, []))
@@ -356,9 +353,14 @@ def _wrong_count(
 def _example(names: list[str], values: list[float]) -> str:
     names = list(dict.fromkeys(names))
     if len(names) == 1:
-        names.append("acetonitrile" if names[0] == "water" else "water")
+        names.append(_other(names[0]))
     usual = {2: [60.0, 40.0], 3: [60.0, 30.0, 10.0]}.get(len(names), [1.0] * len(names))
     return f'"{"/".join(names)} {":".join(f"{value:g}" for value in values or usual)}"'
+
+
+def _other(name: str) -> str:
+    """Return the likely liquid beside this one, for a suggestion."""
+    return "acetonitrile" if name == "water" else "water"
 
 
 def _left_out(piece: _Piece) -> str:
@@ -380,6 +382,6 @@ def _warnings(solutions: list[_Piece], totals: tuple[float, float], phase: Mobil
     if 80 <= totals[0] <= 120 and all(abs(total - 100) > 0.5 for total in totals):
         found.append(f"the parts add up to {totals[0]:g}, not 100: read as {phase.name}")
     apart = [c.solvent.name for c in phase.components if not c.solvent.mixes_with_water]
-    if apart and any(c.solvent.viscosity is None for c in phase.components):
+    if apart and any(c.solvent.is_water for c in phase.components):
         found.append(f"{' and '.join(apart)} and water do not mix in all parts: one liquid phase is taken")
     return found

@@ -56,6 +56,7 @@ class Word:
 
 
 _NUMBER = r"\d{1,4}(?:[.,]\d{1,4})?"
+_PREFIXES = {"m": 1e-3, "u": 1e-6, "µ": 1e-6, "μ": 1e-6}
 _END = r"(?![\w%])"
 _SHARE = rf"{_NUMBER}\s*%?"
 _NO_UNIT = r"(?:(?<=%)|(?!\w|-[A-Za-z]|[.,]\d|\s*(?:%|mM|M\b|mmol|mol)))"
@@ -65,7 +66,7 @@ _RULES: tuple[tuple[Sort, re.Pattern[str]], ...] = (
     (Sort.NOISE, re.compile(r"\d{1,4}\s*(?:ppm|mg/L)\b", re.I)),
     (Sort.WEIGHT, re.compile(r"\b(?:w/w|m/m|w/v|wt\.?|by weight|by mass|weight)(?!\w)", re.I)),
     (Sort.PH, re.compile(rf"\bpH\s*[=\-]?\s*(?:of\s*)?{_NUMBER}(?!\w)", re.I)),
-    (Sort.MOLAR, re.compile(rf"({_NUMBER})\s*(mM|mmol\s*/\s*[lL]|mmol|mol\s*/\s*[lL]|M|N|[uµ]M)(?!\w)")),
+    (Sort.MOLAR, re.compile(rf"({_NUMBER})\s*(?:([muµμ]?)(?:M|mol\s*/\s*[lL])|(m)mol|N)(?!\w)")),
     (Sort.PARTS, re.compile(rf"(?:{_SHARE}(?:\s*[:/]\s*{_SHARE})+|{_NUMBER}(?:\s*\+\s*{_NUMBER})+){_NO_UNIT}")),
     (Sort.PERCENT, re.compile(rf"({_NUMBER})\s*(?:%|per ?cent\b|vol\.?\s*-?%)", re.I)),
     (Sort.NUMBER, re.compile(rf"({_NUMBER}){_END}")),
@@ -159,10 +160,7 @@ def _values(sort: Sort, match: re.Match[str]) -> tuple[float, ...]:
     if sort is Sort.PARTS:
         return tuple(_float(number) for number in re.findall(_NUMBER, match[0]))
     if sort is Sort.MOLAR:
-        factor = {"m": 1e-3, "u": 1e-6, "µ": 1e-6}.get(match[2][0] if match[2] not in ("mol", "M") else "", 1.0)
-        if match[2].replace(" ", "").lower() == "mol/l":
-            factor = 1.0
-        return (_float(match[1]) * factor,)
+        return (_float(match[1]) * _PREFIXES.get(match[2] or match[3], 1.0),)
     return (_float(match[1]),) if sort in (Sort.PERCENT, Sort.NUMBER) else ()
 
 

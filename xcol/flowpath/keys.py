@@ -8,6 +8,7 @@ from collections.abc import Callable
 from dataclasses import dataclass
 from typing import Protocol
 
+from xcol.errors import nearest
 from xcol.units import (
     LENGTH,
     RATIO,
@@ -253,14 +254,6 @@ def yes(raw: object) -> bool:
 def as_typed(raw: object) -> str:
     """Return a value as text: what was typed, where it was a text or a number of sane size."""
     return raw if isinstance(raw, str) else described(raw)
-
-
-def nearest(word: str, known: tuple[str, ...]) -> str:
-    """Return the known word that is closest to this one, or ''."""
-    import difflib  # noqa: PLC0415  (only on the way to an error)
-
-    found = difflib.get_close_matches(word, known, n=1, cutoff=0.6)
-    return found[0] if found else ""
 
 
 def _text_or_number(raw: object, quantity: Quantity) -> str:

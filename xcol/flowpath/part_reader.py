@@ -8,10 +8,11 @@ from typing import Any
 
 from xcol.catalog_records import Record
 from xcol.catalogs import Catalogs
+from xcol.errors import nearest
 from xcol.flowpath import slips
 from xcol.flowpath.file_keys import FILE_KEYS, OTHER_WORDS
 from xcol.flowpath.findings import Draft, Findings
-from xcol.flowpath.keys import Key, Later, Measure, Table, as_typed, nearest
+from xcol.flowpath.keys import Key, Later, Measure, Table, as_typed
 from xcol.flowpath.kinds import KINDS, KINDS_LATER, Kind
 from xcol.flowpath.model import Part, Reading
 from xcol.units import UnitError, described, plain, quote

@@ -5,7 +5,7 @@ from __future__ import annotations
 import sys
 from pathlib import Path
 
-from xcol.errors import InputError, Place, refusal
+from xcol.errors import InputError, Place, nearest, refusal
 
 MOST_BYTES = 1_000_000  # a path file has a few thousand
 
@@ -84,8 +84,6 @@ def _files_in(folder: Path) -> str:
 
 
 def _near(path: Path) -> str:
-    from xcol.flowpath.keys import nearest  # noqa: PLC0415  (only on the way to an error)
-
     try:
         names = tuple(entry.name for entry in path.parent.iterdir())
     except OSError:

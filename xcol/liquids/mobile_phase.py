@@ -13,7 +13,7 @@ from xcol.liquids.viscosity import ROOM, excess_with_water, mixed_viscosity, org
 if TYPE_CHECKING:
     from collections.abc import Mapping
 
-    from xcol.catalog_records import Mixture, Solvent
+    from xcol.catalog_records import Mixture, Solvent, Span
     from xcol.liquids.viscosity import Real
 
 # Relative uncertainty of mixing by rule: organic liquids; water with a liquid that nobody measured with it.
@@ -94,16 +94,13 @@ class MobilePhase:
 
     def outside(self, temperature: float) -> tuple[float, Solvent]:
         """Return by how many kelvin a temperature [K] is outside the fitted range (0: not), and of which liquid."""
-        distances = [
-            (max(c.solvent.span[0] - temperature, temperature - c.solvent.span[1], 0.0), c.solvent)
-            for c in self.components
-        ]
+        distances = [(_outside(c.solvent.span, temperature), c.solvent) for c in self.components]
         return max(distances, key=lambda pair: pair[0])
 
     def out_of_reach(self, temperature: float) -> Mixture | None:
         """Return the mixture whose rows do not reach to this temperature [K], None where all do."""
         known = (mixture for _, _, mixture in self._pairs() if mixture is not None)
-        return next((row for row in known if not row.span[0] <= temperature <= row.span[1]), None)
+        return next((row for row in known if _outside(row.span, temperature)), None)
 
     def unmeasured(self) -> list[Solvent]:
         """Return the liquids of which nothing is known with the water that is in it."""
@@ -162,22 +159,23 @@ def _viscosity(solvent: Solvent, temperature: Real) -> Real:
 
 
 def _density(solvent: Solvent, temperature: float) -> float:
-    if solvent.viscosity is None:
+    if solvent.is_water:
         return float(water_density(temperature))
     return float(organic_density(temperature, solvent.density, solvent.expansion))
 
 
+def _outside(span: Span, temperature: float) -> float:
+    """Return by how many kelvin a temperature [K] is outside a span, 0 where it is not."""
+    return max(span[0] - temperature, temperature - span[1], 0.0)
+
+
 def _of_liquid(solvent: Solvent, temperature: float) -> float:
     """Return a liquid's uncertainty: more away from room temperature (but for water's formula) and beyond the fit."""
-    low, high = solvent.span
-    outside = max(low - temperature, temperature - high, 0.0)
     apart = 0.0 if solvent.viscosity is None else APART_PER_KELVIN * abs(temperature - ROOM)
-    return solvent.uncertainty + apart + BEYOND_PER_KELVIN * outside
+    return solvent.uncertainty + apart + BEYOND_PER_KELVIN * _outside(solvent.span, temperature)
 
 
 def _of_mixture(mixture: Mixture, temperature: float) -> float:
     """Return a mixture's uncertainty: that of the fit within its span, rising to the far one outside."""
-    low, high = mixture.span
-    outside = max(low - temperature, temperature - high, 0.0)
-    share = min(outside / (mixture.far - high), 1.0)
+    share = min(_outside(mixture.span, temperature) / (mixture.far - mixture.span[1]), 1.0)
     return mixture.uncertainty + share * (mixture.uncertainty_far - mixture.uncertainty)

@@ -11,8 +11,7 @@ from xcol import __version__
 from xcol.catalog_kinds import KINDS, Kind
 from xcol.catalog_records import Record
 from xcol.catalogs import Catalogs, normal, row_text
-from xcol.errors import Place, refusal
-from xcol.flowpath.keys import nearest
+from xcol.errors import Place, nearest, refusal
 from xcol.report.budget_record import spreadsheet_cell
 from xcol.report.catalog_values import VALUES
 from xcol.report.sheet import Grid, markdown

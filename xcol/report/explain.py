@@ -7,8 +7,8 @@ import io
 from typing import TYPE_CHECKING, Any
 
 from xcol import __version__
-from xcol.errors import Fault, InputError, Place
-from xcol.flowpath.keys import Key, Later, nearest
+from xcol.errors import Fault, InputError, Place, nearest
+from xcol.flowpath.keys import Key, Later
 from xcol.flowpath.kinds import KINDS
 from xcol.report.sheet import Grid
 from xcol.report.topics import TOPICS, Topic
