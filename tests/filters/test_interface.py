@@ -8,6 +8,7 @@ from xcol.filters.column import Column
 from xcol.filters.signal import Boxcar, FirstOrder, GaussianFilter
 from xcol.filters.tube import Tube, TubeRun
 from xcol.filters.volumes import Plug, TanksInSeries
+from xcol.filters.washout import WashedOut
 
 FLOW = 1e-6 / 60
 FILTERS = {
@@ -25,6 +26,14 @@ FILTERS = {
     "short tube": Tube(0.05, 254e-6, FLOW, 5e-10),
     "long tube": Tube(10.0, 127e-6, FLOW, 2e-9),
     "tube with axial diffusion": Tube(0.3, 2e-3, FLOW / 10, 5e-9),
+    "bent tube": Tube(0.4, 254e-6, FLOW, 1e-9, 5e4),
+    "long bent tube": Tube(10.0, 127e-6, FLOW, 2e-9, 300.0),
+    "bent run": TubeRun((Tube(0.2, 254e-6, FLOW, 1e-9, 1e4), Tube(0.3, 127e-6, FLOW, 1e-9, 2e4))),
+    "full loop": WashedOut(Tube(0.102, 500e-6, FLOW, 1e-9)),
+    "long full loop": WashedOut(Tube(10.0, 127e-6, FLOW, 2e-9)),
+    "bent full loop": WashedOut(Tube(0.4, 250e-6, FLOW, 1e-9, 1e4)),
+    "cell read over its bore": WashedOut(Tube(0.01, 1e-3, FLOW, 1e-9)),
+    "slow wide loop": WashedOut(Tube(0.3, 2e-3, FLOW / 10, 5e-9)),
     "run": TubeRun((Tube(0.2, 254e-6, FLOW, 1e-9), Tube(0.3, 127e-6, FLOW, 1e-9), Tube(0.1, 500e-6, FLOW, 1e-9))),
 }
 
@@ -80,6 +89,10 @@ def test_arrays_give_what_floats_give():
         lambda flow: Column(1e-6 / flow, 2.0, 11000.0),
         lambda flow: Tube(0.4, 254e-6, flow, 1e-9),
         lambda flow: TubeRun((Tube(0.2, 254e-6, flow, 1e-9), Tube(0.3, 127e-6, flow, 2e-9))),
+        lambda flow: Tube(0.4, 254e-6, flow, 1e-9, flow * 1e12),
+        lambda flow: TubeRun((Tube(0.2, 254e-6, flow, 1e-9, 1e4), Tube(0.3, 127e-6, flow, 2e-9, flow * 1e12))),
+        lambda flow: WashedOut(Tube(0.1, 500e-6, flow, 1e-9)),
+        lambda flow: WashedOut(Tube(0.1, 500e-6, flow, 1e-9, flow * 1e12)),
         lambda flow: FirstOrder(flow * 1e7),
         lambda flow: FirstOrder(flow * 1e7, 2.0),
         lambda flow: GaussianFilter(flow * 1e7),
@@ -112,6 +125,9 @@ def test_nothing_is_added_by_what_has_no_size():
         Boxcar(0.0),
         MeasuredBlock(0.0, 0.0, FLOW),
         Tube(0.0, 254e-6, FLOW, 1e-9),
+        Tube(0.0, 254e-6, FLOW, 1e-9, 1e4),
+        WashedOut(Tube(0.0, 254e-6, FLOW, 1e-9)),
+        WashedOut(Tube(0.0, 254e-6, FLOW, 1e-9, 1e4)),
     ):
         assert made.delay() == made.variance() == made.third_moment() == 0
         assert np.allclose(made.transfer(np.array([0.0, 1.0, 10.0])), 1.0)

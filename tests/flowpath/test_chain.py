@@ -51,18 +51,19 @@ def test_sides_and_what_counts_at_each_detector(instrument):
 
 def test_tubes_are_one_run_until_something_mixes_the_stream(instrument):
     chain = links(instrument, instrument.detectors[1])
-    runs = [group for group in segments(chain) if len(group) > 1]
+    found = [segment.places for segment in segments([link.element for link in chain])]
+    runs = [places for places in found if len(places) > 1]
     assert [[chain[index].part.position for index in run] for run in runs] == [[2, 3], [10, 12]]
-    assert sorted(index for group in segments(chain) for index in group) == list(range(len(chain)))
+    assert sorted(place for places in found for place in places) == list(range(len(chain)))
 
 
 def test_the_transit_is_the_sum_of_the_mean_delays(instrument):
     flow = 0.6e-6 / 60
     tubes = [3.14159265 / 4 * bore**2 * 0.1 for bore in (0.2e-3, 0.3e-3, 0.1e-3, 0.2e-3)]
     first = (3e-9 + sum(tubes) + 1e-9 + 1e-9) / flow + 0.5 + 0.1
-    assert transit(instrument, instrument.detectors[0]) == pytest.approx(first)
+    assert transit(instrument, instrument.detectors[0], instrument.peaks[0].estimate) == pytest.approx(first)
     more = 2 * 3.14159265 / 4 * 0.2e-3**2 * 0.1
     # the first cell is passed through whole, its electronics are not met; the second is two tanks
     second = (3e-9 + sum(tubes) + 1e-9 + 2e-9 + more + 4e-9) / flow + 1 / 2.1972245773
-    assert transit(instrument, instrument.detectors[1]) == pytest.approx(second)
+    assert transit(instrument, instrument.detectors[1], instrument.peaks[0].estimate) == pytest.approx(second)
     assert dead_time(instrument, instrument.detectors[0]) == pytest.approx(0.2e-6 / flow)

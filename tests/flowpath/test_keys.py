@@ -4,7 +4,7 @@ import datetime
 
 import pytest
 
-from xcol.flowpath.keys import Choice, Later, Measure, Number, Only, Text, yes
+from xcol.flowpath.keys import Choice, Later, Measure, Number, Sizes, Tables, Text, Tolerance, YesOrNo
 from xcol.units import LENGTH, RATIO, UnitError, described
 
 BORE = Measure(LENGTH, 1e-6, 1e-2)
@@ -80,11 +80,10 @@ def test_choices_propose_the_nearest():
 
 
 def test_what_is_not_computed_yet_is_refused():
-    for reader, raw in ((Later(), "x"), (Only(yes, lambda raw: raw is not True, "leave it out"), False)):
+    for reader, raw in ((Later(), "x"),):
         with pytest.raises(UnitError) as caught:
             reader(raw)
         assert "not yet" in caught.value.expected
-    assert Only(yes, lambda raw: raw is not True, "")(True) is True
 
 
 def test_values_are_described():

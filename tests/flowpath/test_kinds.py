@@ -5,7 +5,8 @@ import math
 import pytest
 
 from xcol.filters.signal import GAUSSIAN_RISE, Boxcar, FirstOrder, GaussianFilter
-from xcol.flowpath.elements import Bed, Block, Bore, Cell, Electronics, Mixed
+from xcol.flowpath.bed import Bed
+from xcol.flowpath.elements import Block, Bore, Cell, Electronics, Mixed
 from xcol.flowpath.kinds import KINDS, KINDS_LATER
 from xcol.flowpath.reader import parse
 from xcol.report.topics import TOPICS

@@ -6,49 +6,26 @@ All variances are summed in s²; what is shown in µL² is s² times the square 
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
 
-import numpy as np
-
 from xcol.answers.pressure import Pressures, pressures
+from xcol.answers.rows import Row, rows_of, spread_of
 from xcol.filters.column import Column
 from xcol.filters.laminar import UNMIXED_BELOW
-from xcol.filters.tube import Tube
-from xcol.flowpath.chain import Link, filter_of, links, run_of, segments, transit
-from xcol.flowpath.elements import Bed, Electronics, Stream
+from xcol.flowpath.chain import Link, links, transit
+from xcol.flowpath.elements import Electronics
 from xcol.flowpath.model import beds_of
 
 if TYPE_CHECKING:
-    from collections.abc import Iterable, Iterator, Sequence
+    from collections.abc import Iterable
 
-    import numpy.typing as npt
-
-    from xcol.filters.interface import Filter
+    from xcol.flowpath.bed import Bed
+    from xcol.flowpath.elements import Stream
     from xcol.flowpath.model import Instrument, Part, Peak
-
-    Values = npt.NDArray[np.float64]
 
 HALF_WIDTH = 2 * math.sqrt(2 * math.log(2))  # width at half height of a Gaussian, in σ
 FEW_POINTS = 10  # across 4σ: fewer, and the averaging between points adds more than 1.3 %
-
-
-@dataclass(frozen=True)
-class Row:
-    """One contribution to the broadening of one peak; variances [s²], volume [m³]."""
-
-    part: Part
-    contribution: str
-    side: str
-    volume: float
-    variance: float
-    share_extra: float
-    share_total: float
-    plates_kept_without: float | None
-    t_star: float | None = None
-    run_t_star: float | None = None  # of the whole run of tubes that it belongs to
-    longtube_variance: float | None = None
-    compression: float = 1.0  # θ, 1 for isocratic elution
 
 
 @dataclass(frozen=True)
@@ -69,6 +46,7 @@ class PeakBudget:
     """
 
     peak: Peak
+    delay: float  # mean delay outside the columns
     retention: float  # mean of the recorded peak, from the valve's turn
     plates_column: float | None
     variance_column: float
@@ -77,6 +55,16 @@ class PeakBudget:
     columns: tuple[ColumnBand, ...]
     points: float | None  # data points across 4σ
     columns_range: tuple[float, float] | None = None
+
+    @property
+    def plates_kept_range(self) -> tuple[float, float] | None:
+        """Share of the plates that is recorded with every part at its worst, and at its best."""
+        if self.plates_column is None:
+            return None
+        worst, best = (sum(ends) for ends in zip(*((row.high, row.low) for row in self.rows), strict=True))
+        return self.variance_column / (self.variance_column + worst), self.variance_column / (
+            self.variance_column + best
+        )
 
     @property
     def variance_total(self) -> float:
@@ -116,11 +104,15 @@ class PeakBudget:
 
 @dataclass(frozen=True)
 class DetectorBudget:
-    """What one detector records: mean delay outside the columns [s], and the peaks."""
+    """What one detector records of the peaks."""
 
     detector: Part
-    delay: float
     peaks: tuple[PeakBudget, ...]
+
+    @property
+    def delay(self) -> float:
+        """Mean delay outside the columns [s]; of the first peak, where a washed-out loop delays each by its own D."""
+        return self.peaks[0].delay
 
 
 @dataclass(frozen=True)
@@ -166,7 +158,7 @@ def recorded(instrument: Instrument, detector: Part) -> list[tuple[float, float 
     What ``budget`` returns of them without the rows, and so without a computation for each link left out.
     """
     chain = links(instrument, detector)
-    extra = _Spread(instrument.flow, chain, instrument.peaks).total()
+    extra = spread_of(instrument, chain).total()
     found: list[tuple[float, float | None]] = []
     for peak, outside in zip(instrument.peaks, extra, strict=True):
         time, bands = _own_bands(instrument, chain, peak)
@@ -177,51 +169,44 @@ def recorded(instrument: Instrument, detector: Part) -> list[tuple[float, float 
 
 def _at_detector(instrument: Instrument, detector: Part) -> DetectorBudget:
     chain = links(instrument, detector)
-    delay = transit(instrument, detector)
-    spread = _Spread(instrument.flow, chain, instrument.peaks)
-    rows = spread.rows()
-    extra = sum((row.variance for row in rows.values()), spread.zero)
-    without = {index: spread.total(index) for index in rows}
+    printed = spread_of(instrument, chain)
+    rows = rows_of(instrument, chain, printed)
+    extra = printed.total()
+    without = {place: printed.total(place) for place in rows}
 
     peaks = []
     for n, peak in enumerate(instrument.peaks):
         column_time, bands = _own_bands(instrument, chain, peak)
         column = sum(band.variance for band in bands)
-        total = column + float(extra[n])
+        outside = float(extra[n])
         peaks.append(
             PeakBudget(
                 peak=peak,
+                delay=(delay := transit(instrument, detector, peak.estimate)),
                 retention=delay + column_time,
                 plates_column=column_time**2 / column if bands else None,
                 variance_column=column,
-                variance_extra=float(extra[n]),
+                variance_extra=outside,
                 rows=tuple(
-                    Row(
-                        part=row.link.part,
-                        contribution=row.link.element.contribution,
-                        side=row.link.side,
-                        volume=row.link.element.volume,
-                        variance=float(row.variance[n]),
-                        share_extra=float(row.variance[n] / extra[n]) if extra[n] else 0.0,
-                        share_total=float(row.variance[n]) / total if total else 0.0,
-                        plates_kept_without=column / (column + float(without[i][n])) if bands else None,
-                        t_star=None if row.t_star is None else float(row.t_star[n]),
-                        run_t_star=None if row.run_t_star is None else float(row.run_t_star[n]),
-                        longtube_variance=None if row.longtube is None else float(row.longtube[n]),
+                    replace(
+                        row[n],
+                        share_extra=row[n].variance / outside if outside else 0.0,
+                        share_total=row[n].variance / (column + outside) if column + outside else 0.0,
+                        plates_kept_without=column / (column + float(without[place][n])) if bands else None,
                     )
-                    for i, row in rows.items()
+                    for place, row in rows.items()
                 ),
                 columns=bands,
-                points=_points(chain, total),
+                points=_points(chain, column + outside),
                 columns_range=_columns_range(instrument, chain, peak),
             )
         )
-    return DetectorBudget(detector, delay, tuple(peaks))
+    return DetectorBudget(detector, tuple(peaks))
 
 
 def _beds_passed(instrument: Instrument, parts: Iterable[Part], peak: Peak) -> list[tuple[Part, Bed, Stream]]:
     """Return the columns among these parts, each with what flows through it of one peak."""
-    return [(part, bed, Stream(instrument.flow, peak.diffusion_in(part))) for part in parts for bed in beds_of([part])]
+    return [(part, bed, instrument.stream(part, peak.diffusion_in(part))) for part in parts for bed in beds_of([part])]
 
 
 def _columns_range(instrument: Instrument, chain: tuple[Link, ...], peak: Peak) -> tuple[float, float] | None:
@@ -230,12 +215,12 @@ def _columns_range(instrument: Instrument, chain: tuple[Link, ...], peak: Peak) 
     spans = [bed.plates_range(stream) for _, bed, stream in passed]
     if peak.plates is not None or not any(spans):
         return None
-    time = sum(bed.void_volume for _, bed, _ in passed)
+    time = sum(float(bed.void_volume) for _, bed, _ in passed)
     ends = []
     for end in (0, 1):
         variance = 0.0
         for span, (_, bed, stream) in zip(spans, passed, strict=True):
-            variance += bed.void_volume**2 / float(span[end] if span else bed.plates_for(stream))
+            variance += float(bed.void_volume) ** 2 / float(span[end] if span else bed.plates_for(stream))
         ends.append(time**2 / variance)
     return ends[0], ends[1]
 
@@ -268,70 +253,6 @@ def _parts(chain: tuple[Link, ...]) -> tuple[Part, ...]:
     return tuple({link.part.position: link.part for link in chain}.values())
 
 
-@dataclass(frozen=True)
-class _LinkSpread:
-    """What a link contributes, for all peaks at once; arrays have one entry a peak."""
-
-    link: Link
-    variance: Values
-    t_star: Values | None = None
-    run_t_star: Values | None = None
-    longtube: Values | None = None
-
-
-class _Spread:
-    """The variance of the chain outside the columns, for all peaks at once."""
-
-    def __init__(self, flow: float, chain: tuple[Link, ...], peaks: tuple[Peak, ...]) -> None:
-        self._flow = flow
-        self._chain = chain
-        self._peaks = peaks
-        self._known: dict[tuple[int, ...], list[Values]] = {}
-        self.zero = np.zeros(len(peaks))
-
-    def rows(self) -> dict[int, _LinkSpread]:
-        """Return what each link but the columns contributes, in the order of the chain."""
-        rows: dict[int, _LinkSpread] = {}
-        for group in self._groups(range(len(self._chain))):
-            filters = self._filters(group)
-            tubes = [part for part in filters if isinstance(part, Tube)]
-            run = self.zero + sum(tube.t_star for tube in tubes)
-            for index, part, variance in zip(group, filters, self._shares(group), strict=True):
-                link = self._chain[index]
-                if isinstance(part, Tube):
-                    own, longtube = self.zero + part.t_star, self.zero + part.longtube_variance()
-                    rows[index] = _LinkSpread(link, variance, own, run, longtube)
-                else:
-                    rows[index] = _LinkSpread(link, variance)
-        return dict(sorted(rows.items()))
-
-    def total(self, removed: int | None = None) -> Values:
-        """Return the variance [s²] of the chain, or of it without one link, a run of tubes closing up."""
-        kept = [index for index in range(len(self._chain)) if index != removed]
-        return sum((share for group in self._groups(kept) for share in self._shares(group)), self.zero)
-
-    def _groups(self, indices: Sequence[int]) -> Iterator[tuple[int, ...]]:
-        """Group links into what mixes on its own, columns left out."""
-        for places in segments([self._chain[index] for index in indices]):
-            group = tuple(indices[place] for place in places)
-            if not isinstance(self._chain[group[0]].element, Bed):
-                yield group
-
-    def _shares(self, group: tuple[int, ...]) -> list[Values]:
-        if group not in self._known:
-            filters = self._filters(group)
-            run = run_of(filters)
-            shares = run.shares() if run.tubes else [part.variance() for part in filters]
-            self._known[group] = [self.zero + share for share in shares]
-        return self._known[group]
-
-    def _filters(self, group: tuple[int, ...]) -> list[Filter]:
-        """Return the filters of a segment, each with the diffusion coefficients at its own temperature."""
-        parts = [self._chain[index].part for index in group]
-        diffusion = [np.array([peak.diffusion_in(part) for peak in self._peaks]) for part in parts]
-        return [filter_of(self._chain[i], self._flow, d) for i, d in zip(group, diffusion, strict=True)]
-
-
 def _points(chain: tuple[Link, ...], variance: float) -> float | None:
     """Return the data points across 4σ, None where no rate was entered."""
     for link in chain:
@@ -355,7 +276,7 @@ def _remarks(detectors: tuple[DetectorBudget, ...]) -> list[str]:
             row.part.label
             for p in answer.peaks
             for row in p.rows
-            if row.run_t_star is not None and 0 < row.run_t_star < UNMIXED_BELOW
+            if row.tube is not None and 0 < row.tube.run_t_star < UNMIXED_BELOW
         }
         if unmixed:
             found.append(

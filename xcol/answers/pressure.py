@@ -5,7 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
 
-from xcol.flowpath.elements import Bore
+from xcol.flowpath.elements import InBore
 from xcol.flowpath.hydraulics import PressureRange, exactly, reynolds_number
 from xcol.flowpath.model import beds_of
 from xcol.units import PRESSURE, significant, write
@@ -89,7 +89,7 @@ def _drop(part: Part, instrument: Instrument) -> PressureRange | None:
 
 
 def _reynolds(part: Part, instrument: Instrument) -> float | None:
-    bores = [element.bore for element in part.elements if isinstance(element, Bore)]
+    bores = [float(element.bore) for element in part.elements if isinstance(element, InBore)]
     if not bores or part.viscosity is None:
         return None
     return float(reynolds_number(instrument.flow, min(bores), part.viscosity.value, instrument.density))

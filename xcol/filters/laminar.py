@@ -19,7 +19,9 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
+from xcol.filters.cubic import Curve
 from xcol.filters.laminar_modes import EIGENVALUES, WEIGHTS
+from xcol.filters.straight_table import LOG_MOMENTS, LOG_T_STARS, THIRD_SLOPE, THIRD_START
 
 if TYPE_CHECKING:
     import numpy.typing as npt
@@ -36,6 +38,13 @@ UNMIXED_BELOW = 1e-3
 # From this t* on, and below this dimensionless frequency, the slowest mode alone is left (the next
 # one has decayed to e^−500 of it).
 SLOW_BEYOND, SLOW_BELOW = 40.0, 5.0
+_STEP = float(LOG_T_STARS[1] - LOG_T_STARS[0])
+_FIRST, _LAST = (float(t) for t in np.exp(LOG_T_STARS[[0, -1]]))
+_LOG_RELATIVE, _LOG_THIRD = (
+    Curve(float(LOG_T_STARS[0]), _STEP, LOG_MOMENTS[:, column], LOG_MOMENTS[:, column + 1] * _STEP) for column in (0, 2)
+)
+
+_QUADRATURE = 48  # points of the integral for the fourth moment: 40 to 80 agree to 8 digits
 FAST_BEYOND = 1e6  # decay constants times t* from which a mode follows the others at once
 
 
@@ -69,18 +78,37 @@ def modes() -> tuple[Matrix, Matrix]:
     return solve_modes(POLYNOMIALS)
 
 
-def dimensionless_variance(t_star: Real) -> Real:
-    """Variance of the dimensionless residence time, V(t*) = t*²Φ(t*); any shape.
+def variance_by_modes(t_star: Real) -> Real:
+    """Variance of the dimensionless residence time, V(t*) = t*²Φ(t*), from its definition; any shape.
 
-    V(t*) = 2 Σ_j β_j² (t*/λ_j − (1 − e^{−λ_j t*})/λ_j²), β_j the coupling of mode j to the mean; it
-    tends to t*/24 − 1/384 for long tubes. Valid for t* ≥ 0; below 1e-3 see ``UNMIXED_BELOW``.
-
-    >>> round(float(dimensionless_variance(0.1)) / 0.1**2, 5)
-    0.22379
+    V(t*) = 2 Σ_j β_j² (t*/λ_j − (1 − e^{−λ_j t*})/λ_j²), β_j the coupling of mode j to the mean.
     """
     x = np.multiply.outer(t_star, EIGENVALUES)
     # λ²·(the bracket) = x − 1 + e⁻ˣ, written so that short tubes keep their digits
     result: Real = ((x + np.expm1(-x)) / EIGENVALUES**2) @ (2 * WEIGHTS)
+    return result
+
+
+def dimensionless_variance(t_star: Real) -> Real:
+    """Variance of the dimensionless residence time, V(t*) = t*²Φ(t*); any shape.
+
+    From a table in ln t*, within 1e-7 of ``variance_by_modes``, since many draws need it. Valid for
+    t* ≥ 0; below 1e-3 see ``UNMIXED_BELOW``.
+
+    >>> round(float(dimensionless_variance(0.1)) / 0.1**2, 5)
+    0.22379
+    """
+    t = np.asarray(t_star, dtype=np.float64)
+    if not t.size:
+        return t
+    inside = np.clip(t, _FIRST, _LAST)
+    variance = np.square(t) * np.exp(_LOG_RELATIVE(np.log(inside)))
+    if t.max() > _LAST:
+        variance = np.where(t > _LAST, t / 24 - 1 / 384, variance)
+    if t.min() < _FIRST:
+        short = t < _FIRST
+        variance = np.where(short, variance_by_modes(np.where(short, t, 0.0)), variance)
+    result: Real = variance
     return result
 
 
@@ -93,42 +121,105 @@ def relative_variance(t_star: Real) -> Real:
     return dimensionless_variance(t_star) / np.square(t_star)
 
 
+def t_star_of(relative: Real) -> Real:
+    """Return the t* at which a straight tube has this Φ, the inverse of ``relative_variance``; any shape.
+
+    >>> round(float(t_star_of(0.22379)), 4)
+    0.1
+    """
+    phi = np.asarray(relative, dtype=np.float64)
+    # 1/(24t) − 1/(384t²) for long tubes, solved for 1/t; the curve of the table otherwise
+    long = 1 / (8 - np.sqrt(64 - 384 * np.minimum(phi, 1 / 6)))
+    nodes = LOG_MOMENTS[::-1, 0]
+    log_t = np.interp(np.log(phi), nodes, LOG_T_STARS[::-1])
+    for _ in range(4):  # from within 1e-3 to the last digit
+        step = 1e-6
+        value, ahead = _LOG_RELATIVE(log_t), _LOG_RELATIVE(log_t + step)
+        log_t = log_t - (value - np.log(phi)) * step / (ahead - value)
+    result: Real = np.where(phi < np.exp(LOG_MOMENTS[-1, 0]), long, np.exp(log_t))
+    return result
+
+
+def dimensionless_third_moment(t_star: Real) -> Real:
+    """Third central moment of the dimensionless residence time of one tube [-]; ``t_star`` ≥ 1e-5, any shape.
+
+    From a table in ln t*, within 1e-7 of ``run_third_moment``.
+    """
+    t = np.asarray(t_star, dtype=np.float64)
+    inside = np.clip(t, _FIRST, _LAST)
+    result: Real = np.where(t > _LAST, THIRD_START + THIRD_SLOPE * t, t**3 * np.exp(_LOG_THIRD(np.log(inside))))
+    return result
+
+
+class _Moments:
+    """The modes of the first and second moment on their way through tubes, each step in closed form.
+
+    b₁' = −Λb₁ + wβ and b₂' = −Λb₂ + 2wC b₁, of which μ₃' = 3wβ·b₂; ``w`` = a²/D [s], axes before the modes' own.
+    """
+
+    def __init__(self, shape: tuple[int, ...]) -> None:
+        eigenvalues, coupling = modes()
+        self._rates, self._beta, self._inner = eigenvalues[1:], coupling[0, 1:], coupling[1:, 1:]
+        self._diagonal = np.diag(self._inner)
+        gaps = np.subtract.outer(self._rates, self._rates)
+        np.fill_diagonal(gaps, np.inf)  # the diagonal has a limit of its own, below
+        self._mixed = (self._inner / gaps).T
+        self.first: Matrix = np.zeros((*shape, len(self._rates)))
+        self.second: Matrix = np.zeros_like(self.first)
+
+    def through(self, t: Matrix, w: Matrix) -> Matrix:
+        """Go through a tube, ``t`` its t* and ``w`` with a last axis of one; return what it adds to μ₃."""
+        rates = self._rates
+        decay = np.exp(-rates * t)
+        integral = -np.expm1(-rates * t) / rates  # of the decay
+        steady = w * self._beta / rates
+        moving = self.first - steady
+        pushed = steady @ self._inner.T  # C·steady
+        # Σ_k C_jk r_k (e^{−λ_k t} − e^{−λ_j t})/(λ_j − λ_k), and the same integrated over t
+        swept = (moving * decay) @ self._mixed - decay * (moving @ self._mixed)
+        swept_integral = (moving * integral) @ self._mixed - integral * (moving @ self._mixed)
+        swept += self._diagonal * moving * t * decay
+        swept_integral += self._diagonal * moving * (integral - t * decay) / rates
+        second_integral = self.second * integral + 2 * w * (pushed * (t - integral) / rates + swept_integral)
+        self.second = self.second * decay + 2 * w * (pushed * integral + swept)
+        self.first = steady + moving * decay
+        added: Matrix = 3 * (w * second_integral) @ self._beta
+        return added
+
+
 def run_third_moment(t_stars: list[Real], time_units: list[Real]) -> Real:
     """Third central moment [s³] of tubes in a row whose layers run on from one to the next.
 
     ``t_stars`` [-] and ``time_units`` w = a²/D [s], one entry a tube, each a float or an array of
-    one common shape. Integrates the modes of the first and second moment through the tubes:
-    b₁' = −Λb₁ + wβ, b₂' = −Λb₂ + 2wC b₁, μ₃' = 3wβ·b₂, each in closed form.
+    one common shape.
     """
-    eigenvalues, coupling = modes()
-    rates, beta, inner = eigenvalues[1:], coupling[0, 1:], coupling[1:, 1:]
-    diagonal = np.diag(inner)
-    gaps = np.subtract.outer(rates, rates)
-    np.fill_diagonal(gaps, np.inf)  # the diagonal has a limit of its own, below
-    mixed = (inner / gaps).T
-
     shape = np.broadcast_shapes(*(np.shape(t) for t in [*t_stars, *time_units]))
-    first = np.zeros((*shape, len(rates)))
-    second = np.zeros_like(first)
+    state = _Moments(shape)
     total: Real = np.zeros(shape)
     for t_star, unit in zip(t_stars, time_units, strict=True):
-        t = np.broadcast_to(np.asarray(t_star, dtype=np.float64), shape)[..., None]
-        w = np.broadcast_to(np.asarray(unit, dtype=np.float64), shape)[..., None]
-        decay = np.exp(-rates * t)
-        integral = -np.expm1(-rates * t) / rates  # of the decay
-        steady = w * beta / rates
-        moving = first - steady
-        pushed = steady @ inner.T  # C·steady
-        # Σ_k C_jk r_k (e^{−λ_k t} − e^{−λ_j t})/(λ_j − λ_k), and the same integrated over t
-        swept = (moving * decay) @ mixed - decay * (moving @ mixed)
-        swept_integral = (moving * integral) @ mixed - integral * (moving @ mixed)
-        swept += diagonal * moving * t * decay
-        swept_integral += diagonal * moving * (integral - t * decay) / rates
-        second_integral = second * integral + 2 * w * (pushed * (t - integral) / rates + swept_integral)
-        total = total + 3 * (w * second_integral) @ beta
-        second = second * decay + 2 * w * (pushed * integral + swept)
-        first = steady + moving * decay
+        t, w = (np.broadcast_to(np.asarray(value, dtype=np.float64), shape)[..., None] for value in (t_star, unit))
+        total = total + state.through(t, w)
     return total
+
+
+def fourth_moment(t_star: Real) -> Real:
+    """Fourth central moment of the dimensionless residence time of one tube [-]; any shape.
+
+    μ₄' = 4β·b₃ with b₃' = −Λb₃ + 3(C b₂ + βμ₂); the order of both integrals exchanged,
+    μ₄ = 12 ∫ b₁(t*−t)·(C b₂(t) + βμ₂(t)) dt, by Gauss-Legendre quadrature, denser at both ends.
+    """
+    eigenvalues, coupling = modes()
+    x, weights = np.polynomial.legendre.leggauss(_QUADRATURE)
+    angle = np.pi / 4 * (x + 1)
+    t = np.multiply.outer(t_star, np.sin(angle) ** 2)  # its derivative is t*·sin 2θ
+    state = _Moments(t.shape)
+    state.through(t[..., None], np.ones((*t.shape, 1)))
+    pushed = state.second @ coupling[1:, 1:].T + variance_by_modes(t)[..., None] * coupling[0, 1:]  # type: ignore[index]
+    left = np.asarray(t_star, dtype=np.float64)[..., None] - t
+    first = -np.expm1(-eigenvalues[1:] * left[..., None]) * coupling[0, 1:] / eigenvalues[1:]
+    integrand = (first * pushed).sum(axis=-1)
+    result: Real = 12 * t_star * (integrand @ (weights * np.pi / 4 * np.sin(2 * angle)))
+    return result
 
 
 def run_transfer(t_stars: list[Real], time_units: list[Real], omega: Real) -> npt.NDArray[np.complex128]:

@@ -5,14 +5,17 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
-from xcol.filters.tube import Tube, TubeRun
-from xcol.flowpath.elements import Bed, Bore, Element, Stream
+import numpy as np
+
+from xcol.flowpath.bed import Bed
+from xcol.flowpath.elements import Bore, Element, Stream
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
     from xcol.filters.interface import Filter, Real
     from xcol.flowpath.model import Instrument, Part
+    from xcol.liquids.estimate import Estimate
 
 
 @dataclass(frozen=True)
@@ -51,57 +54,77 @@ def links(instrument: Instrument, detector: Part) -> tuple[Link, ...]:
     return tuple(chain)
 
 
-def segments(chain: Sequence[Link]) -> list[tuple[int, ...]]:
-    """Group the chain, as indices into it: tubes with nothing between them are one segment.
+@dataclass(frozen=True)
+class Segment:
+    """Links that spread the band together: one, or a run of tubes with nothing that mixes between them.
 
-    Everything else is a segment of its own. What mixes the stream anew ends a run; electronics and
-    what has no size do not.
+    ``places`` are theirs in the chain; ``joined`` has one entry between two tubes of a run: 1 where the layers run
+    on, 0 where the stream is mixed anew (an array, where draws differ in it).
     """
-    groups: list[tuple[int, ...]] = []
-    run: list[int] = []
+
+    places: tuple[int, ...]
+    joined: tuple[Real, ...] = ()
+
+
+def segments(elements: Sequence[Element]) -> list[Segment]:
+    """Part the elements of a chain into segments.
+
+    What mixes the stream anew ends a run; electronics and what has no size do not.
+    """
+    found: list[Segment] = []
+    tubes: list[int] = []
+    joined: list[Real] = []
+    pending: Real = 1.0  # whether the layers still run on from the last tube
 
     def end_run() -> None:
-        if run:
-            groups.append(tuple(run))
-            run.clear()
+        if tubes:
+            found.append(Segment(tuple(tubes), tuple(joined)))
+            tubes.clear()
+            joined.clear()
 
-    for index, link in enumerate(chain):
-        if isinstance(link.element, Bore) and link.element.layered:
-            run.append(index)
-            continue
-        if link.element.remixes:
+    for place, element in enumerate(elements):
+        passes = 1.0 - element.remixes
+        pending = pending * passes
+        if _is_never(pending):
             end_run()
-        groups.append((index,))
+        if not isinstance(element, Bore):
+            found.append(Segment((place,)))
+            continue
+        if tubes:
+            joined.append(pending)
+        tubes.append(place)
+        pending = passes  # a bore that mixes does so at both of its ends
     end_run()
-    return groups
+    return found
 
 
-def filter_of(link: Link, flow: float, diffusion: Real) -> Filter:
-    """Return the link's own filter for a solute of this diffusion coefficient [m²/s] in it."""
-    return link.element.filter(Stream(flow, diffusion), read_here=link.read_here)
+def _is_never(weight: Real) -> bool:
+    return np.ndim(weight) == 0 and not weight
 
 
-def run_of(filters: Sequence[Filter]) -> TubeRun:
-    """Return the tubes among the filters of a segment as one run."""
-    return TubeRun(tuple(tube for tube in filters if isinstance(tube, Tube)))
+def filter_of(link: Link, stream: Stream, element: Element | None = None) -> Filter:
+    """Return the link's own filter for a stream, or that of an ``element`` in its place."""
+    return (element or link.element).filter(stream, read_here=link.read_here)
 
 
-def delays(instrument: Instrument, detector: Part) -> list[tuple[Part, float]]:
-    """Return the mean delay [s] of every link outside the columns, with its part."""
-    # no part's mean delay depends on diffusion
+def delays(instrument: Instrument, detector: Part, estimate: Estimate) -> list[tuple[Part, float]]:
+    """Return the mean delay [s] of every link outside the columns, with its part.
+
+    Of a solute of this diffusion coefficient: a loop that is washed out delays what diffuses slowly a little more.
+    """
     return [
-        (link.part, float(filter_of(link, instrument.flow, 1e-9).delay()))
+        (link.part, float(filter_of(link, instrument.stream(link.part, link.part.diffusion_of(estimate))).delay()))
         for link in links(instrument, detector)
         if not isinstance(link.element, Bed)
     ]
 
 
-def transit(instrument: Instrument, detector: Part) -> float:
+def transit(instrument: Instrument, detector: Part, estimate: Estimate) -> float:
     """Mean delay [s] of everything outside the columns, from the valve's turn to the record."""
-    return sum(delay for _, delay in delays(instrument, detector))
+    return sum(delay for _, delay in delays(instrument, detector, estimate))
 
 
 def dead_time(instrument: Instrument, detector: Part) -> float:
     """Hold-up time of the columns upstream of a detector [s]; 0 without a column."""
     beds = (link.element for link in links(instrument, detector))
-    return sum(bed.void_volume for bed in beds if isinstance(bed, Bed)) / instrument.flow
+    return sum(float(bed.void_volume) for bed in beds if isinstance(bed, Bed)) / instrument.flow

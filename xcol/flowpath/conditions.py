@@ -19,7 +19,7 @@ if TYPE_CHECKING:
     from xcol.flowpath.findings import Draft, Findings
     from xcol.flowpath.model import Part
 
-_DENSITY = 1000.0  # kg/m³, where no mobile phase is entered: for the Reynolds number only
+_DENSITY = 1000.0  # kg/m³, where no mobile phase is entered: for Reynolds and Dean numbers
 
 
 @dataclass(frozen=True)
@@ -126,7 +126,7 @@ def density_of(top: Draft, conditions: Conditions) -> float:
         return entered
     if conditions.phase is not None:
         return conditions.phase.density(conditions.reference)
-    top.findings.assume("density 1000 kg/m3", "density 1000 kg/m³, for the Reynolds number only")
+    top.findings.assume("density 1000 kg/m3", "density 1000 kg/m³, for Reynolds and Dean numbers only")
     return _DENSITY
 
 

@@ -1,31 +1,61 @@
 """What a part consists of, as the band meets it: sizes only, no flow and no solute yet.
 
 A part is one element or a few (a detector: cell, filter, data rate). Each makes its linear filter
-for a given stream; tubes and columns have a pressure drop as well.
+for a given stream, and knows what is unknown of it; tubes and columns have a pressure drop as well. The column's own
+element is in bed.py.
 """
 
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass
+from dataclasses import dataclass, field, replace
 from typing import TYPE_CHECKING, Protocol
 
+import numpy as np
+
 from xcol.filters.block import MeasuredBlock
-from xcol.filters.column import Column, PlateHeightCurve, reduced_velocity
+from xcol.filters.curved import bend_strength, dean_number
+from xcol.filters.series import InSeries
 from xcol.filters.tube import Tube
 from xcol.filters.volumes import Plug, TanksInSeries
-from xcol.flowpath.hydraulics import PressureRange, bed_drop, exactly, tube_drop
+from xcol.filters.washout import WashedOut
+from xcol.flowpath.hydraulics import PressureRange, exactly, reynolds_number, tube_drop
 
 if TYPE_CHECKING:
     from xcol.filters.interface import Filter, Real
+    from xcol.flowpath.unknowns import Unknown
+
+PLUG = 1 / 12  # variance of a plug over the square of its volume
+USUAL_CELL_LENGTH = 10e-3  # m, of the straight bore that is the worst case of a cell
 
 
 @dataclass(frozen=True)
 class Stream:
-    """What flows through an element: ``flow`` [m³/s] and the solute's ``diffusion`` [m²/s]."""
+    """What flows through an element: ``flow`` [m³/s], the solute's ``diffusion`` [m²/s], the liquid.
 
-    flow: Real
+    ``viscosity`` [Pa s] (None: not known, and bends are not computed) and ``density`` [kg/m³].
+    """
+
+    flow: float
     diffusion: Real
+    viscosity: Real | None = None
+    density: float = 1000.0
+
+    def at(self, flow: float) -> Stream:
+        """Return the same at another flow [m³/s]."""
+        return replace(self, flow=flow)
+
+    def dean(self, bore: Real, curvature: Real) -> Real:
+        """Dean number [-] in a bore [m] of this curvature [1/m]; 0 where the viscosity is not known."""
+        if self.viscosity is None:
+            return 0.0
+        return dean_number(reynolds_number(self.flow, bore, self.viscosity, self.density), bore, curvature)
+
+    def bend(self, bore: Real, curvature: Real) -> Real:
+        """De²·Sc [-] in a bore [m] of this curvature [1/m]; 0 where it is straight, or the viscosity is not known."""
+        if self.viscosity is None or (np.ndim(curvature) == 0 and not curvature):
+            return 0.0
+        return bend_strength(self.dean(bore, curvature), self.viscosity / (self.density * self.diffusion))
 
 
 class Element(Protocol):
@@ -37,7 +67,7 @@ class Element(Protocol):
         ...
 
     @property
-    def volume(self) -> float:
+    def volume(self) -> Real:
         """Swept volume [m³]."""
         ...
 
@@ -47,8 +77,13 @@ class Element(Protocol):
         ...
 
     @property
-    def remixes(self) -> bool:
-        """Whether the stream leaves it mixed across the bore, so that a run of tubes ends in it."""
+    def remixes(self) -> Real:
+        """Whether the stream leaves it mixed across the bore, so that a run of tubes ends in it: 1, or 0."""
+        ...
+
+    @property
+    def unknowns(self) -> tuple[Unknown, ...]:
+        """What nobody knows exactly of it."""
         ...
 
     def filter(self, stream: Stream, *, read_here: bool) -> Filter:
@@ -71,53 +106,42 @@ class WithoutDrop:
 class MixingVolume(WithoutDrop):
     """A volume in which the stream is mixed anew; what holds none mixes nothing."""
 
-    volume: float
+    volume: Real
 
     @property
-    def remixes(self) -> bool:
+    def remixes(self) -> Real:
         """Whether there is any volume to mix the stream in."""
-        return self.volume > 0
+        return np.where(np.asarray(self.volume) > 0, 1.0, 0.0) if np.ndim(self.volume) else float(self.volume > 0)
 
 
 @dataclass(frozen=True)
 class Injected(MixingVolume):
-    """The injected ``volume`` [m³], as a plug."""
+    """The injected ``volume`` [m³]: a plug, or what spreads more; ``spread`` is its variance over its volume²."""
 
-    volume: float
+    volume: Real
+    spread: Real = PLUG
+    unknowns: tuple[Unknown, ...] = field(default=(), compare=False, repr=False)
     contribution: str = "injection"
     of_signal: bool = False
 
     def filter(self, stream: Stream, *, read_here: bool) -> Filter:
-        """Return the plug."""
-        return Plug(self.volume, stream.flow)
+        """Return the plug, or tanks of the same variance where it spreads more."""
+        if np.ndim(self.spread) == 0 and self.spread == PLUG:
+            return Plug(self.volume, stream.flow)
+        return TanksInSeries(self.volume, stream.flow, 1 / self.spread)
 
 
-@dataclass(frozen=True)
-class Bore:
-    """A straight tube or bore, ``length`` and ``bore`` [m].
+class InBore:
+    """What has a length and a bore: straight, or bent all along with ``curvature`` 1/R [1/m]."""
 
-    ``layered``: its stream runs on into a neighbouring tube; otherwise it is remixed at both ends.
-    """
+    length: Real
+    bore: Real
+    curvature: Real
 
-    length: float
-    bore: float
-    layered: bool = True
-    contribution: str = "tube"
-    of_signal: bool = False
-
-    @property
-    def volume(self) -> float:
-        """Volume [m³]."""
-        return math.pi / 4 * self.bore**2 * self.length
-
-    @property
-    def remixes(self) -> bool:
-        """Whether it is remixed at its ends (and has a length at all)."""
-        return not self.layered and self.length > 0
-
-    def filter(self, stream: Stream, *, read_here: bool) -> Tube:
-        """Return the tube."""
-        return Tube(self.length, self.bore, stream.flow, stream.diffusion)
+    def tube(self, stream: Stream) -> Tube:
+        """Return it as a tube."""
+        strength = stream.bend(self.bore, self.curvature)
+        return Tube(self.length, self.bore, stream.flow, stream.diffusion, strength)
 
     def drop(self, flow: float, viscosity: float | None) -> PressureRange | None:
         """Pressure drop [Pa]; None without a viscosity."""
@@ -127,13 +151,89 @@ class Bore:
 
 
 @dataclass(frozen=True)
-class Mixed(MixingVolume):
-    """A mixing ``volume`` [m³] of this many ``tanks`` in series: a fitting, a mixer."""
+class Loop(InBore):
+    """A sample loop of ``length`` and ``bore`` [m]: full, and washed out, or filled in part with ``injected`` [m³].
 
-    volume: float
-    tanks: float
-    contribution: str
+    What is injected in part leaves as a plug, through the rest of the loop where it leaves the same way as it came
+    (``same_way`` 1; 0: the other way).
+    """
+
+    length: Real
+    bore: Real
+    injected: Real | None = None
+    same_way: Real = 0.0
+    curvature: Real = 0.0
+    unknowns: tuple[Unknown, ...] = field(default=(), compare=False, repr=False)
+    contribution: str = "injection"
     of_signal: bool = False
+
+    @property
+    def volume(self) -> Real:
+        """Injected volume [m³]."""
+        return math.pi / 4 * self.bore**2 * self.length if self.injected is None else self.injected
+
+    @property
+    def remixes(self) -> Real:
+        """Always, in the valve behind it."""
+        return 1.0
+
+    def filter(self, stream: Stream, *, read_here: bool) -> Filter:
+        """Return the washing-out of the whole loop, or the plug and the tube that it passes."""
+        whole = self.tube(stream)
+        if self.injected is None:
+            return WashedOut(whole)
+        plug = Plug(self.injected, stream.flow)
+        if np.ndim(self.same_way) == 0 and not self.same_way:
+            return plug
+        rest = np.maximum(self.length - self.injected / (math.pi / 4 * self.bore**2), 0.0) * self.same_way
+        return InSeries((plug, replace(whole, length=rest)))
+
+
+@dataclass(frozen=True)
+class Bore(InBore):
+    """A tube or bore, ``length`` and ``bore`` [m].
+
+    ``remixed`` 0: its stream runs on into a neighbouring tube; 1: it is mixed anew at both ends.
+    """
+
+    length: Real
+    bore: Real
+    remixed: Real = 0.0
+    curvature: Real = 0.0
+    unknowns: tuple[Unknown, ...] = field(default=(), compare=False, repr=False)
+    contribution: str = "tube"
+    of_signal: bool = False
+
+    @property
+    def volume(self) -> Real:
+        """Volume [m³]."""
+        return math.pi / 4 * self.bore**2 * self.length
+
+    @property
+    def remixes(self) -> Real:
+        """Whether it is remixed at its ends (and has a length at all)."""
+        return self.remixed * np.where(np.asarray(self.length) > 0, 1.0, 0.0)
+
+    def filter(self, stream: Stream, *, read_here: bool) -> Tube:
+        """Return the tube."""
+        return self.tube(stream)
+
+
+@dataclass(frozen=True)
+class Mixed(MixingVolume):
+    """A mixing ``volume`` [m³] of this many ``tanks`` in series: a fitting, a mixer; ``remixed`` as for a bore."""
+
+    volume: Real
+    tanks: Real
+    contribution: str
+    remixed: Real = 1.0
+    unknowns: tuple[Unknown, ...] = field(default=(), compare=False, repr=False)
+    of_signal: bool = False
+
+    @property
+    def remixes(self) -> Real:
+        """Whether it mixes the stream across the bore (and has any volume to do so)."""
+        return self.remixed * MixingVolume.remixes.fget(self)  # type: ignore[attr-defined,no-any-return]
 
     def filter(self, stream: Stream, *, read_here: bool) -> Filter:
         """Return the tanks."""
@@ -142,18 +242,34 @@ class Mixed(MixingVolume):
 
 @dataclass(frozen=True)
 class Cell(MixingVolume):
-    """A detector cell of this ``volume`` [m³]: a plug, or ``tanks`` in series where given."""
+    """A detector cell of this ``volume`` [m³]: a plug, ``tanks`` in series where given, or a straight bore.
 
-    volume: float
+    ``likeness`` 0 is the plug, 1 the bore of ``length`` [m] that is read over its volume (passed through: a tube),
+    between them the variance lies between theirs, each factor alike.
+    """
+
+    volume: Real
     tanks: float | None = None
+    length: float = USUAL_CELL_LENGTH
+    likeness: Real = 0.0
+    unknowns: tuple[Unknown, ...] = field(default=(), compare=False, repr=False)
     contribution: str = "cell"
     of_signal: bool = False
 
     def filter(self, stream: Stream, *, read_here: bool) -> Filter:
-        """Return the plug (its whole volume is passed on the way to a later detector) or tanks."""
+        """Return the filter; of a plug that is not read here, the whole volume is passed."""
         if self.tanks is not None:
             return TanksInSeries(self.volume, stream.flow, self.tanks)
-        return Plug(self.volume, stream.flow, passed_through=not read_here)
+        fixed = np.ndim(self.likeness) == 0
+        if fixed and not self.likeness:
+            return Plug(self.volume, stream.flow, passed_through=not read_here)
+        bore = np.sqrt(4 * self.volume / (math.pi * self.length))
+        tube = Tube(self.length, bore, stream.flow, stream.diffusion)
+        straight: Filter = WashedOut(tube) if read_here else tube
+        if fixed and self.likeness == 1:
+            return straight
+        relative = straight.variance() / (self.volume / stream.flow) ** 2
+        return TanksInSeries(self.volume, stream.flow, 1 / (PLUG * (relative / PLUG) ** self.likeness))
 
 
 @dataclass(frozen=True)
@@ -167,12 +283,13 @@ class Electronics(WithoutDrop):
     contribution: str
     period: float | None = None
     volume: float = 0.0
+    unknowns: tuple[Unknown, ...] = field(default=(), compare=False, repr=False)
     of_signal: bool = True
 
     @property
-    def remixes(self) -> bool:
+    def remixes(self) -> Real:
         """Never: the stream does not meet it."""
-        return False
+        return 0.0
 
     def filter(self, stream: Stream, *, read_here: bool) -> Filter:
         """Return the filter."""
@@ -185,101 +302,15 @@ class Block(WithoutDrop):
 
     measured: float
     volume: float
+    unknowns: tuple[Unknown, ...] = field(default=(), compare=False, repr=False)
     contribution: str = "block"
     of_signal: bool = False
 
     @property
-    def remixes(self) -> bool:
+    def remixes(self) -> Real:
         """Whether it spreads anything: then its inside is taken to mix the stream."""
-        return self.measured > 0
+        return float(self.measured > 0)
 
     def filter(self, stream: Stream, *, read_here: bool) -> Filter:
         """Return the block."""
         return MeasuredBlock(self.measured, self.volume, stream.flow)
-
-
-@dataclass(frozen=True)
-class Curves:
-    """The reduced plate height curve of a packing, with the best and the worst that is usual (None: not known)."""
-
-    usual: PlateHeightCurve
-    ends: tuple[PlateHeightCurve, PlateHeightCurve] | None = None
-
-
-@dataclass(frozen=True)
-class Bed:
-    """A column: ``bore``, ``length``, ``particle`` diameter [m], ``void_volume`` [m³], plates.
-
-    ``porosity`` is the interstitial one for the pressure drop, with its range; ``particle`` None
-    where it was not entered. ``plates`` hold at the flow ``plates_at`` [m³/s] (None: at any), and are
-    None where they come from the ``curve``.
-    """
-
-    bore: float
-    length: float
-    particle: float | None
-    plates: float | None
-    void_volume: float
-    porosity: tuple[float, float, float]  # value, smallest, largest
-    plates_at: float | None = None
-    curve: Curves | None = None  # needs the particle
-    porosity_from: str = ""  # source of an assumed interstitial porosity
-    contribution: str = "column"
-    of_signal: bool = False
-
-    @property
-    def porosity_is_assumed(self) -> bool:
-        """Whether the interstitial porosity is a usual one, not one that was entered."""
-        return self.porosity[1] < self.porosity[2]
-
-    @property
-    def volume(self) -> float:
-        """Void volume [m³]."""
-        return self.void_volume
-
-    @property
-    def remixes(self) -> bool:
-        """Always: a bed mixes the stream."""
-        return True
-
-    def filter(self, stream: Stream, *, read_here: bool) -> Filter:
-        """Return the column for an unretained band; ``retained`` gives it for the others."""
-        return self.retained(stream, 0.0)
-
-    def retained(self, stream: Stream, retention_factor: Real) -> Column:
-        """Return the column's filter for a band of this retention factor."""
-        return Column(self.void_volume / stream.flow, retention_factor, self.plates_for(stream))
-
-    def plates_for(self, stream: Stream) -> Real:
-        """Plate number [-] for this flow and solute: entered, scaled with the curve, or from it alone."""
-        if self.curve is None:
-            return self.plates if self.plates is not None else 1.0
-        usual = self._from(self.curve.usual, stream)
-        if self.plates is None or self.plates_at is None:
-            return usual
-        return self.plates * usual / self._from(self.curve.usual, Stream(self.plates_at, stream.diffusion))
-
-    def plates_range(self, stream: Stream) -> tuple[Real, Real] | None:
-        """Return the fewest and the most plates that such packings give; None where they were entered."""
-        if self.curve is None or self.curve.ends is None or self.plates is not None:
-            return None
-        best, worst = self.curve.ends
-        return self._from(worst, stream), self._from(best, stream)
-
-    def velocity(self, stream: Stream) -> Real:
-        """Reduced velocity ν of a solute [-], by L/t₀; needs the particle size."""
-        particle = self.particle or math.nan
-        return reduced_velocity(stream.flow, self.length, self.void_volume, particle, stream.diffusion)
-
-    def _from(self, curve: PlateHeightCurve, stream: Stream) -> Real:
-        return curve.plates(self.velocity(stream), self.length, self.particle or math.nan)
-
-    def drop(self, flow: float, viscosity: float | None) -> PressureRange | None:
-        """Pressure drop [Pa]; None without a particle size or a viscosity."""
-        if self.particle is None or viscosity is None:
-            return None
-        at, tightest, loosest = (
-            float(bed_drop(flow, self.length, self.bore, viscosity, self.particle, porosity))
-            for porosity in self.porosity
-        )
-        return PressureRange(at, loosest, tightest)

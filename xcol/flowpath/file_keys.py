@@ -2,8 +2,13 @@
 
 from __future__ import annotations
 
+from typing import TYPE_CHECKING
+
 from xcol.flowpath.keys import Choice, Key, Later, Measure, Number, Table, Text, Texts
-from xcol.units import DENSITY, DIFFUSION, FLOW, MOLAR_MASS, PRESSURE, TEMPERATURE, TIME, VISCOSITY, VOLUME
+from xcol.units import DENSITY, DIFFUSION, FLOW, LENGTH, MOLAR_MASS, PRESSURE, TEMPERATURE, TIME, VISCOSITY, VOLUME
+
+if TYPE_CHECKING:
+    from xcol.flowpath.findings import Draft
 
 # 3e-8 m²/s: a coefficient in cm²/s with the unit m²/s is above, everything liquid below.
 DIFFUSIONS = Measure(DIFFUSION, 1e-14, 3e-8)
@@ -12,6 +17,10 @@ FLOWS = Measure(FLOW, 1e-14, 1e-5)
 TEMPERATURES = Measure(TEMPERATURE, 233.15, 523.15)
 VISCOSITIES = Measure(VISCOSITY, 1e-5, 1.0)
 MOBILE_PHASE = Key("mobile_phase", Text(200), 'liquids in volume parts, "acetonitrile/water 60:40"')
+
+_BENDS = Measure(LENGTH, 5e-4, 10.0)
+BEND_RADIUS = Key("bend_radius", _BENDS, "radius at which tubes are bent, all along")
+COIL_DIAMETER = Key("coil_diameter", Measure(LENGTH, 1e-3, 20.0), "diameter of the coil that tubes are wound to")
 
 MOLECULES = (
     ("protein", "globular"),
@@ -47,8 +56,8 @@ FILE_KEYS = {
         Key("sample_solvent", Later(), "solvent of the sample"),
         Key("require", Later(), "requirement to be met"),
         Key("runs", Later("one file for each run"), "several runs"),
-        Key("bend_radius", Later(), "radius of the tubes' bends"),
-        Key("coil_diameter", Later(), "diameter of the tubes' coils"),
+        BEND_RADIUS,
+        COIL_DIAMETER,
     )
 }
 
@@ -75,6 +84,17 @@ PEAK_KEYS = {
         Key("k_in_sample", Later(), "retention factor in the sample's solvent"),
     )
 }
+
+
+def curvature_of(draft: Draft) -> float | None:
+    """Return the curvature 1/R [1/m] that a part or the file enters, None where it says nothing."""
+    radius, diameter = draft.number("bend_radius"), draft.number("coil_diameter")
+    if radius is not None and diameter is not None:
+        draft.fault("coil_diameter", "bend_radius or coil_diameter, not both", "leave one out")
+    if radius is None and diameter is not None:
+        radius = diameter / 2
+    return None if radius is None else 1 / radius
+
 
 # What people write in place of a key or a kind.
 OTHER_WORDS = {

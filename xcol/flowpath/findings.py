@@ -66,6 +66,7 @@ class Draft:
     values: dict[str, Value] = field(default_factory=dict)
     written: dict[str, str] = field(default_factory=dict)  # values as typed, for messages
     inner: dict[str, Draft] = field(default_factory=dict)  # its tables
+    lists: dict[str, list[Draft]] = field(default_factory=dict)  # its lists of tables
     within: str = ""  # the table it is, "at." for instance
     row: Record | None = None  # the catalog row that its name stands for
 
@@ -82,11 +83,16 @@ class Draft:
     def texts(self, key: str) -> tuple[str, ...]:
         """Return a list of texts, empty where the key was not given."""
         value = self.values.get(key)
-        return value if isinstance(value, tuple) else ()
+        return tuple(one for one in value if isinstance(one, str)) if isinstance(value, tuple) else ()
+
+    def sizes(self, key: str) -> tuple[float, ...]:
+        """Return sizes in SI units, empty where the key was not given."""
+        value = self.values.get(key)
+        return tuple(one for one in value if isinstance(one, float)) if isinstance(value, tuple) else ()
 
     def table(self, key: str) -> Draft:
         """Return the draft of an inner table of this part or peak; faults name the table's place."""
-        line = self.lines.get(key) or self.lines.get("")
+        line = self.lines.get(key.partition("[")[0]) or self.lines.get("")
         lines = {"": line} if line else {}
         within = f"{self.within}{key}."
         return Draft(self.kind, self.name, self.position, self.file, lines, self.findings, self.catalogs, within=within)

@@ -25,7 +25,7 @@ from xcol.units import (
     write,
 )
 
-Value = float | str | bool | tuple[str, ...]
+Value = float | str | bool | tuple[str, ...] | tuple[float, ...]
 
 
 class Reader(Protocol):
@@ -213,6 +213,28 @@ class Table:
 
 
 @dataclass(frozen=True)
+class Tables:
+    """A list of inner tables, each with these keys; or one table for a list of one."""
+
+    keys: tuple[Key, ...]
+    example: str
+
+    def __call__(self, raw: object) -> Value:
+        """Raise ``UnitError`` for what is not a list of tables; the keys are read by whoever has the draft."""
+        if not tables_in(raw):
+            raise UnitError(described(raw), "a list of tables in braces", self.example)
+        return True
+
+
+def tables_in(raw: object) -> list[dict[str, object]]:
+    """Return the tables of a list, or of one table; empty where it is neither, or has none."""
+    listed = [raw] if isinstance(raw, dict) else raw
+    if not isinstance(listed, list) or not all(isinstance(one, dict) for one in listed):
+        return []
+    return listed
+
+
+@dataclass(frozen=True)
 class Later:
     """A key that the format has and that this version does not compute yet."""
 
@@ -228,27 +250,53 @@ class Later:
 
 
 @dataclass(frozen=True)
-class Only:
-    """A value of which only some forms are computed yet; ``refuses`` says which are not."""
+class Sizes:
+    """One or more sizes in one text: ``split`` parts them, ``measures`` say what each may be."""
 
-    inner: Reader
-    refuses: Callable[[object], bool]
-    instead: str
+    split: Callable[[str], tuple[float, ...]]
+    measures: tuple[Measure, ...]
 
-    def __call__(self, raw: object) -> Value:
-        """Return what ``inner`` reads."""
-        if self.refuses(raw):
-            return Later(self.instead)(raw)
-        return self.inner(raw)
+    def __call__(self, raw: object) -> tuple[float, ...]:
+        """Return the sizes [SI] that there are, in their order."""
+        if not isinstance(raw, str):
+            return (self.measures[0](raw),)
+        sizes = self.split(raw)
+        for size, measure in zip(sizes, self.measures, strict=False):
+            measure.check(size, raw)
+        return sizes
+
+
+class Tolerance:
+    """How far a size may be off, as a share of it."""
+
+    def __call__(self, raw: object) -> float:
+        """Return the share; a sign in front of it is read over."""
+        if is_huge(raw):
+            raise UnitError(described(raw), "a share of the size", '"5 %"')
+        text = re.sub(r"^\s*(?:±|\+/-|\+-)\s*", "", as_typed(raw))
+        try:
+            value = parse(text, RATIO)
+        except UnitError as error:
+            raise UnitError(described(raw), "a share of the size", f'"5 %" ({error.suggestion})') from None
+        if not 0 <= value <= 0.5:
+            raise UnitError(
+                described(raw), "a share of the size, from 0 to 50 %", f'"{value:g} %", if per cent was meant'
+            )
+        return value
+
+
+class YesOrNo:
+    """True or false."""
+
+    def __call__(self, raw: object) -> bool:
+        """Return it."""
+        if not isinstance(raw, bool):
+            raise UnitError(described(raw), "true or false, without quotes", "false")
+        return raw
 
 
 def _si(number: float, unit: str, quantity: Quantity) -> float:
     return parse(f"{number:.17g} {unit}", quantity)
-
-
-def yes(raw: object) -> bool:
-    """Return true: the reader of a key of which only ``true`` is computed yet."""
-    return True
 
 
 def as_typed(raw: object) -> str:

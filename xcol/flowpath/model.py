@@ -5,12 +5,14 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
-from xcol.flowpath.elements import Bed
+from xcol.flowpath.bed import Bed
+from xcol.flowpath.elements import Stream
 
 if TYPE_CHECKING:
     from collections.abc import Iterable
 
     from xcol.errors import Place
+    from xcol.filters.interface import Real
     from xcol.flowpath.elements import Element
     from xcol.liquids.estimate import Estimate
     from xcol.units import Quantity
@@ -54,6 +56,10 @@ class Part:
     viscosity: Estimate | None = None  # Pa s, of what flows at this temperature
     mobility: float = 1.0  # T/η here over T/η at the columns: what an estimated D changes by
 
+    def diffusion_of(self, estimate: Estimate) -> float:
+        """Return a diffusion coefficient [m²/s] at this part's temperature; an entered one is the same everywhere."""
+        return estimate.value if estimate.entered else estimate.value * self.mobility
+
     @property
     def label(self) -> str:
         """Name for messages: 'tube "valve to column"', or 'tube (part 2)' without a name."""
@@ -77,8 +83,8 @@ class Peak:
         return self.estimate.value
 
     def diffusion_in(self, part: Part) -> float:
-        """Diffusion coefficient [m²/s] at a part's temperature; one that was entered is the same everywhere."""
-        return self.diffusion if self.estimate.entered else self.diffusion * part.mobility
+        """Diffusion coefficient [m²/s] at a part's temperature."""
+        return part.diffusion_of(self.estimate)
 
 
 @dataclass(frozen=True)
@@ -108,6 +114,10 @@ class Instrument:
     def injection(self) -> int:
         """Position of the injection."""
         return next(part.position for part in self.parts if part.kind == "inject")
+
+    def stream(self, part: Part, diffusion: Real) -> Stream:
+        """Return what flows through a part, with a solute of this diffusion coefficient [m²/s] there."""
+        return Stream(self.flow, diffusion, part.viscosity.value if part.viscosity else None, self.density)
 
     @property
     def outside(self) -> float | None:

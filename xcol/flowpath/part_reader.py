@@ -12,7 +12,7 @@ from xcol.errors import nearest
 from xcol.flowpath import slips
 from xcol.flowpath.file_keys import FILE_KEYS, OTHER_WORDS
 from xcol.flowpath.findings import Draft, Findings
-from xcol.flowpath.keys import Key, Later, Measure, Table, as_typed
+from xcol.flowpath.keys import Key, Later, Measure, Sizes, Table, Tables, as_typed, tables_in
 from xcol.flowpath.kinds import KINDS, KINDS_LATER, Kind
 from xcol.flowpath.model import Part, Reading
 from xcol.units import UnitError, described, plain, quote
@@ -74,12 +74,20 @@ def read_keys(raw: dict[str, object], keys: Iterable[Key], draft: Draft) -> None
             draft.findings.fault_of(draft.place(key.name), error)
             continue
         if isinstance(key.read, Table):
-            inner = draft.table(key.name)
-            table = raw[key.name]
-            if isinstance(table, dict):
-                read_keys(table, key.read.keys, inner)
-                refuse_unknown(table, key.read.keys, (), inner)
-            draft.inner[key.name] = inner
+            draft.inner[key.name] = _inner(key.name, tables_in(raw[key.name])[0], key.read.keys, draft)
+        elif isinstance(key.read, Tables):
+            draft.lists[key.name] = [
+                _inner(f"{key.name}[{number}]", table, key.read.keys, draft)
+                for number, table in enumerate(tables_in(raw[key.name]), start=1)
+            ]
+
+
+def _inner(name: str, table: dict[str, object], keys: Iterable[Key], draft: Draft) -> Draft:
+    """Return the draft of an inner table, read."""
+    inner = draft.table(name)
+    read_keys(table, keys, inner)
+    refuse_unknown(table, keys, (), inner)
+    return inner
 
 
 def refuse_unknown(raw: dict[str, object], keys: Iterable[Key], others: tuple[str, ...], draft: Draft) -> None:
@@ -262,8 +270,13 @@ def _name(raw: dict[str, object], kind: Kind) -> str:
 def _readings(kind: Kind, draft: Draft) -> Iterable[Reading]:
     for key in kind.all_keys:
         value = draft.values.get(key.name)
-        if key.name in draft.inner:
-            shown = ", ".join(f"{word} = {typed}" for word, typed in draft.inner[key.name].written.items())
-            yield Reading(key.name, shown)
+        inner = [draft.inner[key.name]] if key.name in draft.inner else draft.lists.get(key.name, [])
+        if inner:
+            shown = (", ".join(f"{word} = {typed}" for word, typed in one.written.items()) for one in inner)
+            yield Reading(key.name, "; ".join(shown))
+        elif isinstance(key.read, Sizes):
+            names = (key.name, f"{key.name} bore")
+            for name, size, measure in zip(names, draft.sizes(key.name), key.read.measures, strict=False):
+                yield Reading(name, size, measure.quantity)
         elif key.name != "name" and isinstance(value, float | int | str):
             yield Reading(key.name, value, key.quantity)

@@ -150,7 +150,7 @@ def _peak(draft: Draft, instrument: Instrument, estimate: Estimate) -> Peak | No
         retention = volume / instrument.flow
     k = draft.number("k")
     if retention is not None:
-        k = _k_from(retention, draft, instrument)
+        k = _k_from(retention, draft, instrument, estimate)
         if k is None:
             return None
     if k is not None and k > 100:
@@ -159,10 +159,10 @@ def _peak(draft: Draft, instrument: Instrument, estimate: Estimate) -> Peak | No
     return Peak(name, k, estimate, draft.place(), plates, retention)
 
 
-def _k_from(retention: float, draft: Draft, instrument: Instrument) -> float | None:
+def _k_from(retention: float, draft: Draft, instrument: Instrument, estimate: Estimate) -> float | None:
     """Return k from the recorded retention time: the mean delay outside the columns comes off."""
     first = instrument.detectors[0]
-    delay, hold_up = transit(instrument, first), dead_time(instrument, first)
+    delay, hold_up = transit(instrument, first, estimate), dead_time(instrument, first)
     key = "retention" if "retention" in draft.values else "elution_volume"
     if not hold_up:
         draft.fault(
@@ -178,7 +178,7 @@ def _k_from(retention: float, draft: Draft, instrument: Instrument) -> float | N
     expected = f"at least {write(least, 's', TIME, 4)} ({write(least, 'min', TIME, 4)})"
     if key == "elution_volume":
         expected = f"at least {least * instrument.flow * 1e6:.4g} mL"
-    slowest = max(delays(instrument, first), key=lambda pair: pair[1])
+    slowest = max(delays(instrument, first, estimate), key=lambda pair: pair[1])
     draft.fault(
         key,
         f"{expected}: {write(hold_up, 's', TIME)} of hold-up, and {write(delay, 's', TIME)} outside the column, "

@@ -3,8 +3,12 @@
 from __future__ import annotations
 
 import re
+from typing import TYPE_CHECKING
 
-from xcol.units import LENGTH, UnitError, missing_unit, parse, quote, split
+from xcol.units import LENGTH, VOLUME, UnitError, missing_unit, parse, quote, split
+
+if TYPE_CHECKING:
+    from xcol.flowpath.findings import Draft
 
 # "x" separates sizes only before a number, so that no unit is ever cut; a comma separates unless
 # it is a decimal comma, which has a digit on either side.
@@ -36,6 +40,26 @@ def tube_size(text: str) -> dict[str, float]:
     if small == 0:  # no length, rather than no bore
         small, large = large, small
     return {"length": large, "bore": small}
+
+
+def loop_size(text: str) -> tuple[float, ...]:
+    """Read a loop's volume [m³] and, where given, its bore [m].
+
+    >>> loop_size("20 uL x 0.5 mm")
+    (2e-08, 0.0005)
+    """
+    expected = 'the loop\'s volume, or its volume and bore, as in "20 uL x 0.5 mm"'
+    sizes = _sizes(text, expected)
+    if len(sizes) > 2:
+        raise UnitError(quote(text), expected, "in this form; anything else can go into note")
+    first = parse(sizes[0], VOLUME)
+    return (first,) if len(sizes) == 1 else (first, parse(sizes[1], LENGTH))
+
+
+def loop_of(draft: Draft) -> tuple[float | None, float | None]:
+    """Return volume [m³] and bore [m] of the loop of an injection, None where they are not given."""
+    sizes = draft.sizes("loop")
+    return (sizes[0] if sizes else None), (sizes[1] if len(sizes) > 1 else None)
 
 
 def column_size(text: str) -> dict[str, float]:

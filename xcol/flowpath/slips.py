@@ -11,9 +11,10 @@ from dataclasses import replace
 from typing import TYPE_CHECKING
 
 from xcol.catalog_kinds import MATERIALS, SOLVENTS, TUBING
-from xcol.flowpath.elements import Bore, Cell, Stream
+from xcol.flowpath.elements import Cell, InBore
 from xcol.flowpath.hydraulics import LAMINAR_LIMIT, reynolds_number
 from xcol.flowpath.model import beds_of
+from xcol.flowpath.shorthand import loop_of
 from xcol.units import FLOW, LENGTH, PRESSURE, TEMPERATURE, VISCOSITY, VOLUME, significant, write
 
 if TYPE_CHECKING:
@@ -93,7 +94,7 @@ def of_scaled_plates(instrument: Instrument, peaks: Iterable[Peak], findings: Fi
             most, place = bed.length / bed.particle, replace(part.place, key="plates_at")
             held = write(bed.plates_at, "mL/min", FLOW)
             here = write(instrument.flow, "mL/min", FLOW)
-            streams = (Stream(instrument.flow, peak.diffusion_in(part)) for peak in peaks)
+            streams = (instrument.stream(part, peak.diffusion_in(part)) for peak in peaks)
             plates = max((float(bed.plates_for(stream)) for stream in streams), default=0.0)
             if plates > most:
                 findings.fault(
@@ -109,7 +110,7 @@ def of_scaled_plates(instrument: Instrument, peaks: Iterable[Peak], findings: Fi
 def flow_in_columns(flow: float, parts: Iterable[Part], place: Place, findings: Findings) -> None:
     """Report a flow that is certainly wrong for a column, and warn of one that is odd."""
     for bed in beds_of(parts):
-        velocity = bed.length * flow / bed.void_volume
+        velocity = bed.length * flow / float(bed.void_volume)
         shown = f"{significant(velocity * 1e3)} mm/s in the {bed.bore * 1e3:g} mm column"
         if not SLOWEST <= velocity <= FASTEST:
             fast = velocity > FASTEST
@@ -145,7 +146,7 @@ def plates_fault(draft: Draft, key: str, plates: float, length: float, particle:
 
 
 def _inject(draft: Draft) -> None:
-    volume, loop = draft.number("volume"), draft.number("loop")
+    volume, (loop, _) = draft.number("volume"), loop_of(draft)
     if volume is not None and loop is not None and volume > loop * (1 + 1e-9):
         draft.fault(
             "loop",
@@ -299,8 +300,8 @@ _CHECKS: dict[str, Callable[[Draft], None]] = {
 
 
 def _injection_and_columns(instrument: Instrument, findings: Findings) -> None:
-    injected = instrument.parts[instrument.injection - 1].elements[0].volume
-    void = sum(bed.void_volume for bed in instrument.beds)
+    injected = float(instrument.parts[instrument.injection - 1].elements[0].volume)
+    void = sum(float(bed.void_volume) for bed in instrument.beds)
     if void and injected > void:
         findings.warn(
             f"{write(injected, 'uL', VOLUME)} injected is more than the column's void volume, "
@@ -309,13 +310,14 @@ def _injection_and_columns(instrument: Instrument, findings: Findings) -> None:
 
 
 def _cells_and_columns(instrument: Instrument, findings: Findings) -> None:
-    void = sum(bed.void_volume for bed in instrument.beds)
+    void = sum(float(bed.void_volume) for bed in instrument.beds)
     for part in instrument.detectors:
         for cell in part.elements:
             if isinstance(cell, Cell) and void and cell.volume > 0.3 * void:
+                size = write(float(cell.volume), "uL", VOLUME)
                 findings.warn(
-                    f"{part.label}: a cell of {write(cell.volume, 'uL', VOLUME)} is large for a column with a void "
-                    f"volume of {write(void, 'uL', VOLUME)}: is the unit meant?"
+                    f"{part.label}: a cell of {size} is large for a column with a void volume of "
+                    f"{write(void, 'uL', VOLUME)}: is the unit meant?"
                 )
 
 
@@ -351,7 +353,7 @@ def _viscosity(instrument: Instrument, viscosity: Estimate, findings: Findings) 
         findings.warn(f"a viscosity of {shown} is unusual: 0.2 to 3 mPa s is usual; Pa s or mPa s?")
     for part in instrument.parts:
         here = part.viscosity.value if part.viscosity else viscosity.value
-        for bore in (element.bore for element in part.elements if isinstance(element, Bore)):
+        for bore in (element.bore for element in part.elements if isinstance(element, InBore)):
             number = float(reynolds_number(instrument.flow, bore, here, instrument.density))
             if number > LAMINAR_LIMIT:
                 findings.warn(

@@ -10,9 +10,10 @@ from xcol import __version__
 from xcol.answers.doubt import over_diffusion
 
 if TYPE_CHECKING:
-    from xcol.answers.budget import Budget, DetectorBudget, PeakBudget, Row
+    from xcol.answers.budget import Budget, DetectorBudget, PeakBudget
     from xcol.answers.doubt import Doubt
     from xcol.answers.pressure import PressureRow
+    from xcol.answers.rows import Row
     from xcol.flowpath.hydraulics import PressureRange
 
 SCHEMA = "xcol.budget/1"
@@ -98,6 +99,7 @@ def _peak(answer: Budget, peak: PeakBudget, doubt: Doubt | None, delay: float) -
         "name": peak.peak.name,
         "k": peak.peak.k,
         "retention_s": peak.retention,
+        "delay_s": peak.delay,
         "diffusion_m2_s": peak.peak.diffusion,
         "diffusion_from": peak.peak.estimate.stated,
         "diffusion_uncertainty": None if peak.peak.estimate.entered else peak.peak.estimate.uncertainty,
@@ -115,14 +117,14 @@ def _peak(answer: Budget, peak: PeakBudget, doubt: Doubt | None, delay: float) -
         "sigma_total_s": peak.sigma,
         "width_half_s": peak.width_half,
         "width_base_s": 4 * peak.sigma,
-        "extra_volume_uL": delay * answer.instrument.flow * 1e9,
+        "extra_volume_uL": peak.delay * answer.instrument.flow * 1e9,
         "points_4sigma": peak.points,
         "parts": [_row(answer, row) for row in peak.rows],
     }
 
 
 def _row(answer: Budget, row: Row) -> dict[str, Any]:
-    longtube = row.longtube_variance
+    tube = row.tube
     return {
         "part": row.part.kind,
         "name": row.part.name or row.part.kind,
@@ -130,14 +132,16 @@ def _row(answer: Budget, row: Row) -> dict[str, Any]:
         "contribution": row.contribution,
         "side": row.side,
         "volume_uL": row.volume * 1e9,
-        "tstar": row.t_star,
-        "bend_De2Sc": None,
+        "tstar": tube.t_star if tube else None,
+        "bend_De2Sc": tube.strength if tube else None,
         "compression": row.compression,
         "variance_uL2": answer.in_uL2(row.variance),
-        "variance_low_uL2": None,
-        "variance_high_uL2": None,
+        "variance_low_uL2": answer.in_uL2(row.low),
+        "variance_high_uL2": answer.in_uL2(row.high),
+        "low_because": row.at_low,
+        "high_because": row.at_high,
         "variance_s2": row.variance,
-        "variance_longtube_uL2": answer.in_uL2(longtube) if longtube is not None else None,
+        "variance_longtube_uL2": answer.in_uL2(tube.longtube_variance) if tube else None,
         "share_extra": row.share_extra,
         "share_total": row.share_total,
         "plates_kept_without": row.plates_kept_without,

@@ -10,7 +10,8 @@ from xcol.report.sheet import Grid
 from xcol.units import significant
 
 if TYPE_CHECKING:
-    from xcol.answers.budget import Budget, ColumnBand, DetectorBudget, PeakBudget, Row
+    from xcol.answers.budget import Budget, ColumnBand, DetectorBudget, PeakBudget
+    from xcol.answers.rows import Row
     from xcol.flowpath.hydraulics import PressureRange
 
 MOST_ROWS = 7  # of parts on the first screen; with more, the small ones fold
@@ -88,12 +89,12 @@ def detail_grid(answer: Budget, peak: PeakBudget, *, wide: bool) -> Grid:
     columns: list[tuple[str, bool, list[str]]] = [
         ("part", False, [contribution_label(row.part, row.contribution) for row in peak.rows]),
         ("held, µL", True, [_held(row) for row in peak.rows]),
-        ("t*", True, [_or_dash(row.t_star) for row in peak.rows]),
+        ("t*", True, [_or_dash(row.tube.t_star if row.tube else None) for row in peak.rows]),
         ("µL²", True, [three(answer.in_uL2(row.variance)) for row in peak.rows]),
         (
             "long-tube",
             True,
-            [_or_dash(row.longtube_variance and answer.in_uL2(row.longtube_variance)) for row in peak.rows],
+            [_or_dash(answer.in_uL2(row.tube.longtube_variance) if row.tube else None) for row in peak.rows],
         ),
         ("of added", True, [percent(row.share_extra) for row in peak.rows]),
         ("if gone", True, [percent(row.plates_kept_without) for row in peak.rows]),

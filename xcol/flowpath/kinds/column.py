@@ -2,20 +2,24 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
 from typing import TYPE_CHECKING
 
 from xcol.catalog_kinds import COLUMNS, PACKINGS, VELOCITIES
 from xcol.filters.column import PlateHeightCurve, void_volume
-from xcol.flowpath.elements import Bed, Curves
+from xcol.flowpath.bed import Bed, Curves
 from xcol.flowpath.file_keys import FLOWS
 from xcol.flowpath.findings import Draft
 from xcol.flowpath.keys import Choice, Key, Later, Measure, Number, Table, Text, Value
 from xcol.flowpath.kinds.table import DROP, Elements, Kind, must
+from xcol.flowpath.kinds.tolerances import plates_of_column, quality_of_packing, refuse_tolerances, tolerance_of
 from xcol.flowpath.shorthand import column_size, length_first
+from xcol.flowpath.unknowns import Unknown, scaling
 from xcol.units import LENGTH, RATIO, VOLUME, significant
 
 if TYPE_CHECKING:
     from xcol.catalog_records import ColumnFormat, Packing
+    from xcol.filters.interface import Real
 
 _KNOX_EXAMPLE = "knox = { A = 0.9, B = 1.75, C = 0.065 }"
 
@@ -48,7 +52,34 @@ def _column(draft: Draft) -> Elements:
         curve = _curve(draft, packing, total / porosity[0])
         if curve is None or not _particle_is_known(draft):
             return ()
-    return (Bed(bore, length, draft.number("particle"), plates, void, porosity, plates_at, curve, packing.source),)
+    unknowns = (
+        *(
+            (plates_of_column(draft),)
+            if plates is not None
+            else (quality_of_packing(),)
+            if curve and curve.ends
+            else ()
+        ),
+        *_tolerances(draft),
+    )
+    particle = draft.number("particle")
+    return (Bed(bore, length, particle, plates, void, porosity, plates_at, curve, packing.source, unknowns=unknowns),)
+
+
+def _tolerances(draft: Draft) -> tuple[Unknown, ...]:
+    """Return what the tolerances that the file enters leave open of the void volume; none is assumed."""
+    refuse_tolerances(draft, *(("volume",) if "void_volume" in draft.values else ("bore", "length")))
+
+    def square(element: Bed, factor: Real) -> Bed:
+        return replace(element, void_volume=element.void_volume * factor**2)
+
+    puts = {"bore": square, "length": scaling("void_volume"), "volume": scaling("void_volume")}
+    return tuple(
+        unknown
+        for size, put in puts.items()
+        if f"{size}_tolerance" in draft.values
+        for unknown in tolerance_of(draft, size, put)
+    )
 
 
 def _packing(draft: Draft) -> Packing | None:

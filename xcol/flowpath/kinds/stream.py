@@ -5,9 +5,10 @@ from __future__ import annotations
 import math
 
 from xcol.filters.volumes import dead_gap_volume
-from xcol.flowpath.elements import Block, Bore, Injected, Mixed
+from xcol.flowpath.elements import Block, Bore, Injected, Loop, Mixed
+from xcol.flowpath.file_keys import BEND_RADIUS, COIL_DIAMETER, curvature_of
 from xcol.flowpath.findings import Draft
-from xcol.flowpath.keys import Key, Later, Measure, Only, Text, yes
+from xcol.flowpath.keys import Choice, Key, Later, Measure, Sizes, Text, YesOrNo
 from xcol.flowpath.kinds.table import (
     DROP,
     TANKS,
@@ -19,13 +20,53 @@ from xcol.flowpath.kinds.table import (
     must,
     one_size,
 )
-from xcol.flowpath.shorthand import tube_size
+from xcol.flowpath.kinds.tolerances import (
+    bend,
+    bore_keeping_volume,
+    injection_form,
+    mixing_of_volume,
+    refuse_tolerances,
+    remixing,
+    tolerance_of,
+    way_of_emptying,
+)
+from xcol.flowpath.shorthand import loop_of, loop_size, tube_size
+from xcol.flowpath.unknowns import Unknown, scaling
 from xcol.units import FLOW, LENGTH, VARIANCE, VOLUME, write
 
 
 def _inject(draft: Draft) -> Elements:
-    return (Injected(must(draft, "volume")),)
+    volume, (loop, bore) = must(draft, "volume"), loop_of(draft)
+    emptied = draft.text("emptied")
+    if loop is None and (given := [key for key in ("filled", "emptied") if key in draft.values]):
+        draft.fault(given[0], "the loop with it", 'loop = "20 uL x 0.5 mm", its volume and bore')
+        return ()
+    in_part = loop is not None and volume < loop * (1 - 1e-9)
+    if draft.text("filled") == "full" and in_part:
+        draft.fault("filled", "the whole loop injected", 'filled = "part", or inject what the loop holds')
+    if in_part and emptied == SAME_WAY and bore is None:
+        draft.fault("emptied", "the loop's bore with it", 'loop = "20 uL x 0.5 mm"')
+    refuse_tolerances(draft, "volume", *(("bore",) if bore else ()))
+    sizes = tolerance_of(draft, "volume", scaling("volume"))
+    if loop is None or bore is None:
+        form = () if in_part and emptied == REVERSED else (injection_form(),)
+        return (Injected(volume, unknowns=(*form, *sizes)),)
+    length = loop / (math.pi / 4 * bore**2)
+    curvature, bends = bend(None)
+    bores = tolerance_of(draft, "bore", bore_keeping_volume)
+    if in_part:
+        sizes = tolerance_of(draft, "volume", scaling("injected"))
+        rest = f"{write(loop - volume, 'uL', VOLUME)} of the loop"
+        ways = () if emptied else (way_of_emptying(rest),)
+        if emptied == REVERSED:
+            bends = bores = ()
+        same_way = float(emptied == SAME_WAY)
+        return (Loop(length, bore, volume, same_way, curvature, (*ways, *bends, *bores, *sizes)),)
+    sizes = tolerance_of(draft, "volume", scaling("length"))
+    return (Loop(length, bore, None, 0.0, curvature, (*bends, *bores, *sizes)),)
 
+
+SAME_WAY, REVERSED = "same way", "reversed"
 
 INJECT = Kind(
     name="inject",
@@ -33,17 +74,15 @@ INJECT = Kind(
     example='{ inject = "20 uL" }',
     keys=(
         Key("volume", VOLUMES, "injected volume"),
+        Key("loop", Sizes(loop_size, (VOLUMES, TUBE_BORES)), "volume that the loop holds, and its bore"),
         Key(
-            "loop",
-            Only(
-                VOLUMES,
-                lambda raw: isinstance(raw, str) and any(sign in raw.lower() for sign in "x×*,;"),
-                'the loop\'s volume alone, loop = "20 uL"',
-            ),
-            "volume that the loop holds",
+            "filled", Choice(("full", "part"), (("partial", "part"), ("partly", "part"))), "loop filled in full or part"
         ),
-        Key("filled", Later(), "loop filled in full or in part"),
-        Key("emptied", Later(), "loop emptied the same way or reversed"),
+        Key(
+            "emptied",
+            Choice((SAME_WAY, REVERSED), (("same", SAME_WAY), ("same-way", SAME_WAY), ("backwards", REVERSED))),
+            "which way a loop filled in part is emptied: as it was filled, or the other way",
+        ),
         Key("fraction", Later("the injected volume"), "fraction of a first dimension"),
         Key("loop_in_line", Later(), "loop that stays in line"),
     ),
@@ -57,9 +96,23 @@ INJECT = Kind(
 def _tube(draft: Draft) -> Elements:
     bore = must(draft, "bore")
     length = draft.number("length")
+    curvature, bends = bend(curvature_of(draft))
     if length is None:
         length = must(draft, "volume") / (math.pi / 4 * bore**2)
-    return (Bore(length, bore),)
+        refuse_tolerances(draft, "bore", "volume")
+        volumes = tolerance_of(draft, "volume", scaling("length"))
+        sizes = (*tolerance_of(draft, "bore", bore_keeping_volume), *volumes)
+    else:
+        refuse_tolerances(draft, "bore", "length")
+        sizes = _bore_and_length(draft)
+    if curvature and 2 * bore * curvature > 1:
+        key = "bend_radius" if "bend_radius" in draft.values else "coil_diameter"
+        draft.fault(key, f"a bend much wider than the bore, {write(bore, 'mm', LENGTH)}", "check its unit")
+    return (Bore(length, bore, 0.0, curvature, (*bends, *sizes)),)
+
+
+def _bore_and_length(draft: Draft) -> tuple[Unknown, ...]:
+    return (*tolerance_of(draft, "bore", scaling("bore")), *tolerance_of(draft, "length", scaling("length")))
 
 
 TUBE = Kind(
@@ -72,8 +125,8 @@ TUBE = Kind(
         Key("volume", VOLUMES, "volume, in place of the length"),
         Key("material", Text(60), "material, for your own record"),
         DROP,
-        Key("bend_radius", Later(), "radius of its bends"),
-        Key("coil_diameter", Later(), "diameter of its coil"),
+        BEND_RADIUS,
+        COIL_DIAMETER,
     ),
     ways=(("length", "bore"), ("volume", "bore")),
     size=tube_size,
@@ -83,7 +136,8 @@ TUBE = Kind(
 
 
 def _fitting(draft: Draft) -> Elements:
-    tanks = draft.number("tanks")
+    tanks, remix = draft.number("tanks"), draft.values.get("remix")
+    mixes = () if remix is not None else (remixing(),)
     if draft.number("bore") is not None:
         if tanks is not None:
             draft.fault(
@@ -91,7 +145,14 @@ def _fitting(draft: Draft) -> Elements:
                 "tanks for a volume or a gap only",
                 "give volume in place of bore and length",
             )
-        return (Bore(must(draft, "length"), must(draft, "bore"), False, "fitting"),)
+        refuse_tolerances(draft, "bore", "length")
+        unknowns = (*mixes, *_bore_and_length(draft))
+        remixed = 0.0 if remix is False else 1.0
+        return (Bore(must(draft, "length"), must(draft, "bore"), remixed, 0.0, unknowns, "fitting"),)
+    if remix is False:
+        draft.fault(
+            "remix", "bore and length with it: a volume or a gap mixes the stream", "bore and length, or no remix"
+        )
     volume = draft.number("volume")
     if volume is None:
         port = draft.number("port")
@@ -99,9 +160,12 @@ def _fitting(draft: Draft) -> Elements:
             port = 25.4e-3 / 16
             draft.assume("port 1/16 in", "port of 1/16 in (1.59 mm) around the gap")
         volume = float(dead_gap_volume(port, must(draft, "gap")))
+    refuse_tolerances(draft, "volume")
+    sizes = tolerance_of(draft, "volume", scaling("volume"))
     if tanks is None:
         draft.assume("fittings mix fully", "the volume mixes as one stirred tank")
-    return (Mixed(volume, tanks or 1.0, "fitting"),)
+        mixes = (*mixes, mixing_of_volume())
+    return (Mixed(volume, tanks or 1.0, "fitting", unknowns=(*mixes, *sizes)),)
 
 
 FITTING = Kind(
@@ -115,11 +179,7 @@ FITTING = Kind(
         Key("gap", Measure(LENGTH, 1e-6, 0.02, zero=True), "length of a dead gap in the port"),
         Key("port", Measure(LENGTH, 1e-4, 0.02, fraction=True), "diameter of the port"),
         Key("tanks", TANKS, "number of tanks that it mixes like"),
-        Key(
-            "remix",
-            Only(yes, lambda raw: raw is not True, "leave remix out"),
-            "whether it mixes the stream across the bore",
-        ),
+        Key("remix", YesOrNo(), "whether it mixes the stream across the bore"),
         DROP,
     ),
     ways=(("volume",), ("bore", "length"), ("gap",)),
@@ -133,7 +193,10 @@ def _mixer(draft: Draft) -> Elements:
     tanks = draft.number("tanks")
     if tanks is None:
         draft.assume("mixer: one tank", "the volume mixes as one stirred tank")
-    return (Mixed(must(draft, "volume"), tanks or 1.0, "mixer"),)
+    refuse_tolerances(draft, "volume")
+    return (
+        Mixed(must(draft, "volume"), tanks or 1.0, "mixer", unknowns=tolerance_of(draft, "volume", scaling("volume"))),
+    )
 
 
 MIXER = Kind(
@@ -153,6 +216,7 @@ MIXER = Kind(
 
 
 def _block(draft: Draft) -> Elements:
+    refuse_tolerances(draft)
     volume = draft.number("volume")
     if volume is None:
         volume = 0.0
@@ -187,6 +251,7 @@ BLOCK = Kind(
 
 
 def _outlet(draft: Draft) -> Elements:
+    refuse_tolerances(draft)
     return ()
 
 

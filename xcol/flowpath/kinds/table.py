@@ -10,7 +10,7 @@ from xcol import catalog_kinds
 from xcol.flowpath.elements import Element
 from xcol.flowpath.file_keys import TEMPERATURES
 from xcol.flowpath.findings import Draft
-from xcol.flowpath.keys import Key, Later, Measure, Number, Text, Value
+from xcol.flowpath.keys import Key, Later, Measure, Number, Text, Tolerance, Value
 from xcol.units import LENGTH, PRESSURE, VOLUME, Quantity, parse
 
 Elements = tuple[Element, ...]
@@ -31,9 +31,9 @@ COMMON = (
     Key("max_drop", LIMITS, "highest pressure drop allowed across the part"),
     Key("temperature", TEMPERATURES, "temperature of this part, where it differs"),
     Key("flow", Later(), "flow through this part, where it differs"),
-    Key("bore_tolerance", Later(), "tolerance of the bore"),
-    Key("length_tolerance", Later(), "tolerance of the length"),
-    Key("volume_tolerance", Later(), "tolerance of the volume"),
+    Key("bore_tolerance", Tolerance(), "tolerance of the bore"),
+    Key("length_tolerance", Tolerance(), "tolerance of the length"),
+    Key("volume_tolerance", Tolerance(), "tolerance of the volume"),
 )
 DROP = Key("drop", DROPS, "measured pressure drop at this flow")
 

@@ -1,0 +1,130 @@
+"""How far what stands outside the columns spreads a band: the variance of each link of a chain.
+
+One piece of code for what is printed (all peaks at once), for the ends of the ranges, and for the draws of what is
+unknown (all draws at once): what changes is the elements that are put in, and the shape of the arrays.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterator, Sequence
+from dataclasses import dataclass
+from typing import TYPE_CHECKING
+
+import numpy as np
+
+from xcol.filters.tube import Tube, shares
+from xcol.flowpath.bed import Bed
+from xcol.flowpath.chain import Link, Segment, filter_of, segments
+from xcol.flowpath.elements import InBore
+
+if TYPE_CHECKING:
+    import numpy.typing as npt
+
+    from xcol.filters.interface import Filter, Real
+    from xcol.flowpath.elements import Element, Stream
+    from xcol.flowpath.model import Part
+
+    Values = npt.NDArray[np.float64]
+
+
+@dataclass(frozen=True)
+class LinkSpread:
+    """What a link contributes: variance [s²], ``own`` and what it shares with other tubes of its run.
+
+    ``half`` is half of what it shares, the other half is in the other tubes' rows.
+    """
+
+    own: Values
+    half: Values
+    tube: Tube | None = None
+    run_t_star: Values | None = None  # of the whole run of tubes that it belongs to
+    run: tuple[int, ...] = ()  # places of the tubes of its run
+
+    @property
+    def variance(self) -> Values:
+        """Variance of its row [s²]."""
+        return self.own + self.half
+
+    @property
+    def gain(self) -> Values:
+        """Variance [s²] that goes with it, as long as the others of its run stay as they are."""
+        return self.own + 2 * self.half
+
+
+class Spread:
+    """The variance of a chain outside the columns, of one ``shape``: one entry a peak, or a draw."""
+
+    def __init__(
+        self,
+        chain: Sequence[Link],
+        stream: Callable[[Part], Stream],
+        shape: tuple[int, ...],
+        elements: Sequence[Element] | None = None,
+    ) -> None:
+        self._chain = chain
+        self._elements = [link.element for link in chain] if elements is None else list(elements)
+        self._stream = stream
+        self._filters: dict[int, Filter] = {}
+        self._known: dict[Segment, list[LinkSpread]] = {}
+        self.zero = np.zeros(shape)
+
+    def rows(self) -> dict[int, LinkSpread]:
+        """Return what each link but the columns contributes, by its place in the chain."""
+        found = {
+            place: spread
+            for segment in self._segments(range(len(self._chain)))
+            for place, spread in zip(segment.places, self._spreads(segment), strict=True)
+        }
+        return dict(sorted(found.items()))
+
+    def total(self, removed: int | None = None) -> Values:
+        """Return the variance [s²] of the chain, or of it without one link, a run of tubes closing up."""
+        kept = [place for place in range(len(self._chain)) if place != removed]
+        variances = (spread.variance for segment in self._segments(kept) for spread in self._spreads(segment))
+        return sum(variances, self.zero)
+
+    def dean(self, place: int) -> Values | None:
+        """Return the Dean number of a tube of the chain [-], None for what is none."""
+        element, part = self._elements[place], self._chain[place].part
+        if not isinstance(element, InBore):
+            return None
+        return self.zero + self._stream(part).dean(element.bore, element.curvature)
+
+    def _segments(self, places: Sequence[int]) -> Iterator[Segment]:
+        """Part the links at these places into segments, columns left out."""
+        for segment in segments([self._elements[place] for place in places]):
+            if not isinstance(self._elements[places[segment.places[0]]], Bed):
+                yield Segment(tuple(places[at] for at in segment.places), segment.joined)
+
+    def _filter(self, place: int) -> Filter:
+        if place not in self._filters:
+            link = self._chain[place]
+            self._filters[place] = filter_of(link, self._stream(link.part), self._elements[place])
+        return self._filters[place]
+
+    def _spreads(self, segment: Segment) -> list[LinkSpread]:
+        if any(np.ndim(joined) for joined in segment.joined):  # not to be told from another by its value
+            return self._compute(segment)
+        if segment not in self._known:
+            self._known[segment] = self._compute(segment)
+        return self._known[segment]
+
+    def _compute(self, segment: Segment) -> list[LinkSpread]:
+        filters = [self._filter(place) for place in segment.places]
+        tubes = [one for one in filters if isinstance(one, Tube)]
+        if len(tubes) < len(filters) or not isinstance(self._elements[segment.places[0]], InBore):
+            return [LinkSpread(self.zero + one.variance(), self.zero) for one in filters]
+        run: Real = sum(tube.t_star for tube in tubes)
+        own, half = shares(tubes, segment.joined)
+        return [
+            LinkSpread(self.zero + one, self.zero + other, tube, self.zero + run, segment.places)
+            for one, other, tube in zip(own, half, tubes, strict=True)
+        ]
+
+
+def at_end(element: Element, *, worst: bool) -> Element:
+    """Return an element with all that is unknown of its mixing at its worst, or at its best."""
+    for unknown in element.unknowns:
+        if unknown.ends is not None:
+            element = unknown.put(element, unknown.ends.worst if worst else unknown.ends.best)
+    return element

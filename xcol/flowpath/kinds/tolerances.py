@@ -1,0 +1,126 @@
+"""How far sizes are off: from the file's own tolerance, the catalog's, or as assumed; and how parts mix."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import replace
+from typing import TYPE_CHECKING, Any
+
+from xcol.catalog_kinds import TUBING
+from xcol.flowpath.elements import PLUG
+from xcol.flowpath.unknowns import BEND, Between, Ends, Factor, LogBetween, OneOf, Unknown, scaling, setting
+from xcol.units import LENGTH, write
+
+if TYPE_CHECKING:
+    from xcol.filters.interface import Real
+    from xcol.flowpath.findings import Draft
+
+_BORE, _LENGTH = 0.05, 0.02  # relative, 90 %: assumed where neither file nor catalog says
+PLATES = 0.10
+TIGHTEST_BEND = 0.03  # m, assumed for tubes of which nobody says how they are bent
+_STOCK = 0.06  # a bore within so much of a stock bore is taken as that
+
+SIZES = ("bore", "length", "volume")
+
+# σ²/V²: what a measured valve passage of 0.2 µL showed, over the one of a plug (J. Liq. Chromatogr. 1982, abstract),
+# and the smeared injection of a valve of which nothing is known (assumed)
+_WORST_FITTING = 1.35
+_WORST_INJECTION = 1 / 4
+
+
+def refuse_tolerances(draft: Draft, *known: str) -> None:
+    """Report tolerances of sizes that this part does not have."""
+    for size in SIZES:
+        if f"{size}_tolerance" in draft.values and size not in known:
+            others = " or ".join(f"{name}_tolerance" for name in known) or "no tolerance"
+            draft.fault(f"{size}_tolerance", f"{others}: it has no {size} that its variance hangs on", "leave it out")
+
+
+def tolerance_of(draft: Draft, size: str, put: Callable[[Any, Real], Any]) -> tuple[Unknown, ...]:
+    """Return the unknown that a size [bore, length, volume] is; none where it is exact, or nothing is assumed of it."""
+    relative = draft.number(f"{size}_tolerance")
+    if relative is None and size == "bore":
+        relative, whose = _of_stock(draft)
+        draft.findings.assume("tolerances of sizes", f"bores ±{100 * relative:g} % ({whose}), for the ranges only")
+    elif relative is None and size == "length":
+        relative = _LENGTH
+        draft.findings.assume(
+            "tolerances of sizes", f"lengths of tubes ±{100 * relative:g} % (assumed), for the ranges only"
+        )
+    if not relative:
+        return ()
+    settle = f"measure the {size} and enter {size}_tolerance"
+    return (Unknown(size, Factor(relative), put, settle=settle),)
+
+
+def _of_stock(draft: Draft) -> tuple[float, str]:
+    """Return the tolerance of the bore, and where it comes from: of the nearest stock tubing, or assumed."""
+    bore = draft.number("bore")
+    rows = [row for row in draft.catalogs.rows(TUBING) if bore and abs(row.bore / bore - 1) <= _STOCK]
+    if not rows:
+        return _BORE, "assumed"
+    nearest = min(rows, key=lambda row: abs(row.bore - (bore or 0.0)))
+    return nearest.tolerance, nearest.tolerance_from
+
+
+def bore_keeping_volume(element: Any, factor: Real) -> Any:
+    """Return a tube or loop of another bore and of the same volume."""
+    return replace(element, bore=element.bore * factor, length=element.length / factor**2)
+
+
+def bend(curvature: float | None) -> tuple[float, tuple[Unknown, ...]]:
+    """Return the curvature [1/m] that is computed with, and the unknown that it is, where none was entered (None)."""
+    if curvature is not None:
+        return curvature, ()
+    tightest = 1 / TIGHTEST_BEND
+    ends = Ends(tightest, 0.0, f"bent at {write(TIGHTEST_BEND, 'cm', LENGTH)} all along (assumed)", "straight")
+    settle = "enter its bend_radius"
+    return 0.0, (Unknown(BEND, Between(0.0, tightest), setting("curvature"), ends, settle),)
+
+
+def injection_form() -> Unknown:
+    """Return how an injection enters of which the loop is not described."""
+    ends = Ends(PLUG, _WORST_INJECTION, "a plug", "smeared to V²/4 (assumed)")
+    settle = 'give the loop with its bore, loop = "20 uL x 0.5 mm"'
+    return Unknown("form of the injection", Between(PLUG, _WORST_INJECTION), setting("spread"), ends, settle)
+
+
+def way_of_emptying(rest: str) -> Unknown:
+    """Return which way a loop is emptied; ``rest`` says in words what the plug then passes."""
+    ends = Ends(0.0, 1.0, "emptied the other way, a plug", f"emptied the same way, through {rest}")
+    return Unknown("way of emptying", OneOf((0.0, 1.0)), setting("same_way"), ends, 'enter emptied = "reversed"')
+
+
+def mixing_of_volume() -> Unknown:
+    """Return how a fitting's volume mixes of which nobody says the tanks."""
+
+    def put(element: Any, relative: Real) -> Any:
+        return replace(element, tanks=1 / relative)
+
+    ends = Ends(PLUG, _WORST_FITTING, "passed as a plug", "as a measured valve passage, 1.35 V²")
+    return Unknown("mixing", LogBetween(PLUG, _WORST_FITTING), put, ends, "a union run")
+
+
+def remixing() -> Unknown:
+    """Return whether a fitting mixes the stream of the tubes beside it."""
+    ends = Ends(1.0, 0.0, "", "")  # it shows in the tubes beside it
+    return Unknown("remixing", OneOf((0.0, 1.0)), setting("remixed"), ends, "enter remix, if you know it")
+
+
+def mixing_of_cell(length: float, assumed: bool) -> Unknown:
+    """Return how a cell mixes, between a plug and a straight bore of this ``length`` [m]."""
+    shown = f"a straight bore of {write(length, 'mm', LENGTH)}{' (assumed)' if assumed else ''}"
+    ends = Ends(0.0, 1.0, "a plug", f"read over {shown}")
+    settle = "a union run tells how far the cell mixes"
+    return Unknown("mixing", Between(0.0, 1.0), setting("likeness"), ends, settle)
+
+
+def plates_of_column(draft: Draft) -> Unknown:
+    """Return how far entered plates are off."""
+    draft.findings.assume("tolerances of sizes", f"plates ±{100 * PLATES:g} % (assumed), for the ranges only")
+    return Unknown("plates", Factor(PLATES), scaling("plates"), settle="measure N with your analyte at this flow")
+
+
+def quality_of_packing() -> Unknown:
+    """Return where, between the worst and the best of such packings, a column lies."""
+    return Unknown("plates", Between(0.0, 1.0), setting("quality"), settle="enter plates, from its certificate")
