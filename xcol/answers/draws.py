@@ -30,7 +30,6 @@ class Draws:
 
         def uniform() -> Values:
             whole = np.frombuffer(stream.randbytes(8 * self.count), dtype="<u8")
-            numbers: Values = (whole >> np.uint64(11)) * _TO_UNIT
-            return numbers
+            return (whole >> np.uint64(11)).astype(np.float64) * _TO_UNIT
 
         return spread.draw(uniform)

@@ -7,6 +7,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable
 from dataclasses import dataclass, replace
+from functools import cached_property
 from typing import TYPE_CHECKING
 
 import numpy as np
@@ -20,6 +21,8 @@ from xcol.flowpath.kinds.tolerances import PLATES
 from xcol.flowpath.unknowns import Factor
 
 if TYPE_CHECKING:
+    import numpy.typing as npt
+
     from xcol.answers.budget import Budget, DetectorBudget, PeakBudget
     from xcol.answers.rows import Row
     from xcol.answers.spread import Values
@@ -77,6 +80,12 @@ class _Drawn:
     values: Values
     settle: str
 
+    @cached_property
+    def order(self) -> npt.NDArray[np.int64]:
+        """The draws in the order of the values, one row a bin."""
+        size = len(self.values) // _BINS
+        return np.argsort(self.values, kind="stable")[: size * _BINS].reshape(_BINS, size)
+
 
 class Sampler:
     """Draws what is unknown of an instrument, and answers for each peak at each detector when it is asked."""
@@ -132,8 +141,8 @@ class Sampler:
         factors: dict[str, Real] = {"D": 1.0, "viscosity": 1.0}
         viscosity = self._instrument.viscosity
         unsure = (
-            ("D", f"peak {number} D", peak.estimate.uncertainty, "measure D or look it up"),
-            ("viscosity", "viscosity", viscosity.uncertainty if viscosity else 0.0, "enter viscosity"),
+            ("D", f"peak {number} D", peak.estimate.uncertainty, "D, measured or looked up"),
+            ("viscosity", "viscosity", viscosity.uncertainty if viscosity else 0.0, "viscosity, measured"),
         )
         for what, key, uncertainty, settle in unsure:
             if uncertainty:
@@ -158,7 +167,7 @@ class Sampler:
         every = columns((link.part, link.element) for link in last)
         factor = self.draws.of(f"peak {number} plates", Factor(PLATES))
         drawn[:] = [one for one in drawn if one.what != "plates"]
-        drawn.append(_Drawn("plates", None, factor, "measure N with your analyte at this flow"))
+        drawn.append(_Drawn("plates", None, factor, "N measured with your analyte at this flow"))
         nominal = columns((link.part, link.element) for link in chain)
         whole = sum(one.delay() for one in every) ** 2 / sum(one.variance() for one in every)
         return time, sum(one.variance() for one in nominal) * whole / (peak.plates * factor)
@@ -193,21 +202,21 @@ def _leaders(rows: tuple[Row, ...], gains: list[Values]) -> tuple[tuple[Row, flo
 
 
 def _influences(drawn: list[_Drawn], answers: Values) -> tuple[Influence, ...]:
-    found = [Influence(one.what, one.part, _share(one.values, answers), one.settle) for one in drawn]
+    found = [Influence(one.what, one.part, _share(one.order, answers), one.settle) for one in drawn]
     return tuple(sorted(found, key=lambda influence: -influence.share))
 
 
-def _share(values: Values, answers: Values) -> float:
+def _share(order: npt.NDArray[np.int64], answers: Values) -> float:
     """Return the share of the variance of ``answers`` that one unknown alone explains, var(E[answer|value])/var.
 
     By the means of bins of equal size in the order of the unknown; what they scatter by chance is taken off.
     Source: first-order index of Sobol', Math. Comput. Simul. 55 (2001) 271, from memory.
     """
     total = float(np.var(answers))
-    size = len(answers) // _BINS
-    if not total or not size:
+    if not total or not order.size:
         return 0.0
-    ordered = answers[np.argsort(values, kind="stable")][: size * _BINS].reshape(_BINS, size)
-    between = float(np.var(ordered.mean(axis=1)))
-    within = float(ordered.var(axis=1).mean()) / size
-    return float(np.clip((between - within) / total, 0.0, 1.0))
+    binned = answers[order]
+    means = binned.mean(axis=1)
+    between = float(np.var(means))
+    within = max(total - between, 0.0) / order.shape[1]
+    return float(min(max((between - within) / total, 0.0), 1.0))

@@ -12,7 +12,10 @@ from xcol.units import quote
 
 if TYPE_CHECKING:
     from xcol.answers.budget import Budget, DetectorBudget, PeakBudget
+    from xcol.answers.likely import Sampler
     from xcol.report.sheet import Sheet
+
+FEWEST, MOST = 100, 100_000  # draws: fewer say nothing of 90 %, more take seconds
 
 EXAMPLE = """
 Example, a path file of a few lines and the first screen of its budget:
@@ -29,6 +32,11 @@ def budget(
     peak: Annotated[str | None, typer.Option("--peak", help="Peak of the first screen, by name or k.")] = None,
     detector: Annotated[str | None, typer.Option("--detector", help="Detector of the first screen, by name.")] = None,
     full: Annotated[bool, typer.Option("--full", help="Everything, not the first screen (of text).")] = False,
+    draws: Annotated[
+        int, typer.Option("--draws", help="Draws of what is unknown, for the intervals.", min=FEWEST, max=MOST)
+    ] = 2000,
+    seed: Annotated[int, typer.Option("--seed", help="Seed of the draws: the same one gives the same text.")] = 1,
+    no_interval: Annotated[bool, typer.Option("--no-interval", help="No draws, and no intervals.")] = False,
     catalogs: CatalogOption = None,
     form: FormatOption = Format.TEXT,
     output: OutputOption = None,
@@ -36,29 +44,32 @@ def budget(
 ) -> None:
     """Show what each part of the path adds to the width of the peaks, and what it costs in plates."""
     from xcol.answers.budget import budget as answer_of
+    from xcol.answers.likely import Sampler
     from xcol.flowpath.reader import read
 
     answer = answer_of(read(file, catalogs or []))
     at = _chosen_detector(answer, detector, file)
     chosen = _chosen_peak(at, peak, file)
-    deliver(_forms(answer, at, chosen, full), form, output, force, *answer.instrument.files, *(catalogs or []))
+    sampler = None if no_interval else Sampler(answer, draws, seed)
+    forms = _forms(answer, at, chosen, full, sampler)
+    deliver(forms, form, output, force, *answer.instrument.files, *(catalogs or []))
 
 
-def _forms(answer: Budget, at: DetectorBudget, chosen: PeakBudget, full: bool) -> Forms:
+def _forms(answer: Budget, at: DetectorBudget, chosen: PeakBudget, full: bool, sampler: Sampler | None) -> Forms:
     from xcol.report.budget_record import budget_csv, budget_record
 
     def markdown() -> str:
         from xcol.report.budget_text import budget_markdown
 
-        return budget_markdown(answer, at, chosen)
+        return budget_markdown(answer, at, chosen, sampler)
 
     def text(sheet: Sheet) -> None:
         from xcol.report.budget_screen import first_screen
         from xcol.report.budget_text import full_report
 
-        (full_report if full else first_screen)(answer, at, chosen, sheet)
+        (full_report if full else first_screen)(answer, at, chosen, sheet, sampler)
 
-    return Forms(lambda: budget_record(answer), lambda: budget_csv(answer), markdown, text)
+    return Forms(lambda: budget_record(answer, sampler), lambda: budget_csv(answer, sampler), markdown, text)
 
 
 def _chosen_detector(answer: Budget, name: str | None, file: str) -> DetectorBudget:

@@ -44,15 +44,13 @@ class Curve:
     def __init__(self, start: float, step: float, values: Array, slopes: Array) -> None:
         self._start, self._step, self._last = start, step, len(values) - 2
         ends = np.stack([values[:-1], slopes[:-1], values[1:], slopes[1:]])
-        self._pieces = (_HERMITE @ ends).T.copy()
+        self._pieces = _HERMITE @ ends
 
     def __call__(self, at: Real) -> Array:
         """Return the curve at any shape of points; beyond the nodes its end pieces go on."""
-        place = (np.asarray(at, dtype=np.float64) - self._start) / self._step
-        piece = np.clip(place.astype(np.int64), 0, self._last)
-        x = place - piece
-        c = self._pieces[piece]
-        result: Array = c[..., 0] + x * (c[..., 1] + x * (c[..., 2] + x * c[..., 3]))
+        piece, x = _place(at, self._start, self._step, self._last)
+        c = [one.take(piece) for one in self._pieces]
+        result: Array = c[0] + x * (c[1] + x * (c[2] + x * c[3]))
         return result
 
 
@@ -75,18 +73,26 @@ class Surface:
             for c, (right, order_c) in enumerate([(0, 0), (0, 1), (1, 0), (1, 1)]):
                 table = corners[order_r][order_c]
                 cells[..., r, c] = table[upper : upper + cells.shape[0], right : right + cells.shape[1]]
-        self._pieces = _HERMITE @ cells @ _HERMITE.T
+        pieces = _HERMITE @ cells @ _HERMITE.T
+        # one table for each coefficient, so that an array of points takes each from neighbouring memory
+        self._pieces = np.ascontiguousarray(np.moveaxis(pieces.reshape(-1, 4, 4), 0, -1))
 
     def __call__(self, row: Real, column: Real) -> Array:
         """Return the surface at points of one shape, or of shapes that broadcast; both within the grid."""
-        at = [
-            (np.asarray(value, dtype=np.float64) - start) / step
-            for value, start, step in zip((row, column), self._starts, self._steps, strict=True)
-        ]
-        i, j = (np.clip(place.astype(np.int64), 0, last) for place, last in zip(at, self._last, strict=True))
-        x, y = at[0] - i, at[1] - j
-        c = self._pieces[i, j]
-        y = y[..., None]
-        rows = c[..., 0] + y * (c[..., 1] + y * (c[..., 2] + y * c[..., 3]))
-        result: Array = rows[..., 0] + x * (rows[..., 1] + x * (rows[..., 2] + x * rows[..., 3]))
+        (i, x), (j, y) = (
+            _place(value, start, step, last)
+            for value, start, step, last in zip((row, column), self._starts, self._steps, self._last, strict=True)
+        )
+        cell = i * (self._last[1] + 1) + j
+        result: Array = np.zeros(np.shape(cell))
+        for coefficients in self._pieces[::-1]:
+            c = [one.take(cell) for one in coefficients]
+            result = result * x + (c[0] + y * (c[1] + y * (c[2] + y * c[3])))
         return result
+
+
+def _place(at: Real, start: float, step: float, last: int) -> tuple[npt.NDArray[np.int64], Array]:
+    """Return the piece that points lie in, from 0 to ``last``, and how far into it, in steps."""
+    place = (np.asarray(at, dtype=np.float64) - start) / step
+    piece = np.minimum(np.maximum(place, 0.0), last).astype(np.int64)
+    return piece, place - piece

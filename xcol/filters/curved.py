@@ -53,7 +53,7 @@ def long_tube_ratio(strength: Real) -> Real:
     >>> round(float(long_tube_ratio(1000.0)), 4)
     0.4836
     """
-    inside = np.clip(strength, _WEAKEST, _STRONGEST)
+    inside = _within(strength, _WEAKEST, _STRONGEST)
     return _faded(_TAKEN_OF_LONG(np.log(inside)), strength)
 
 
@@ -69,13 +69,18 @@ def bent_variance(t_star: Real, strength: Real) -> Real:
     t = np.asarray(t_star, dtype=np.float64)
     if np.ndim(strength) == 0 and strength == 0:
         return dimensionless_variance(t)
-    inside = np.clip(t, _SHORTEST, _LONGEST)
-    taken = _TAKEN(np.log(np.clip(strength, _WEAKEST, _STRONGEST)), np.log(inside))
+    inside = _within(t, _SHORTEST, _LONGEST)
+    taken = _TAKEN(np.log(_within(strength, _WEAKEST, _STRONGEST)), np.log(inside))
     taken = taken * np.square(np.minimum(t / _SHORTEST, 1.0))  # the flow has had less and less time to mix
     variance: Real = dimensionless_variance(np.minimum(t, _LONGEST)) * _faded(taken, strength)
     if np.max(t, initial=0.0) > _LONGEST:  # from here on the variance is a line
         variance = variance + np.maximum(t - _LONGEST, 0.0) / 24 * long_tube_ratio(strength)
     return variance
+
+
+def _within(value: Real, low: float, high: float) -> Real:
+    result: Real = np.minimum(np.maximum(value, low), high)
+    return result
 
 
 def _faded(taken: Real, strength: Real) -> Real:

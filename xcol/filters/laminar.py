@@ -101,13 +101,14 @@ def dimensionless_variance(t_star: Real) -> Real:
     t = np.asarray(t_star, dtype=np.float64)
     if not t.size:
         return t
-    inside = np.clip(t, _FIRST, _LAST)
+    inside = np.minimum(np.maximum(t, _FIRST), _LAST)
     variance = np.square(t) * np.exp(_LOG_RELATIVE(np.log(inside)))
     if t.max() > _LAST:
         variance = np.where(t > _LAST, t / 24 - 1 / 384, variance)
     if t.min() < _FIRST:
         short = t < _FIRST
-        variance = np.where(short, variance_by_modes(np.where(short, t, 0.0)), variance)
+        variance = np.array(variance)
+        variance[short] = variance_by_modes(t[short])
     result: Real = variance
     return result
 
@@ -146,7 +147,7 @@ def dimensionless_third_moment(t_star: Real) -> Real:
     From a table in ln t*, within 1e-7 of ``run_third_moment``.
     """
     t = np.asarray(t_star, dtype=np.float64)
-    inside = np.clip(t, _FIRST, _LAST)
+    inside = np.minimum(np.maximum(t, _FIRST), _LAST)
     result: Real = np.where(t > _LAST, THIRD_START + THIRD_SLOPE * t, t**3 * np.exp(_LOG_THIRD(np.log(inside))))
     return result
 

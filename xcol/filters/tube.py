@@ -111,17 +111,17 @@ def shares(tubes: Sequence[Tube], joined: Sequence[Real]) -> tuple[list[Real], l
         return wanted.setdefault((start, end, ranks[first], ranks[second]), len(wanted))
 
     own = [place(i, i + 1, i, i) for i in range(count)]
-    brackets = {
-        (i, j): [place(*stretch, i, j) for stretch in ((i, j + 1), (i, j), (i + 1, j + 1), (i + 1, j))]
-        for i, j in pairs
-    }
+    brackets = {}
+    for i, j in pairs:
+        stretches = ((i, j + 1), (i, j), (i + 1, j + 1), (i + 1, j))
+        brackets[i, j] = [place(*stretch, i, j) for stretch in stretches if stretch[0] < stretch[1]]
     v = _variances(list(wanted), edges, [tube.strength for tube in tubes])
 
     alone: list[Real] = [tube.time_unit**2 * v[own[i]] + tube.axial_variance() for i, tube in enumerate(tubes)]
     halves: list[Real] = [0.0] * count
     for (i, j), weight in pairs.items():
-        whole, left, right, between = (v[at] for at in brackets[i, j])
-        half = weight * tubes[i].time_unit * tubes[j].time_unit * (whole - left - right + between) / 2
+        whole, left, right, *between = (v[at] for at in brackets[i, j])
+        half = weight * tubes[i].time_unit * tubes[j].time_unit * (whole - left - right + sum(between)) / 2
         halves[i] = halves[i] + half
         halves[j] = halves[j] + half
     return alone, halves

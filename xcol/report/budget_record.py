@@ -7,20 +7,24 @@ import io
 from typing import TYPE_CHECKING, Any
 
 from xcol import __version__
+from xcol.answers.budget import HALF_WIDTH
 from xcol.answers.doubt import over_diffusion
+from xcol.report.sureness import settle_in_words
 
 if TYPE_CHECKING:
     from xcol.answers.budget import Budget, DetectorBudget, PeakBudget
     from xcol.answers.doubt import Doubt
+    from xcol.answers.likely import Likely, Sampler
     from xcol.answers.pressure import PressureRow
     from xcol.answers.rows import Row
     from xcol.flowpath.hydraulics import PressureRange
+    from xcol.flowpath.model import Part
 
 SCHEMA = "xcol.budget/1"
 
 
-def budget_record(answer: Budget) -> dict[str, Any]:
-    """Return the budget as one JSON object; units stand in the key names."""
+def budget_record(answer: Budget, sampler: Sampler | None = None) -> dict[str, Any]:
+    """Return the budget as one JSON object; units stand in the key names. Intervals are null without draws."""
     instrument = answer.instrument
     return {
         "schema": SCHEMA,
@@ -28,26 +32,30 @@ def budget_record(answer: Budget) -> dict[str, Any]:
         "title": instrument.title,
         "flow_mL_min": instrument.flow * 60e6,
         "mobile_phase": instrument.mobile_phase or None,
+        "draws": sampler.draws.count if sampler else None,
+        "seed": sampler.draws.seed if sampler else None,
         "assumed": [assumption.text for assumption in instrument.assumed],
         "warnings": list(answer.warnings),
         "cautions": list(answer.cautions),
         "pressure": [_pressure(row) for row in answer.pressure.rows],
         "detectors": [
-            _detector(answer, found, doubts)
+            _detector(answer, found, doubts, sampler)
             for found, doubts in zip(answer.detectors, over_diffusion(answer), strict=True)
         ],
     }
 
 
-def budget_csv(answer: Budget) -> str:
+def budget_csv(answer: Budget, sampler: Sampler | None = None) -> str:
     """Return one line for each contribution to each peak at each detector, as CSV."""
     lines = []
-    for detector in budget_record(answer)["detectors"]:
+    for detector in budget_record(answer, sampler)["detectors"]:
         for peak in detector["peaks"]:
             parts = peak.pop("parts")
             ahead = {"detector": detector["name"], "peak": peak["name"], "k": peak["k"]}
             ahead |= {key: peak[key] for key in ("diffusion_m2_s", "diffusion_uncertainty")}
             ahead |= {key: peak[key] for key in ("plates_column", "plates_observed", "plates_kept")}
+            low, high = peak["interval_plates_kept"] or (None, None)
+            ahead |= {"interval_plates_kept_low": low, "interval_plates_kept_high": high}
             lines += [ahead | part for part in parts]
     out = io.StringIO()
     if lines:
@@ -85,16 +93,21 @@ def _bar(drop: PressureRange | None) -> float | None:
     return drop.value / 1e5 if drop is not None else None
 
 
-def _detector(answer: Budget, found: DetectorBudget, doubts: list[Doubt | None]) -> dict[str, Any]:
+def _detector(
+    answer: Budget, found: DetectorBudget, doubts: list[Doubt | None], sampler: Sampler | None
+) -> dict[str, Any]:
     return {
         "name": found.detector.name or "detector",
         "position": found.detector.position,
         "delay_s": found.delay,
-        "peaks": [_peak(answer, peak, doubt, found.delay) for peak, doubt in zip(found.peaks, doubts, strict=True)],
+        "peaks": [
+            _peak(answer, peak, doubt, sampler.of(found, peak) if sampler else None)
+            for peak, doubt in zip(found.peaks, doubts, strict=True)
+        ],
     }
 
 
-def _peak(answer: Budget, peak: PeakBudget, doubt: Doubt | None, delay: float) -> dict[str, Any]:
+def _peak(answer: Budget, peak: PeakBudget, doubt: Doubt | None, likely: Likely | None) -> dict[str, Any]:
     return {
         "name": peak.peak.name,
         "k": peak.peak.k,
@@ -108,8 +121,9 @@ def _peak(answer: Budget, peak: PeakBudget, doubt: Doubt | None, delay: float) -
         "plates_observed": peak.plates_observed,
         "plates_observed_over_diffusion": list(doubt.plates) if doubt and doubt.plates else None,
         "plates_kept": peak.plates_kept,
-        "interval_plates_kept": None,
+        "plates_kept_range": list(peak.plates_kept_range) if peak.plates_kept_range else None,
         "resolution_kept": peak.resolution_kept,
+        **_intervals(answer, likely),
         "variance_column_uL2": answer.in_uL2(peak.variance_column),
         "variance_extra_uL2": answer.in_uL2(peak.variance_extra),
         "variance_total_uL2": answer.in_uL2(peak.variance_total),
@@ -121,6 +135,45 @@ def _peak(answer: Budget, peak: PeakBudget, doubt: Doubt | None, delay: float) -
         "points_4sigma": peak.points,
         "parts": [_row(answer, row) for row in peak.rows],
     }
+
+
+def _intervals(answer: Budget, likely: Likely | None) -> dict[str, Any]:
+    """Return the 90 % intervals, which part leads in what share of the draws, and what moves the answer most."""
+    kept = likely.plates_kept if likely else None
+    total = likely.variance_total if likely else None
+    return {
+        "interval_plates_kept": _ends(kept),
+        "interval_resolution_kept": _ends(kept, power=0.5),
+        "interval_plates_observed": _ends(likely.plates_observed if likely else None),
+        "interval_plates_column": _ends(likely.plates_column if likely else None),
+        "interval_variance_extra_uL2": _ends(likely.variance_extra if likely else None, answer.in_uL2(1.0)),
+        "interval_variance_total_uL2": _ends(total, answer.in_uL2(1.0)),
+        "interval_sigma_total_s": _ends(total, power=0.5),
+        "interval_width_half_s": _ends(total, HALF_WIDTH, 0.5),
+        "leaders": [
+            {**_whose(row.part), "contribution": row.contribution, "share_of_draws": share}
+            for row, share in (likely.leaders if likely else ())
+        ],
+        "influences": [
+            {
+                "what": one.what,
+                **_whose(one.part),
+                "share_of_scatter": one.share,
+                "settle": settle_in_words(one) or None,
+            }
+            for one in (likely.influences if likely else ())
+        ],
+    }
+
+
+def _ends(interval: tuple[float, float] | None, factor: float = 1.0, power: float = 1.0) -> list[float] | None:
+    return None if interval is None else [factor * end**power for end in interval]
+
+
+def _whose(part: Part | None) -> dict[str, Any]:
+    if part is None:
+        return {"part": None, "name": None, "position": None}
+    return {"part": part.kind, "name": part.name or part.kind, "position": part.position}
 
 
 def _row(answer: Budget, row: Row) -> dict[str, Any]:

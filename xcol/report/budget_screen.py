@@ -12,24 +12,25 @@ from xcol.units import PRESSURE
 
 if TYPE_CHECKING:
     from xcol.answers.budget import Budget, DetectorBudget, PeakBudget
+    from xcol.answers.likely import Sampler
     from xcol.answers.pressure import PressureRow
     from xcol.flowpath.model import Part
 
 LINES = 24
-_CAVEAT = "No ranges yet (tubes at their worst, plugs at their best): what leads is open."
 _CAUTION = "Before opening a line: pump off, pressure at zero, eye protection, site rules."
 _HANG = 2  # indent of the lines of a paragraph after its first
 _LEAST_PARTS = 6  # lines of the table of parts that are kept whatever else there is to say
 
 
-def first_screen(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: Sheet) -> None:
+def first_screen(
+    answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: Sheet, sampler: Sampler | None = None
+) -> None:
     """Write the first screen for one peak at one detector."""
     heading(answer, sheet)
     if liquid := liquid_line(answer, peak):
         _at_most(2, liquid, sheet)
-    for line in verdict(answer, at, peak):
+    for line in verdict(answer, at, peak, sampler):
         _at_most(2, line, sheet)
-    _at_most(1, _CAVEAT, sheet)
     sheet.line()
     foot = Sheet(sheet.width, sheet.ascii_only)
     _footer(answer, foot)
@@ -40,7 +41,8 @@ def first_screen(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: Sh
     sheet.grid(parts_grid(answer, at, peak, room - kept), indent=2)
     sheet.line()
     shown = _peaks_that_fit(at.peaks, peak, LINES - sheet.count() - foot.count() - 1 - kept)
-    sheet.grid(peaks_grid(answer, shown), indent=2)
+    likely = [sampler.of(at, one) if sampler is not None else None for one in shown]
+    sheet.grid(peaks_grid(answer, shown, likely), indent=2)
     if len(shown) < len(at.peaks):
         sheet.line(f"  {len(at.peaks) - len(shown)} more peaks: --full")
     _warnings(answer, sheet, LINES - sheet.count() - foot.count())

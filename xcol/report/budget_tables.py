@@ -10,13 +10,16 @@ from xcol.report.sheet import Grid
 from xcol.units import significant
 
 if TYPE_CHECKING:
+    from collections.abc import Sequence
+
     from xcol.answers.budget import Budget, ColumnBand, DetectorBudget, PeakBudget
+    from xcol.answers.likely import Likely
     from xcol.answers.rows import Row
     from xcol.flowpath.hydraulics import PressureRange
 
 MOST_ROWS = 7  # of parts on the first screen; with more, the small ones fold
 SMALL_SHARE = 0.02
-_BAR = 10  # characters of a full share bar
+_BAR = 6  # characters of a full share bar
 
 
 def parts_grid(answer: Budget, at: DetectorBudget, peak: PeakBudget, most: int) -> Grid:
@@ -45,13 +48,14 @@ def parts_grid(answer: Budget, at: DetectorBudget, peak: PeakBudget, most: int) 
         total = sum(row.variance for row in folded)
         share = total / peak.variance_extra if peak.variance_extra else 0.0
         label = f"{len(folded)} others, {percent(max(row.share_extra for row in folded))} or less each"
-        lines.append((label, three(answer.in_uL2(total)), percent(share), "", "", ""))
-    headers = ("in flow order", "µL²", "of added", "", "N if gone", "inlet, bar")
-    return Grid(headers, tuple(lines), (False, True, True, False, True, True))
+        ends = span_of(answer, sum(row.low for row in folded), sum(row.high for row in folded))
+        lines.append((label, three(answer.in_uL2(total)), ends, percent(share), "", "", ""))
+    headers = ("in flow order", "µL²", "best-worst", "share", "", "N if gone", "bar")
+    return Grid(headers, tuple(lines), (False, True, True, True, False, True, True))
 
 
-def peaks_grid(answer: Budget, peaks: tuple[PeakBudget, ...]) -> Grid:
-    """Return what is recorded of each peak."""
+def peaks_grid(answer: Budget, peaks: tuple[PeakBudget, ...], likely: Sequence[Likely | None]) -> Grid:
+    """Return what is recorded of each peak, with the interval of what is kept where there is one."""
     headers: tuple[str, ...]
     rows: tuple[tuple[str, ...], ...]
     if all(peak.plates_column is None for peak in peaks):
@@ -67,7 +71,7 @@ def peaks_grid(answer: Budget, peaks: tuple[PeakBudget, ...]) -> Grid:
             for peak in peaks
         )
         return Grid(headers, rows, (False, True, True, True, True))
-    headers = ("peak", "k", "t_R, min", "plates", "kept", "W½, s", "column's", "Rs kept")
+    headers = ("peak", "k", "t_R, min", "plates", "kept", "likely", "W½, s", "column's", "Rs kept")
     rows = tuple(
         (
             peak.peak.name,
@@ -75,13 +79,14 @@ def peaks_grid(answer: Budget, peaks: tuple[PeakBudget, ...]) -> Grid:
             three(peak.retention / 60),
             f"{plates(peak.plates_observed)} of {plates(peak.plates_column)}",
             percent(peak.plates_kept),
+            shares(one.plates_kept) if one is not None and one.plates_kept is not None else "",
             three(peak.width_half),
             three(peak.width_half_column),
             percent(peak.resolution_kept),
         )
-        for peak in peaks
+        for peak, one in zip(peaks, likely, strict=True)
     )
-    return Grid(headers, rows, (False, *(True,) * 7))
+    return Grid(headers, rows, (False, *(True,) * 8))
 
 
 def detail_grid(answer: Budget, peak: PeakBudget, *, wide: bool) -> Grid:
@@ -91,12 +96,13 @@ def detail_grid(answer: Budget, peak: PeakBudget, *, wide: bool) -> Grid:
         ("held, µL", True, [_held(row) for row in peak.rows]),
         ("t*", True, [_or_dash(row.tube.t_star if row.tube else None) for row in peak.rows]),
         ("µL²", True, [three(answer.in_uL2(row.variance)) for row in peak.rows]),
+        ("best-worst", True, [span_of(answer, row.low, row.high) for row in peak.rows]),
         (
             "long-tube",
             True,
             [_or_dash(answer.in_uL2(row.tube.longtube_variance) if row.tube else None) for row in peak.rows],
         ),
-        ("of added", True, [percent(row.share_extra) for row in peak.rows]),
+        ("share", True, [percent(row.share_extra) for row in peak.rows]),
         ("if gone", True, [percent(row.plates_kept_without) for row in peak.rows]),
     ]
     if wide:
@@ -128,6 +134,46 @@ def pressure_grid(answer: Budget) -> Grid:
         for row in answer.pressure.rows
     )
     return Grid(headers, rows, (False, *(True,) * 6))
+
+
+def reasons_grid(peak: PeakBudget) -> Grid:
+    """Return for each contribution with a range why it is as low and as high as it may be."""
+    rows = tuple(
+        (contribution_label(row.part, row.contribution), row.at_low, row.at_high)
+        for row in peak.rows
+        if row.low < row.high
+    )
+    return Grid(("part", "best", "worst"), rows, (False, False, False))
+
+
+def bends_grid(answer: Budget, peak: PeakBudget) -> Grid:
+    """Return each tube straight and bent: Dean number, De²Sc, and both variances, its own without what it shares."""
+    tubes = [(row, row.tube) for row in peak.rows if row.tube is not None and row.part.viscosity is not None]
+    rows = tuple(
+        (
+            contribution_label(row.part, row.contribution),
+            _or_dash(tube.bent_dean or None),
+            _or_dash(tube.bent_strength or None),
+            three(answer.in_uL2(tube.straight_variance)),
+            three(answer.in_uL2(tube.bent_variance)),
+        )
+        for row, tube in tubes
+    )
+    return Grid(("tube", "De", "De²Sc", "straight, µL²", "bent, µL²"), rows, (False, True, True, True, True))
+
+
+def span_of(answer: Budget, low: float, high: float) -> str:
+    """Return the ends of a variance [s²] in µL², "" where it has none."""
+    if math.isclose(low, high, rel_tol=5e-3):
+        return ""
+    ends = (three(answer.in_uL2(low)), three(answer.in_uL2(high)))
+    return "-".join(ends)
+
+
+def shares(interval: tuple[float, float]) -> str:
+    """Return an interval of shares in per cent: '16-27 %'."""
+    low, high = (percent(end) for end in interval)
+    return high if low == high else f"{low.removesuffix(' %')}-{high}"
 
 
 def three(value: float) -> str:
@@ -179,6 +225,7 @@ def _part_line(answer: Budget, row: Row, peak: PeakBudget, inlet: PressureRange 
     return (
         contribution_label(row.part, row.contribution),
         three(answer.in_uL2(row.variance)),
+        span_of(answer, row.low, row.high),
         percent(row.share_extra),
         bar,
         plates(gone),
@@ -191,7 +238,7 @@ def _column_line(answer: Budget, band: ColumnBand, peak: PeakBudget, inlet: Pres
     name, own, number = column_label(band.part), band.variance, band.plates
     if len(peak.columns) > 3:
         name, own, number = f"{len(peak.columns)} columns", peak.variance_column, peak.plates_column or 0.0
-    return (f"[ {name} ]", three(answer.in_uL2(own)), "own", f"N {plates(number)}", "", bars(inlet))
+    return (f"[ {name} ]", three(answer.in_uL2(own)), f"N {plates(number)}", "own", "", "", bars(inlet))
 
 
 def _folded(peak: PeakBudget, room: int) -> list[Row]:

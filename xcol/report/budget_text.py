@@ -8,37 +8,47 @@ from typing import TYPE_CHECKING
 from xcol.answers.doubt import over_diffusion
 from xcol.report.budget_tables import (
     bars,
+    bends_grid,
     detail_grid,
     peaks_grid,
     percent,
     plates,
     pressure_grid,
+    reasons_grid,
+    shares,
     span,
     three,
 )
 from xcol.report.labels import name_of, show
 from xcol.report.sheet import Sheet, fitted, markdown
+from xcol.report.sureness import (
+    beyond,
+    ends_line,
+    figures,
+    influence_lines,
+    interval_line,
+    leaders_line,
+    verdict_on_parts,
+)
 from xcol.units import FLOW, PRESSURE, TEMPERATURE, VISCOSITY, VOLUME, significant
 
 if TYPE_CHECKING:
     from xcol.answers.budget import Budget, DetectorBudget, PeakBudget
     from xcol.answers.doubt import Doubt
+    from xcol.answers.likely import Likely, Sampler
 
 HARDLY = 0.03  # of the plates: what an uncertain diffusion coefficient may move without mattering
-NO_RANGES = (
-    "No ranges yet: tubes count as straight (worst), injection and cells as plugs (best), so these "
-    "figures alone do not say which part to change first."
-)
 
 
-def full_report(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: Sheet) -> None:
+def full_report(
+    answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: Sheet, sampler: Sampler | None = None
+) -> None:
     """Write everything: all detectors and peaks, pressure, warnings, assumptions, cautions."""
     heading(answer, sheet)
     if liquid := liquid_line(answer, peak):
         sheet.line(liquid, hang=2)
-    for line in verdict(answer, at, peak):
+    for line in verdict(answer, at, peak, sampler):
         sheet.line(line, hang=2)
-    sheet.line(NO_RANGES, hang=2)
     for found, doubts in zip(answer.detectors, over_diffusion(answer), strict=True):
         sheet.line()
         volume = found.delay * answer.instrument.flow
@@ -47,11 +57,20 @@ def full_report(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: She
             f"the record outside the column ({show(volume, VOLUME)} at the column's flow)",
             "bold",
         )
-        sheet.grid(peaks_grid(answer, found.peaks), indent=2)
+        sheet.grid(peaks_grid(answer, found.peaks, likely_of(sampler, found)), indent=2)
         for one, doubt in zip(found.peaks, doubts, strict=True):
             sheet.line()
             sheet.line(_peak_line(one, doubt, answer), indent=2)
             sheet.grid(detail_grid(answer, one, wide=sheet.width >= 110), indent=2)
+            for line in how_sure(answer, found, one, sampler):
+                sheet.line(line, indent=2, hang=2)
+            if (bends := bends_grid(answer, one)).rows:
+                sheet.line("Tubes by themselves, straight and bent (as entered, or at 3 cm):", indent=2)
+                sheet.grid(bends, indent=4)
+        sheet.line()
+        sheet.line("What the ends of the ranges are", "bold")
+        for label, best, worst in reasons_grid(found.peaks[0]).rows:
+            sheet.line(f"{label}: best {best}; worst {worst}", indent=2, hang=2)
     sheet.line()
     sheet.line("Pressure", "bold")
     sheet.grid(pressure_grid(answer), indent=2)
@@ -70,18 +89,40 @@ def full_report(answer: Budget, at: DetectorBudget, peak: PeakBudget, sheet: She
     )
 
 
-def budget_markdown(answer: Budget, at: DetectorBudget, peak: PeakBudget) -> str:
+def likely_of(sampler: Sampler | None, at: DetectorBudget) -> list[Likely | None]:
+    """Return how sure the answer for each peak at a detector is; None without draws."""
+    return [sampler.of(at, peak) if sampler is not None else None for peak in at.peaks]
+
+
+def how_sure(answer: Budget, at: DetectorBudget, peak: PeakBudget, sampler: Sampler | None) -> list[str]:
+    """Return how sure the answer for a peak is, in lines: intervals, ends, which part leads, what moves it."""
+    if sampler is None:
+        return [line for line in (ends_line(peak),) if line]
+    likely = sampler.of(at, peak)
+    lines = [interval_line(likely, peak, answer, sampler.draws.count, sampler.draws.seed), ends_line(peak)]
+    lines.append(leaders_line(likely))
+    if moves := influence_lines(likely):
+        what = "plates kept" if likely.plates_kept is not None else "variance added"
+        lines.append(f"Of the scatter of {what} over the draws comes from {'; '.join(moves)}.")
+    return [line for line in lines if line]
+
+
+def budget_markdown(answer: Budget, at: DetectorBudget, peak: PeakBudget, sampler: Sampler | None = None) -> str:
     """Return the report in Markdown."""
     pieces = [f"# {answer.instrument.title or 'Budget'}\n", _conditions(answer) + "\n"]
     pieces += [liquid + "\n"] if (liquid := liquid_line(answer, peak)) else []
-    pieces += [line + "\n" for line in (*verdict(answer, at, peak), NO_RANGES)]
+    pieces += [line + "\n" for line in verdict(answer, at, peak, sampler)]
     for found, doubts in zip(answer.detectors, over_diffusion(answer), strict=True):
         pieces.append(f"## Detector {name_of(found.detector)}\n")
-        pieces.append(markdown(peaks_grid(answer, found.peaks)))
+        pieces.append(markdown(peaks_grid(answer, found.peaks, likely_of(sampler, found))))
         for one, doubt in zip(found.peaks, doubts, strict=True):
             pieces.append(f"### {one.peak.name}\n")
             pieces.append(_peak_line(one, doubt, answer) + "\n")
             pieces.append(markdown(detail_grid(answer, one, wide=True)))
+            pieces += [line + "\n" for line in how_sure(answer, found, one, sampler)]
+            if (bends := bends_grid(answer, one)).rows:
+                pieces.append(markdown(bends))
+        pieces += ["### What the ends of the ranges are\n", markdown(reasons_grid(found.peaks[0]))]
     pieces += ["## Pressure\n", markdown(pressure_grid(answer)), _pressure_line(answer) + "\n"]
     for title, lines in titled_lists(answer):
         pieces.append(f"## {title}\n")
@@ -89,21 +130,30 @@ def budget_markdown(answer: Budget, at: DetectorBudget, peak: PeakBudget) -> str
     return "\n".join(pieces)
 
 
-def verdict(answer: Budget, at: DetectorBudget, peak: PeakBudget) -> list[str]:
-    """Return the answer in a sentence or two: plates recorded of the column's, at what."""
+def verdict(answer: Budget, at: DetectorBudget, peak: PeakBudget, sampler: Sampler | None = None) -> list[str]:
+    """Return the answer in a few sentences: plates recorded of the column's, how sure that is, what to change."""
     extra = answer.in_uL2(peak.variance_extra)
+    likely = sampler.of(at, peak) if sampler is not None else None
+    added = _likely(figures(_in_uL2(answer, likely.variance_extra))) if likely else ""
+    on_parts = verdict_on_parts(likely, peak, sampler.draws.count) if likely and sampler else []
     if peak.plates_column is None:
         sigma = math.sqrt(extra)
         return [
             f"Without a column, the {name_of(at.detector)} records a band of σ = {three(sigma)} µL "
-            f"({three(extra)} µL²) or {three(peak.sigma)} s. "
-            "Compare moments: its width at half height says little."
+            f"({three(extra)} µL²{added.replace(' (', ', ').removesuffix(')')}) or {three(peak.sigma)} s. "
+            "Compare moments: its width at half height says little.",
+            *on_parts,
         ]
     whose = "column's" if len(peak.columns) == 1 else "columns'"
+    kept, remark = percent(peak.plates_kept), ""
+    if likely and likely.plates_kept and peak.plates_kept is not None:
+        kept += _likely(shares(likely.plates_kept))
+        remark = beyond(peak.plates_kept, likely.plates_kept, peak)
     lines = [
-        f"{_which(peak)}: the {name_of(at.detector)} records {plates(peak.plates_observed)} of the {whose} "
-        f"{plates(peak.plates_column)} plates, {percent(peak.plates_kept)}. The path adds {three(extra)} µL² to the "
-        f"{whose} own {three(answer.in_uL2(peak.variance_column))}."
+        f"{_which(peak)}: the {name_of(at.detector)} records {plates(peak.plates_observed)} of "
+        f"{plates(peak.plates_column)} plates, {kept}.",
+        f"The path adds {three(extra)} µL²{added} to the {whose} own "
+        f"{three(answer.in_uL2(peak.variance_column))}{f' ({remark})' if remark else ''}.",
     ]
     others = [
         f"{name_of(found.detector)} {plates(same.plates_observed)} ({percent(same.plates_kept)})"
@@ -114,7 +164,15 @@ def verdict(answer: Budget, at: DetectorBudget, peak: PeakBudget) -> list[str]:
     ]
     if others:
         lines.append(f"Other detectors, same peak: {', '.join(others)}.")
-    return lines
+    return [*lines, *on_parts]
+
+
+def _likely(interval: str) -> str:
+    return f" (likely {interval})"
+
+
+def _in_uL2(answer: Budget, interval: tuple[float, float]) -> tuple[float, float]:
+    return answer.in_uL2(interval[0]), answer.in_uL2(interval[1])
 
 
 def _which(peak: PeakBudget) -> str:

@@ -137,9 +137,7 @@ def _response(draft: Draft, response: float, contribution: str) -> Element:
     best, worst = max(_READINGS), min(_READINGS)
     ends = Ends(best[0], worst[0], f"response read as {best[1]}", f"response read as {worst[1]}")
     spread = OneOf(tuple(factor for factor, _ in _READINGS))
-    unknown = Unknown(
-        "meaning of response", spread, put, ends, "look up what response means: time_constant or rise_time"
-    )
+    unknown = Unknown("meaning of response", spread, put, ends, "what response means, time_constant or rise_time")
     return Electronics(FirstOrder(response / usual), contribution, unknowns=(unknown,))
 
 

@@ -41,15 +41,13 @@ def tolerance_of(draft: Draft, size: str, put: Callable[[Any, Real], Any]) -> tu
     relative = draft.number(f"{size}_tolerance")
     if relative is None and size == "bore":
         relative, whose = _of_stock(draft)
-        draft.findings.assume("tolerances of sizes", f"bores ±{100 * relative:g} % ({whose}), for the ranges only")
+        draft.findings.assume("tolerances", f"bores ±{100 * relative:g} % ({whose}), for the ranges only")
     elif relative is None and size == "length":
         relative = _LENGTH
-        draft.findings.assume(
-            "tolerances of sizes", f"lengths of tubes ±{100 * relative:g} % (assumed), for the ranges only"
-        )
+        draft.findings.assume("tolerances", f"lengths of tubes ±{100 * relative:g} % (assumed), for the ranges only")
     if not relative:
         return ()
-    settle = f"measure the {size} and enter {size}_tolerance"
+    settle = f"{size} of {{name}}, measured"
     return (Unknown(size, Factor(relative), put, settle=settle),)
 
 
@@ -74,21 +72,21 @@ def bend(curvature: float | None) -> tuple[float, tuple[Unknown, ...]]:
         return curvature, ()
     tightest = 1 / TIGHTEST_BEND
     ends = Ends(tightest, 0.0, f"bent at {write(TIGHTEST_BEND, 'cm', LENGTH)} all along (assumed)", "straight")
-    settle = "enter its bend_radius"
+    settle = "bend_radius of {name}"
     return 0.0, (Unknown(BEND, Between(0.0, tightest), setting("curvature"), ends, settle),)
 
 
 def injection_form() -> Unknown:
     """Return how an injection enters of which the loop is not described."""
     ends = Ends(PLUG, _WORST_INJECTION, "a plug", "smeared to V²/4 (assumed)")
-    settle = 'give the loop with its bore, loop = "20 uL x 0.5 mm"'
+    settle = 'the loop with its bore, loop = "20 uL x 0.5 mm"'
     return Unknown("form of the injection", Between(PLUG, _WORST_INJECTION), setting("spread"), ends, settle)
 
 
 def way_of_emptying(rest: str) -> Unknown:
     """Return which way a loop is emptied; ``rest`` says in words what the plug then passes."""
     ends = Ends(0.0, 1.0, "emptied the other way, a plug", f"emptied the same way, through {rest}")
-    return Unknown("way of emptying", OneOf((0.0, 1.0)), setting("same_way"), ends, 'enter emptied = "reversed"')
+    return Unknown("way of emptying", OneOf((0.0, 1.0)), setting("same_way"), ends, "which way the loop is emptied")
 
 
 def mixing_of_volume() -> Unknown:
@@ -98,29 +96,29 @@ def mixing_of_volume() -> Unknown:
         return replace(element, tanks=1 / relative)
 
     ends = Ends(PLUG, _WORST_FITTING, "passed as a plug", "as a measured valve passage, 1.35 V²")
-    return Unknown("mixing", LogBetween(PLUG, _WORST_FITTING), put, ends, "a union run")
+    return Unknown("mixing", LogBetween(PLUG, _WORST_FITTING), put, ends, "a union run with {name}, and without it")
 
 
 def remixing() -> Unknown:
     """Return whether a fitting mixes the stream of the tubes beside it."""
     ends = Ends(1.0, 0.0, "", "")  # it shows in the tubes beside it
-    return Unknown("remixing", OneOf((0.0, 1.0)), setting("remixed"), ends, "enter remix, if you know it")
+    return Unknown("remixing", OneOf((0.0, 1.0)), setting("remixed"), ends, "a union run with {name}, and without it")
 
 
 def mixing_of_cell(length: float, assumed: bool) -> Unknown:
     """Return how a cell mixes, between a plug and a straight bore of this ``length`` [m]."""
     shown = f"a straight bore of {write(length, 'mm', LENGTH)}{' (assumed)' if assumed else ''}"
     ends = Ends(0.0, 1.0, "a plug", f"read over {shown}")
-    settle = "a union run tells how far the cell mixes"
+    settle = "a union run (cell's mixing)"
     return Unknown("mixing", Between(0.0, 1.0), setting("likeness"), ends, settle)
 
 
 def plates_of_column(draft: Draft) -> Unknown:
     """Return how far entered plates are off."""
-    draft.findings.assume("tolerances of sizes", f"plates ±{100 * PLATES:g} % (assumed), for the ranges only")
-    return Unknown("plates", Factor(PLATES), scaling("plates"), settle="measure N with your analyte at this flow")
+    draft.findings.assume("tolerances", f"plates ±{100 * PLATES:g} % (assumed), for the ranges only")
+    return Unknown("plates", Factor(PLATES), scaling("plates"), settle="N measured with your analyte at this flow")
 
 
 def quality_of_packing() -> Unknown:
     """Return where, between the worst and the best of such packings, a column lies."""
-    return Unknown("plates", Between(0.0, 1.0), setting("quality"), settle="enter plates, from its certificate")
+    return Unknown("plates", Between(0.0, 1.0), setting("quality"), settle="plates, measured or from the certificate")

@@ -1,0 +1,152 @@
+"""How sure an answer is, in words: intervals, which part leads, what would decide it."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING
+
+from xcol.report.budget_tables import percent, shares, three
+from xcol.report.labels import contribution_label, name_of
+
+if TYPE_CHECKING:
+    from xcol.answers.budget import Budget, PeakBudget
+    from xcol.answers.likely import Influence, Likely
+    from xcol.answers.rows import Row
+
+_COULD_LEAD = 0.1  # share of the draws from which a part is named among those that could lead
+_MOST_NAMED = 3
+_SETTLES = 0.05  # share of the variance of the answer from which an unknown is worth settling
+LOSES_LITTLE = 0.97  # share of the plates that is kept all over the interval: nothing is worth changing
+
+# what to do about the part that leads, by contribution; by kind where several kinds have one
+_ACTIONS = {
+    "injection": "inject less",
+    "tube": "a narrower or shorter {name}",
+    "fitting": "a smaller {name}",
+    "mixer": "a smaller {name}",
+    "block": "a {name} that spreads less",
+    "cell": "a smaller cell of {name}",
+    "rate": "a faster rate of {name}",
+}
+_FILTER = "a faster filter of {name}"
+
+
+def figures(interval: tuple[float, float]) -> str:
+    """Return an interval of figures with three digits: '103-208'."""
+    low, high = (three(end) for end in interval)
+    return high if low == high else f"{low}-{high}"
+
+
+def beyond(printed: float, interval: tuple[float, float], peak: PeakBudget) -> str:
+    """Say which end of its range a printed figure is, where it lies outside of its interval; "" within it."""
+    low, high = interval
+    if low <= printed <= high:
+        return ""
+    if printed < low:
+        straight = any(row.tube is not None and row.tube.strength == 0 and row.low < row.variance for row in peak.rows)
+        return f"{'tubes straight' if straight else 'all at its worst'}: printed is the worse end"
+    return "plugs: printed is the better end"
+
+
+def verdict_on_parts(likely: Likely, peak: PeakBudget, draws: int) -> list[str]:
+    """Return which part to change first, or what could lead and what would decide it, a line each."""
+    if likely.plates_kept is not None and likely.plates_kept[0] >= LOSES_LITTLE:
+        return [f"Nothing is worth changing at this k: {shares(likely.plates_kept)} of the plates are kept."]
+    row = likely.leader
+    if row is not None:
+        led = percent(likely.leaders[0][1])
+        return [f"Surest gain: {_action(row)} (leads in {led} of {draws} draws of what is unknown)."]
+    named = [pair for pair in likely.leaders if pair[1] >= _COULD_LEAD][:_MOST_NAMED]
+    if len(named) < 2:
+        named = list(likely.leaders[:2])
+    if not named:
+        return []
+    listed = [f"{_named(row)} ({percent(share)})" for row, share in named]
+    listed[0] = listed[0].replace("%)", "% of draws)")
+    lines = [f"Could lead: {', '.join(listed)}."]
+    if settles := what_settles(likely, [row for row, _ in named], has_column=peak.plates_column is not None):
+        lines.append(f"To decide: {'; '.join(settles)}.")
+    return lines
+
+
+def what_settles(likely: Likely, rows: list[Row], *, has_column: bool) -> list[str]:
+    """Return what would decide between rows: what settles the unknowns of their parts that matter most."""
+    parts = {row.part.position for row in rows}
+    found: dict[str, None] = {}
+    for influence in likely.influences:
+        if influence.part is None or influence.part.position not in parts or influence.share < _SETTLES:
+            continue
+        if influence.settle and len(found) < 2:
+            found[settle_in_words(influence)] = None
+    # without a column the path is the union run itself
+    return [text if has_column else text.replace("a union run", "this path's variance, measured") for text in found]
+
+
+def influence_lines(likely: Likely, most: int = 6) -> list[str]:
+    """Return the unknowns that move the answer most, each with its share and what would settle it."""
+    return [
+        f"{_of(influence)}: {percent(influence.share)}"
+        + (f" ({settle_in_words(influence)})" if influence.settle else "")
+        for influence in likely.influences[:most]
+        if influence.share >= 0.01
+    ]
+
+
+def interval_line(likely: Likely, peak: PeakBudget, answer: Budget, draws: int, seed: int) -> str:
+    """Return the intervals of a peak's headline figures in a sentence."""
+    pieces = []
+    if likely.plates_observed is not None and likely.plates_kept is not None:
+        pieces.append(f"{figures(likely.plates_observed)} plates recorded, {shares(likely.plates_kept)} kept")
+    low, high = (answer.in_uL2(end) for end in likely.variance_extra)
+    pieces.append(f"{figures((low, high))} µL² added")
+    sigmas = tuple(end**0.5 for end in likely.variance_total)
+    pieces.append(f"σ {figures((sigmas[0], sigmas[1]))} s")
+    text = f"90 % of {draws} draws (seed {seed}): {', '.join(pieces)}"
+    if peak.plates_kept is not None and likely.plates_kept is not None:
+        remark = beyond(peak.plates_kept, likely.plates_kept, peak)
+        text += f" ({remark})" if remark else ""
+    return text + "."
+
+
+def ends_line(peak: PeakBudget) -> str:
+    """Return the answer with every part at its best and at its worst, "" without a column."""
+    ends = peak.plates_kept_range
+    if ends is None:
+        return ""
+    worst, best = ends
+    lost = f"{shares((1 - best, 1 - worst))} lost"
+    return f"End to end, every part at its best or at its worst: {shares((worst, best))} kept, {lost}."
+
+
+def leaders_line(likely: Likely) -> str:
+    """Return in what share of the draws each part leads."""
+    listed = [
+        f"{contribution_label(row.part, row.contribution)} {percent(share)}"
+        for row, share in likely.leaders
+        if share >= 0.01
+    ]
+    return f"Leads in so many draws: {', '.join(listed)}." if listed else ""
+
+
+def _action(row: Row) -> str:
+    return _ACTIONS.get(row.contribution, _FILTER).format(name=_plain_name(row))
+
+
+def _named(row: Row) -> str:
+    """Return a contribution without its size: 'UV cell', 'injection', 'valve to column'."""
+    if row.contribution == "injection":
+        return row.part.name or "injection"
+    return f"{name_of(row.part)} {row.contribution}" if row.part.kind == "detector" else name_of(row.part)
+
+
+def _plain_name(row: Row) -> str:
+    name = name_of(row.part)
+    return f'"{name}"' if row.part.name else name
+
+
+def _of(influence: Influence) -> str:
+    return f"{influence.what} of {name_of(influence.part)}" if influence.part is not None else influence.what
+
+
+def settle_in_words(influence: Influence) -> str:
+    """Return what would settle an unknown, with the name of its part."""
+    return influence.settle.format(name=name_of(influence.part) if influence.part is not None else "")
