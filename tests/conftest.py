@@ -1,5 +1,6 @@
 """What many tests need: the program as a user runs it, and path files to run it on."""
 
+import importlib.util
 import json
 import os
 import subprocess
@@ -37,6 +38,24 @@ peaks = [
 @pytest.fixture
 def root():
     return ROOT
+
+
+@pytest.fixture(scope="session")
+def script_of():
+    """Return the module that a script of tests/generate/ is, by its name."""
+    loaded = {}
+
+    def script_of(name):
+        if name not in loaded:
+            spec = importlib.util.spec_from_file_location(
+                f"generate_{name}", ROOT / "tests" / "generate" / f"{name}.py"
+            )
+            loaded[name] = importlib.util.module_from_spec(spec)
+            sys.modules[spec.name] = loaded[name]  # where dataclasses look their module up
+            spec.loader.exec_module(loaded[name])
+        return loaded[name]
+
+    return script_of
 
 
 @pytest.fixture

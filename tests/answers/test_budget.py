@@ -47,9 +47,9 @@ def test_worked_scenarios(name, examples):
 def test_the_long_tube_formula_would_blame_the_antibody_s_tubes(examples):
     answer = budget(read(str(examples / "antibody-size-exclusion.toml")))
     peak = answer.detectors[0].peaks[0]
-    longtube = [in_uL2(answer, r.longtube_variance) for r in peak.rows if r.longtube_variance]
+    longtube = [in_uL2(answer, r.tube.longtube_variance) for r in peak.rows if r.tube]
     assert longtube == pytest.approx([427, 342], rel=2e-3)
-    others = in_uL2(answer, sum(r.variance for r in peak.rows if r.longtube_variance is None))
+    others = in_uL2(answer, sum(r.variance for r in peak.rows if r.tube is None))
     own = in_uL2(answer, peak.variance_column)
     assert 1 - own / (own + sum(longtube) + others) == pytest.approx(0.72, abs=0.005)
     assert 1 - peak.plates_kept == pytest.approx(0.288, abs=0.0005)

@@ -1,21 +1,21 @@
 """Laminar flow in a tube: the table, Φ(t*), limits, and an independent solution."""
 
-import importlib.util
-
 import numpy as np
 import pytest
 from scipy.linalg import expm
 
-from xcol.filters import laminar, laminar_modes
+from xcol.filters import laminar, laminar_modes, straight_table
 
 
-def test_the_table_is_what_its_script_makes(root):
-    path = root / "tests" / "generate" / "laminar_modes.py"
-    spec = importlib.util.spec_from_file_location("generate_laminar_modes", path)
-    script = importlib.util.module_from_spec(spec)
-    spec.loader.exec_module(script)
+def made_by(script):
+    """The names that the module of a generating script has, made again."""
     made: dict = {}
     exec(compile(script.table(), "table", "exec"), made)
+    return made
+
+
+def test_the_table_is_what_its_script_makes(script_of):
+    made = made_by(script_of("laminar_modes"))
     # the last eigenvalues, 1e9 times the first, differ between linear algebra libraries
     assert made["EIGENVALUES"][:25] == pytest.approx(laminar_modes.EIGENVALUES[:25], rel=1e-7)
     assert made["WEIGHTS"][:25] == pytest.approx(laminar_modes.WEIGHTS[:25], rel=1e-5)
@@ -23,6 +23,43 @@ def test_the_table_is_what_its_script_makes(root):
     x = np.multiply.outer(t, made["EIGENVALUES"])
     again = ((x + np.expm1(-x)) / made["EIGENVALUES"] ** 2) @ (2 * made["WEIGHTS"])
     assert again == pytest.approx(laminar.dimensionless_variance(t), rel=1e-7)
+
+
+def test_the_table_in_t_star_is_what_its_script_makes(script_of):
+    made = made_by(script_of("straight_table"))
+    assert made["LOG_T_STARS"] == pytest.approx(straight_table.LOG_T_STARS, abs=1e-14)
+    assert made["LOG_MOMENTS"] == pytest.approx(straight_table.LOG_MOMENTS, abs=1e-6)
+    ends = made["THIRD_SLOPE"], made["THIRD_START"]
+    assert ends == pytest.approx((straight_table.THIRD_SLOPE, straight_table.THIRD_START), rel=1e-5)
+
+
+def test_between_the_nodes_of_the_table_it_is_as_good():
+    t = np.logspace(-6, 6, 3001)
+    assert laminar.dimensionless_variance(t) == pytest.approx(laminar.variance_by_modes(t), rel=1e-7)
+    t = np.logspace(-5, 4, 1001)
+    assert laminar.dimensionless_third_moment(t) == pytest.approx(laminar.run_third_moment([t], [1.0]), rel=1e-6)
+    assert float(laminar.dimensionless_variance(0.0)) == 0
+
+
+def test_t_star_of_a_relative_variance():
+    t = np.logspace(-5, 5, 301)
+    assert laminar.t_star_of(laminar.relative_variance(t)) == pytest.approx(t, rel=1e-8)
+    assert float(laminar.t_star_of(0.22379)) == pytest.approx(0.1, rel=1e-4)
+
+
+def test_the_fourth_moment_is_that_of_the_transfer_function():
+    """The fourth derivative of H at 0 by central differences with Richardson's extrapolation."""
+    for t_star in (0.01, 0.1, 1.0, 10.0):
+        fourth = float(laminar.fourth_moment(t_star))
+
+        def derivative(step, t_star=t_star):
+            h = laminar.run_transfer([t_star], [1.0], step * np.arange(-3.0, 4.0)).real
+            return float(h @ [-1, 12, -39, 56, -39, 12, -1]) / (6 * step**4)
+
+        step = 0.2 / fourth**0.25
+        assert (16 * derivative(step) - derivative(2 * step)) / 15 == pytest.approx(fourth, rel=2e-3)
+    gaussian = 3 * laminar.dimensionless_variance(1e5) ** 2
+    assert float(laminar.fourth_moment(1e5)) == pytest.approx(float(gaussian), rel=1e-3)
 
 
 def test_the_first_eigenvalue_and_the_sums_of_the_constants():

@@ -3,7 +3,7 @@
 import numpy as np
 import pytest
 
-from xcol.filters.tube import Tube, TubeRun
+from xcol.filters.tube import Tube, TubeRun, shares
 
 FLOW = 1e-6 / 60
 
@@ -87,3 +87,44 @@ def test_no_tube_has_more_variance_than_its_volume_squared():
     t = np.logspace(-3, 3, 200)
     tube = Tube(t * FLOW / (np.pi * 1e-9), 254e-6, FLOW, 1e-9)
     assert np.all(tube.variance() - tube.axial_variance() <= tube.delay() ** 2)
+
+
+def test_a_bent_tube_cut_into_many_is_the_whole_tube():
+    whole = Tube(0.4, 254e-6, FLOW, 1e-9, 2e4)
+    cut = TubeRun(tuple(Tube(length, 254e-6, FLOW, 1e-9, 2e4) for length in (0.1, 0.05, 0.2, 0.0, 0.05)))
+    assert cut.variance() == pytest.approx(whole.variance(), rel=1e-12)
+    assert whole.variance() < 0.4 * Tube(0.4, 254e-6, FLOW, 1e-9).variance()
+
+
+def test_where_bends_differ_the_stronger_one_holds_for_what_is_shared():
+    weak, strong = (Tube(0.2, 254e-6, FLOW, 1e-9, strength) for strength in (1e3, 1e5))
+    both = TubeRun((weak, strong))
+    own = float(weak.variance() + strong.variance())
+    alike = TubeRun((strong, strong))
+    shared = float(both.variance()) - own
+    assert shared == pytest.approx(float(alike.variance()) - 2 * float(strong.variance()), rel=1e-9)
+    assert float(TubeRun((strong, weak)).variance()) == pytest.approx(float(both.variance()), rel=1e-12)
+    # between a run of the stronger bend and one of the weaker
+    assert alike.variance() < both.variance() < TubeRun((weak, weak)).variance()
+
+
+def test_what_is_joined_in_a_share_of_the_draws_lies_between():
+    tubes = [Tube(0.2, 254e-6, FLOW, 1e-9), Tube(0.1, 127e-6, FLOW, 1e-9), Tube(0.1, 254e-6, FLOW, 1e-9)]
+    joined = np.array([0.0, 1.0, 1.0, 0.0])
+    own, half = shares(tubes, (joined, np.array([0.0, 0.0, 1.0, 1.0])))
+    total = sum(own) + sum(half)
+    runs = [
+        [tubes[:1], tubes[1:2], tubes[2:]], [tubes[:2], tubes[2:]], [tubes], [tubes[:1], tubes[1:]],
+    ]  # fmt: skip
+    for n, groups in enumerate(runs):
+        assert total[n] == pytest.approx(sum(float(TubeRun(tuple(group)).variance()) for group in groups), rel=1e-12)
+
+
+def test_bends_as_arrays_are_bends_one_by_one():
+    strengths = np.array([0.0, 500.0, 2e4, 3e5])
+    run = TubeRun((Tube(0.2, 254e-6, FLOW, 1e-9, strengths), Tube(0.3, 127e-6, FLOW, 1e-9, strengths[::-1])))
+    alone = [
+        TubeRun((Tube(0.2, 254e-6, FLOW, 1e-9, float(s)), Tube(0.3, 127e-6, FLOW, 1e-9, float(r)))).variance()
+        for s, r in zip(strengths, strengths[::-1], strict=True)
+    ]
+    assert run.variance() == pytest.approx(np.array(alone), rel=1e-12)

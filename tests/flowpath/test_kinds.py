@@ -51,7 +51,7 @@ def test_fittings():
     assert part_of('{ fitting = "a", volume = "0.5 uL", tanks = 3 }').elements[0].tanks == 3
     (bored,) = part_of('{ fitting = "a", bore = "0.5 mm", length = "5 mm" }').elements
     assert isinstance(bored, Bore)
-    assert not bored.layered
+    assert bored.remixed == 1
     (gap,) = part_of('{ fitting = "a", gap = "0.5 mm" }').elements
     assert gap.volume == pytest.approx(math.pi / 4 * (25.4e-3 / 16) ** 2 * 0.5e-3)
     (other,) = part_of('{ fitting = "a", gap = "0.5 mm", port = "1/8 in" }').elements

@@ -236,7 +236,7 @@ LATER = {
         for key, value in {
             "gradient": '{ from = "5 %" }',
             "sample_solvent": '"water"', "require": '{ plates_kept = "90 %" }',
-            "runs": "[]", "bend_radius": '"3 cm"', "coil_diameter": '"6 cm"',
+            "runs": "[]",
         }.items()
     },
     **{
@@ -247,10 +247,7 @@ LATER = {
     },
     **{
         f"detector {key}": path(INJECT, COLUMN, DETECTOR.replace('"0.1 s"', f'"0.1 s", {key} = {value}'))
-        for key, value in {
-            "response": '"0.5 s"', "filters": "[]", "dwell": '"0.1 s"',
-            "flow": '"1 mL/min"', "volume_tolerance": '"5 %"',
-        }.items()
+        for key, value in {"flow": '"1 mL/min"'}.items()
     },
     **{
         f"column {key}": path(INJECT, COLUMN.replace("12000", f"12000, {key} = {value}"), DETECTOR)
@@ -258,18 +255,8 @@ LATER = {
     },
     **{
         f"inject {key}": path(f'  {{ inject = "2 uL", {key} = {value} }},\n', COLUMN, DETECTOR)
-        for key, value in {
-            "loop": '"20 uL x 0.5 mm"', "filled": '"full"', "emptied": '"reversed"', "loop_in_line": "true",
-            "fraction": "{}",
-        }.items()
+        for key, value in {"loop_in_line": "true", "fraction": "{}"}.items()
     },
-    **{
-        f"tube {key}": path(INJECT, f'  {{ tube = "3 cm x 0.2 mm", {key} = "5 mm" }},\n', COLUMN, DETECTOR)
-        for key in ("bend_radius", "coil_diameter", "bore_tolerance", "length_tolerance")
-    },
-    "fitting remix": path(
-        INJECT, '  { fitting = "a", bore = "1 mm", length = "2 mm", remix = false },\n', COLUMN, DETECTOR
-    ),
     **{
         kind: path(INJECT, COLUMN, f"  {{ {kind} = {value} }},\n", DETECTOR)
         for kind, value in {

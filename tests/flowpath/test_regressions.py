@@ -160,7 +160,8 @@ def test_long_words_are_cut(faults_of):
         ("4.6 x 150 mm, 5 um", "2.1 x 50 cm, 2.5 um", "2.1 mm x 50 cm"),
         ("4.6 x 150 mm, 5 um", "4.6 x 150 mm, 5", '"5 um"'),
         ('{ tube = "20 cm x 0.2 mm" }', '{ loop = "3 uL" }', "inject"),
-        ('"20 cm x 0.2 mm" }', '"20 cm x 0.2 mm", bends = 3 }', "not compute"),
+        ('"20 cm x 0.2 mm" }', '"20 cm x 0.2 mm", bend = 3 }', "bend_radius"),
+        ('"1 s"', '"1 s", flows = 3', "not compute"),
     ],
 )
 def test_suggestions_lead_on(old, new, proposed, faults_of):

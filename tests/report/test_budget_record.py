@@ -8,6 +8,7 @@ import math
 import pytest
 
 from xcol.answers.budget import budget
+from xcol.answers.likely import Sampler
 from xcol.flowpath.reader import parse, read
 from xcol.report.budget_record import budget_csv, budget_record
 
@@ -52,7 +53,7 @@ def test_volumes_and_seconds_agree_through_the_flow(examples):
                 assert peak["sigma_total_s"] ** 2 == pytest.approx(peak["variance_total_s2"])
                 assert peak["width_base_s"] == pytest.approx(4 * peak["sigma_total_s"])
                 assert peak["width_half_s"] == pytest.approx(2.354820045 * peak["sigma_total_s"])
-                assert peak["extra_volume_uL"] == pytest.approx(detector["delay_s"] * flow)
+                assert peak["extra_volume_uL"] == pytest.approx(peak["delay_s"] * flow)
                 parts = peak["parts"]
                 assert sum(row["variance_uL2"] for row in parts) == pytest.approx(peak["variance_extra_uL2"])
                 assert all(r["variance_uL2"] == pytest.approx(r["variance_s2"] * flow**2) for r in parts)
@@ -60,14 +61,48 @@ def test_volumes_and_seconds_agree_through_the_flow(examples):
                 assert all((row["tstar"] is not None) == (row["variance_longtube_uL2"] is not None) for row in parts)
 
 
-def test_what_is_still_to_come_is_null(examples):
+INTERVALS = {
+    "interval_plates_kept": "plates_kept", "interval_resolution_kept": "resolution_kept",
+    "interval_plates_observed": "plates_observed", "interval_variance_extra_uL2": "variance_extra_uL2",
+    "interval_variance_total_uL2": "variance_total_uL2", "interval_sigma_total_s": "sigma_total_s",
+    "interval_width_half_s": "width_half_s", "interval_plates_column": "plates_column",
+}  # fmt: skip
+
+
+def test_without_draws_there_are_ends_and_no_intervals(examples):
     for _, record in records(examples):
+        assert record["draws"] is record["seed"] is None
         for detector in record["detectors"]:
             for peak in detector["peaks"]:
-                assert peak["interval_plates_kept"] is None
+                assert all(peak[key] is None for key in INTERVALS)
+                assert peak["leaders"] == peak["influences"] == []
                 for row in peak["parts"]:
-                    assert row["bend_De2Sc"] is row["variance_low_uL2"] is row["variance_high_uL2"] is None
+                    assert row["variance_low_uL2"] <= row["variance_uL2"] <= row["variance_high_uL2"]
+                    assert row["low_because"]
+                    assert row["high_because"]
+                    assert (row["bend_De2Sc"] is None) == (row["tstar"] is None)
                     assert row["compression"] == 1
+
+
+def test_every_headline_figure_has_an_interval_with_draws(examples):
+    for file in examples.glob("*.toml"):
+        answer = budget(read(str(file)))
+        record = budget_record(answer, Sampler(answer, 200, 5))
+        assert (record["draws"], record["seed"]) == (200, 5)
+        for detector in record["detectors"]:
+            for peak in detector["peaks"]:
+                for key, figure in INTERVALS.items():
+                    if peak[figure] is None:
+                        assert peak[key] is None
+                        continue
+                    low, high = peak[key]
+                    assert 0 < low <= high
+                    assert 0.2 < peak[figure] / low < 5
+                assert sum(leader["share_of_draws"] for leader in peak["leaders"]) == pytest.approx(1)
+                assert len(peak["leaders"]) == len(peak["parts"])
+                shares = [one["share_of_scatter"] for one in peak["influences"]]
+                assert shares == sorted(shares, reverse=True)
+                assert all(0 <= share <= 1 for share in shares)
 
 
 def test_numbers_are_not_rounded(examples):

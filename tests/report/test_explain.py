@@ -69,5 +69,6 @@ def test_a_kind_of_part_shows_its_keys_and_which_are_still_to_come():
     (topic,) = topics_record(find("detector"))["topics"]
     computed = {entry["key"]: entry["computed"] for entry in topic["keys"]}
     assert computed["rate"] is True
-    assert computed["response"] is False
+    assert computed["response"] is True
+    assert computed["flow"] is False
     assert topics_record(find("pressure"))["topics"][0]["keys"] == []

@@ -11,7 +11,7 @@ if TYPE_CHECKING:
     from xcol.answers.spread import Values
     from xcol.flowpath.unknowns import Spread
 
-_TO_UNIT = 2.0**-53
+_TO_UNIT = 2.0**-32
 
 
 class Draws:
@@ -29,7 +29,7 @@ class Draws:
         stream = random.Random(f"{self.seed}/{key}")
 
         def uniform() -> Values:
-            whole = np.frombuffer(stream.randbytes(8 * self.count), dtype="<u8")
-            return (whole >> np.uint64(11)).astype(np.float64) * _TO_UNIT
+            whole = np.frombuffer(stream.randbytes(4 * self.count), dtype="<u4")
+            return (whole + 0.5) * _TO_UNIT
 
         return spread.draw(uniform)

@@ -5,7 +5,7 @@ All unknowns are drawn together, each by itself, and go through the very formula
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Callable, Iterable
 from dataclasses import dataclass, replace
 from functools import cached_property
 from typing import TYPE_CHECKING
@@ -16,7 +16,6 @@ from xcol.answers.draws import Draws
 from xcol.answers.spread import Spread
 from xcol.flowpath.bed import Bed
 from xcol.flowpath.chain import links
-from xcol.flowpath.elements import Element, Stream
 from xcol.flowpath.kinds.tolerances import PLATES
 from xcol.flowpath.unknowns import Factor
 
@@ -26,17 +25,20 @@ if TYPE_CHECKING:
     from xcol.answers.budget import Budget, DetectorBudget, PeakBudget
     from xcol.answers.rows import Row
     from xcol.answers.spread import Values
-    from xcol.filters.column import Column
     from xcol.filters.interface import Real
     from xcol.flowpath.chain import Link
-    from xcol.flowpath.model import Instrument, Part, Peak
+    from xcol.flowpath.elements import Element, Stream
+    from xcol.flowpath.model import Part, Peak
 
 DRAWS, SEED = 2000, 1
 SURE = 0.9  # share of the draws in which a part must lead to be named
-_ENDS = (5.0, 95.0)  # per cent: what lies between them is the interval
+_ENDS = (0.05, 0.95)  # shares of the draws: what lies between them is the interval
+_BLOCK = 25_000  # draws that are computed together
+_RANKED = 20_000  # draws that the ranking of the unknowns looks at: it is good to 1 % by then
 _BINS = 20  # of draws in the order of one unknown, for its share of the variance
 
 Interval = tuple[float, float]
+DIFFUSION, VISCOSITY, PLATES_UNKNOWN = "D", "viscosity", "plates"  # unknowns of a peak, of the liquid
 
 
 @dataclass(frozen=True)
@@ -73,18 +75,31 @@ class Likely:
 
 @dataclass(frozen=True)
 class _Drawn:
-    """One unknown as it was drawn."""
+    """One unknown as it was drawn: of an element of a part, of the peak, or of the liquid (no part)."""
 
     what: str
     part: Part | None
-    values: Values
     settle: str
+    values: Values
+    element: Element | None = None
+    put: Callable[[Element, Real], Element] | None = None
 
     @cached_property
     def order(self) -> npt.NDArray[np.int64]:
         """The draws in the order of the values, one row a bin."""
-        size = len(self.values) // _BINS
-        return np.argsort(self.values, kind="stable")[: size * _BINS].reshape(_BINS, size)
+        values = self.values[:_RANKED]
+        size = len(values) // _BINS
+        return np.argsort(values)[: size * _BINS].reshape(_BINS, size)
+
+
+@dataclass(frozen=True)
+class _Sums:
+    """What the draws of a block come to: variances [s²], retention in the columns [s], how often each row leads."""
+
+    extra: Values
+    column: Values
+    time: Values
+    leads: npt.NDArray[np.int64]
 
 
 class Sampler:
@@ -93,7 +108,7 @@ class Sampler:
     def __init__(self, answer: Budget, count: int = DRAWS, seed: int = SEED) -> None:
         self._instrument = answer.instrument
         self.draws = Draws(count, seed)
-        self._elements: dict[tuple[int, int], tuple[Element, list[_Drawn]]] = {}
+        self._drawn: dict[str, _Drawn] = {}
         self._found: dict[tuple[int, int], Likely] = {}
 
     def of(self, at: DetectorBudget, peak: PeakBudget) -> Likely:
@@ -105,13 +120,12 @@ class Sampler:
 
     def _compute(self, at: DetectorBudget, peak: PeakBudget, number: int) -> Likely:
         chain = links(self._instrument, at.detector)
-        elements = [self._element(link) for link in chain]
-        drawn = [one for _, found in elements for one in found]
-        stream = self._streams(peak.peak, number, drawn)
-        spread = Spread(chain, stream, (self.draws.count,), [element for element, _ in elements])
-        rows = spread.rows()
-        extra = sum((row.variance for row in rows.values()), spread.zero)
-        time, column = self._columns(chain, peak.peak, number, stream, drawn)
+        drawn = [*self._of_chain(chain, peak.peak), *self._of_peak(peak.peak, number)]
+        starts = range(0, self.draws.count, _BLOCK)
+        sums = [self._block(chain, peak.peak, drawn, slice(start, start + _BLOCK)) for start in starts]
+        extra, column, time = (
+            np.concatenate(parts) for parts in zip(*((one.extra, one.column, one.time) for one in sums), strict=True)
+        )
         total = column + extra
         kept = column / total if peak.plates_column is not None else None
         return Likely(
@@ -120,85 +134,94 @@ class Sampler:
             plates_column=_interval(time**2 / column) if kept is not None else None,
             plates_observed=_interval(time**2 / total) if kept is not None else None,
             plates_kept=_interval(kept) if kept is not None else None,
-            leaders=_leaders(peak.rows, [row.gain for row in rows.values()]),
+            leaders=_leaders(peak.rows, np.sum([one.leads for one in sums], axis=0) / self.draws.count),
             influences=_influences(drawn, extra if kept is None else kept),
         )
 
-    def _element(self, link: Link) -> tuple[Element, list[_Drawn]]:
-        """Return the link's element with all that is unknown of it drawn, the same in every chain."""
-        position, place = link.part.position, link.part.elements.index(link.element)
-        if (position, place) not in self._elements:
-            element, found = link.element, []
+    def _of_chain(self, chain: tuple[Link, ...], peak: Peak) -> list[_Drawn]:
+        """Return what is unknown of the elements of a chain, drawn: the same in every chain and for every peak."""
+        found = []
+        for link in chain:
+            place = next(n for n, element in enumerate(link.part.elements) if element is link.element)
             for unknown in link.element.unknowns:
-                values = self.draws.of(f"part {position}.{place} {unknown.what}", unknown.spread)
-                element = unknown.put(element, values)
-                found.append(_Drawn(unknown.what, link.part, values, unknown.settle))
-            self._elements[position, place] = element, found
-        return self._elements[position, place]
+                if peak.plates is not None and unknown.what == PLATES_UNKNOWN:
+                    continue  # the peak's own plates are in place of the column's
+                key = f"part {link.part.position}.{place} {unknown.what}"
+                if key not in self._drawn:
+                    values = self.draws.of(key, unknown.spread)
+                    self._drawn[key] = _Drawn(
+                        unknown.what, link.part, unknown.settle, values, link.element, unknown.put
+                    )
+                found.append(self._drawn[key])
+        return found
 
-    def _streams(self, peak: Peak, number: int, drawn: list[_Drawn]) -> _Streams:
-        """Return what flows with D and viscosity drawn, where they were estimated."""
-        factors: dict[str, Real] = {"D": 1.0, "viscosity": 1.0}
+    def _of_peak(self, peak: Peak, number: int) -> list[_Drawn]:
+        """Return what is unknown of a peak and of the liquid, drawn, where it was estimated."""
         viscosity = self._instrument.viscosity
         unsure = (
-            ("D", f"peak {number} D", peak.estimate.uncertainty, "D, measured or looked up"),
-            ("viscosity", "viscosity", viscosity.uncertainty if viscosity else 0.0, "viscosity, measured"),
+            (DIFFUSION, f"peak {number} D", peak.estimate.uncertainty, "D, measured or looked up"),
+            (VISCOSITY, "viscosity", viscosity.uncertainty if viscosity else 0.0, "viscosity, measured"),
+            (
+                PLATES_UNKNOWN,
+                f"peak {number} plates",
+                PLATES if peak.plates is not None else 0.0,
+                "N measured with your analyte at this flow",
+            ),
         )
         for what, key, uncertainty, settle in unsure:
-            if uncertainty:
-                factors[what] = self.draws.of(key, Factor(uncertainty))
-                drawn.append(_Drawn(what, None, np.asarray(factors[what]), settle))
-        return _Streams(self._instrument, peak, factors["D"], factors["viscosity"])
+            if uncertainty and key not in self._drawn:
+                self._drawn[key] = _Drawn(what, None, settle, self.draws.of(key, Factor(uncertainty)))
+        return [self._drawn[key] for _, key, uncertainty, _ in unsure if uncertainty]
 
-    def _columns(
-        self, chain: tuple[Link, ...], peak: Peak, number: int, stream: _Streams, drawn: list[_Drawn]
-    ) -> tuple[Real, Real]:
-        """Return retention time [s] in the columns of the chain and their variance [s²]; 0 without a column."""
+    def _block(self, chain: tuple[Link, ...], peak: Peak, drawn: list[_Drawn], block: slice) -> _Sums:
+        """Compute a block of the draws; blocks, because what fits into the processor's cache is much quicker."""
+        elements = [link.element for link in chain]
+        factors: dict[str, Real] = {}
+        for one in drawn:
+            if one.put is None:
+                factors[one.what] = one.values[block]
+                continue
+            place = next(n for n, link in enumerate(chain) if link.element is one.element)
+            elements[place] = one.put(elements[place], one.values[block])
+        count = len(range(self.draws.count)[block])
 
-        def columns(found: Iterable[tuple[Part, Element]]) -> list[Column]:
-            return [bed.retained(stream(part), peak.k or 0.0) for part, bed in found if isinstance(bed, Bed)]
+        def stream(part: Part) -> Stream:
+            here = self._instrument.stream(part, peak.diffusion_in(part) * factors.get(DIFFUSION, 1.0))
+            if here.viscosity is None or VISCOSITY not in factors:
+                return here
+            return replace(here, viscosity=here.viscosity * factors[VISCOSITY])
 
-        passed = columns((link.part, self._element(link)[0]) for link in chain)
-        time, variance = sum(one.delay() for one in passed), sum(one.variance() for one in passed)
-        if peak.plates is None or not passed:
-            return time, variance
-        # the peak's own plates are those of all columns together, whatever each of them has
-        last = links(self._instrument, self._instrument.detectors[-1])
-        every = columns((link.part, link.element) for link in last)
-        factor = self.draws.of(f"peak {number} plates", Factor(PLATES))
-        drawn[:] = [one for one in drawn if one.what != "plates"]
-        drawn.append(_Drawn("plates", None, factor, "N measured with your analyte at this flow"))
-        nominal = columns((link.part, link.element) for link in chain)
-        whole = sum(one.delay() for one in every) ** 2 / sum(one.variance() for one in every)
-        return time, sum(one.variance() for one in nominal) * whole / (peak.plates * factor)
+        spread = Spread(chain, stream, (count,), elements)
+        rows = list(spread.rows().values())
+        leads = np.stack([row.gain for row in rows]).argmax(axis=0) if rows else np.zeros(0, dtype=np.int64)
+        beds = [(link.part, element) for link, element in zip(chain, elements, strict=True)]
+        time, column = _columns(beds, stream, peak)
+        if peak.plates is not None:
+            last = links(self._instrument, self._instrument.detectors[-1])
+            whole, variance = _columns([(link.part, link.element) for link in last], stream, peak)
+            column = column * whole**2 / variance / (peak.plates * factors[PLATES_UNKNOWN])
+        return _Sums(
+            extra=sum((row.variance for row in rows), spread.zero),
+            column=spread.zero + column,
+            time=spread.zero + time,
+            leads=np.bincount(leads, minlength=len(rows)),
+        )
 
 
-@dataclass(frozen=True)
-class _Streams:
-    """What flows through each part, with factors on diffusion coefficient and viscosity."""
-
-    instrument: Instrument
-    peak: Peak
-    diffusion: Real
-    viscosity: Real
-
-    def __call__(self, part: Part) -> Stream:
-        """Return what flows through this part."""
-        stream = self.instrument.stream(part, self.peak.diffusion_in(part) * self.diffusion)
-        return stream if stream.viscosity is None else replace(stream, viscosity=stream.viscosity * self.viscosity)
+def _columns(found: Iterable[tuple[Part, Element]], stream: Callable[[Part], Stream], peak: Peak) -> tuple[Real, Real]:
+    """Return retention time [s] in the columns among these elements and their variance [s²]; 0 where there is none."""
+    passed = [element.retained(stream(part), peak.k or 0.0) for part, element in found if isinstance(element, Bed)]
+    return sum(one.delay() for one in passed), sum(one.variance() for one in passed)
 
 
 def _interval(values: Real) -> Interval:
-    low, high = np.percentile(values, _ENDS)
+    ordered = np.sort(values)
+    low, high = (ordered[round(end * (len(ordered) - 1))] for end in _ENDS)
     return float(low), float(high)
 
 
-def _leaders(rows: tuple[Row, ...], gains: list[Values]) -> tuple[tuple[Row, float], ...]:
-    if not rows:
-        return ()
-    stacked = np.stack(gains)
-    counts = np.bincount(stacked.argmax(axis=0), minlength=len(rows)) / stacked.shape[1]
-    return tuple(sorted(zip(rows, map(float, counts), strict=True), key=lambda pair: -pair[1]))
+def _leaders(rows: tuple[Row, ...], shares: Values) -> tuple[tuple[Row, float], ...]:
+    return tuple(sorted(zip(rows, map(float, shares), strict=True), key=lambda pair: -pair[1])) if rows else ()
 
 
 def _influences(drawn: list[_Drawn], answers: Values) -> tuple[Influence, ...]:
@@ -212,6 +235,7 @@ def _share(order: npt.NDArray[np.int64], answers: Values) -> float:
     By the means of bins of equal size in the order of the unknown; what they scatter by chance is taken off.
     Source: first-order index of Sobol', Math. Comput. Simul. 55 (2001) 271, from memory.
     """
+    answers = answers[:_RANKED]
     total = float(np.var(answers))
     if not total or not order.size:
         return 0.0

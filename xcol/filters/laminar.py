@@ -105,8 +105,8 @@ def dimensionless_variance(t_star: Real) -> Real:
     variance = np.square(t) * np.exp(_LOG_RELATIVE(np.log(inside)))
     if t.max() > _LAST:
         variance = np.where(t > _LAST, t / 24 - 1 / 384, variance)
-    if t.min() < _FIRST:
-        short = t < _FIRST
+    short = (t < _FIRST) & (t > 0)
+    if short.any():
         variance = np.array(variance)
         variance[short] = variance_by_modes(t[short])
     result: Real = variance

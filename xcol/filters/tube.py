@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Sequence
+from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
 from functools import cached_property
 from typing import TYPE_CHECKING
@@ -15,6 +15,7 @@ from xcol.filters.interface import gaussian_transfer
 from xcol.filters.laminar import run_third_moment, run_transfer, t_star_of
 
 if TYPE_CHECKING:
+    from xcol.filters.cubic import Array
     from xcol.filters.interface import Complex, Real
 
 
@@ -95,61 +96,71 @@ def shares(tubes: Sequence[Tube], joined: Sequence[Real]) -> tuple[list[Real], l
     so that a tube cut in two is the same as the whole one. Exact for straight tubes; where bends differ, what two
     tubes share is taken with the stronger bend of the two.
     """
-    count = len(tubes)
-    edges: list[Real] = [0.0]
-    for tube in tubes:
-        edges.append(edges[-1] + tube.t_star)
-    ranks: list[int] = []  # equal bends have equal ranks, so that no V is computed twice
-    for tube in tubes:
-        ranks.append(next((r for r in ranks if _is_same(tubes[r].strength, tube.strength)), len(ranks)))
-    pairs = {(i, j): _weight(joined[i:j]) for i in range(count) for j in range(i + 1, count)}
-    pairs = {pair: weight for pair, weight in pairs.items() if np.ndim(weight) or weight}
-
-    wanted: dict[tuple[int, int, int, int], int] = {}  # edges of the stretch, ranks of the two bends
-
-    def place(start: int, end: int, first: int, second: int) -> int:
-        return wanted.setdefault((start, end, ranks[first], ranks[second]), len(wanted))
-
-    own = [place(i, i + 1, i, i) for i in range(count)]
-    brackets = {}
-    for i, j in pairs:
-        stretches = ((i, j + 1), (i, j), (i + 1, j + 1), (i + 1, j))
-        brackets[i, j] = [place(*stretch, i, j) for stretch in stretches if stretch[0] < stretch[1]]
-    v = _variances(list(wanted), edges, [tube.strength for tube in tubes])
-
-    alone: list[Real] = [tube.time_unit**2 * v[own[i]] + tube.axial_variance() for i, tube in enumerate(tubes)]
-    halves: list[Real] = [0.0] * count
-    for (i, j), weight in pairs.items():
-        whole, left, right, *between = (v[at] for at in brackets[i, j])
-        half = weight * tubes[i].time_unit * tubes[j].time_unit * (whole - left - right + sum(between)) / 2
-        halves[i] = halves[i] + half
-        halves[j] = halves[j] + half
-    return alone, halves
+    if not tubes:
+        return [], []
+    quantities = [(tube.t_star, tube.time_unit, tube.strength) for tube in tubes]
+    shape = np.broadcast_shapes(*(np.shape(value) for row in quantities for value in row), *map(np.shape, joined))
+    t_stars, units, strengths = (
+        np.stack([np.broadcast_to(value, shape) for value in column]) for column in zip(*quantities, strict=True)
+    )
+    own = units**2 * bent_variance(t_stars, strengths if np.any(strengths) else 0.0)
+    edges = np.concatenate([np.zeros((1, *shape)), np.cumsum(t_stars, axis=0)])
+    pairs = [(i, j, weight) for i in range(len(tubes)) for j, weight in _joined_to(i, joined)]
+    if not pairs:
+        half = np.zeros_like(own)
+    elif (strengths == strengths[0]).all() and edges.size * len(edges) <= _TOGETHER:
+        half = _shared_alike(edges, units, strengths[0], pairs)
+    else:
+        half = _shared_by_pairs(edges, units, strengths, pairs)
+    axial = (tube.axial_variance() for tube in tubes)
+    return [one + other for one, other in zip(own, axial, strict=True)], list(half)
 
 
-def _is_same(one: Real, other: Real) -> bool:
-    return one is other or (np.ndim(one) == 0 and np.ndim(other) == 0 and one == other)
+_TOGETHER = 2**18  # numbers that are held at once
 
 
-def _weight(joined: Sequence[Real]) -> Real:
+def _joined_to(i: int, joined: Sequence[Real]) -> Iterator[tuple[int, Real]]:
+    """Return the tubes behind the i-th to which its layers run on, each with the weight of that."""
     weight: Real = 1.0
-    for join in joined:
+    for j, join in enumerate(joined[i:], start=i + 1):
         weight = weight * join
-        if np.ndim(weight) == 0 and not weight:
-            return 0.0
-    return weight
+        if not np.any(weight):
+            return
+        yield j, weight
 
 
-def _variances(wanted: list[tuple[int, int, int, int]], edges: list[Real], strengths: list[Real]) -> list[Real]:
-    """Return V over stretches from edge to edge, each with the stronger of two bends."""
-    straight = all(np.ndim(strength) == 0 and strength == 0 for strength in strengths)
-    stretches = [np.maximum(edges[end] - edges[start], 0.0) for start, end, _, _ in wanted]
-    stacked = np.stack(np.broadcast_arrays(*stretches))  # one call, whatever the number of tubes
-    if straight:
-        return list(bent_variance(stacked, 0.0))  # type: ignore[arg-type]
-    bends = [np.maximum(strengths[one], strengths[other]) for _, _, one, other in wanted]
-    every = np.broadcast_arrays(*bends, stacked[0])[:-1]
-    return list(bent_variance(stacked, np.stack(every)))  # type: ignore[arg-type]
+def _shared_alike(edges: Array, units: Array, strength: Array, pairs: list[tuple[int, int, Real]]) -> Array:
+    """Return half of what each tube shares, all bent alike: V over every stretch from edge to edge, once."""
+    starts, ends = np.triu_indices(len(edges), k=1)
+    v = np.zeros((len(edges), *edges.shape))
+    v[starts, ends] = bent_variance(np.maximum(edges[ends] - edges[starts], 0.0), strength if strength.any() else 0.0)
+    brackets = v[:-1, 1:] - v[:-1, :-1] - v[1:, 1:] + v[1:, :-1]  # whole, left, right and what is between
+    weights = np.zeros_like(brackets)
+    for i, j, weight in pairs:
+        weights[i, j] = weight
+    shared = weights * brackets * units[:, None] * units[None, :] / 2
+    both: Array = shared.sum(axis=0) + shared.sum(axis=1)
+    return both
+
+
+def _shared_by_pairs(edges: Array, units: Array, strengths: Array, pairs: list[tuple[int, int, Real]]) -> Array:
+    """Return half of what each tube shares, a few pairs at a time: each pair has a bend of its own."""
+    half = np.zeros_like(units)
+    size = max(1, _TOGETHER // (4 * max(units[0].size, 1)))
+    for start in range(0, len(pairs), size):
+        batch = pairs[start : start + size]
+        first, second = (np.array(places) for places in list(zip(*batch, strict=True))[:2])
+        bends = np.maximum(strengths[first], strengths[second])
+        near, far = edges[first], edges[second + 1]
+        inner = [edges[first + 1], edges[second]]
+        v = bent_variance(
+            np.maximum(np.stack([far - near, inner[1] - near, far - inner[0], inner[1] - inner[0]]), 0.0), bends
+        )
+        shared = units[first] * units[second] * (v[0] - v[1] - v[2] + v[3]) / 2  # type: ignore[index]
+        for row, (i, j, weight) in enumerate(batch):
+            half[i] += weight * shared[row]
+            half[j] += weight * shared[row]
+    return half
 
 
 @dataclass(frozen=True)
@@ -168,8 +179,6 @@ class TubeRun:
 
     def shares(self) -> list[Real]:
         """Each tube's part of the variance [s²]: its own, and half of what it shares with others."""
-        if not self.tubes:
-            return []
         own, half = shares(self.tubes, (1.0,) * (len(self.tubes) - 1))
         return [one + other for one, other in zip(own, half, strict=True)]
 

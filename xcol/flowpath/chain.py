@@ -84,9 +84,9 @@ def segments(elements: Sequence[Element]) -> list[Segment]:
 
     for place, element in enumerate(elements):
         passes = 1.0 - element.remixes
-        pending = pending * passes
-        if _is_never(pending):
+        if _is_never(passes):
             end_run()
+        pending = pending * passes if tubes else 1.0
         if not isinstance(element, Bore):
             found.append(Segment((place,)))
             continue
@@ -94,6 +94,8 @@ def segments(elements: Sequence[Element]) -> list[Segment]:
             joined.append(pending)
         tubes.append(place)
         pending = passes  # a bore that mixes does so at both of its ends
+        if _is_never(passes):
+            end_run()
     end_run()
     return found
 

@@ -99,6 +99,9 @@ def curvature_of(draft: Draft) -> float | None:
 # What people write in place of a key or a kind.
 OTHER_WORDS = {
     "injection": "inject", "injector": "inject", "injection_volume": "inject", "sample": "inject",
+    "bend": "bend_radius", "bends": "bend_radius", "curvature": "bend_radius", "coil": "coil_diameter",
+    "coil_radius": "coil_diameter", "loop_volume": "loop", "loop_bore": "loop", "averaging": "dwell",
+    "tolerance": "bore_tolerance", "rise": "rise_time", "optical_path": "path_length", "pathlength": "path_length",
     "tubing": "tube", "capillary": "tube", "line": "tube", "pipe": "tube",
     "union": "fitting", "connector": "fitting", "valve": "fitting", "frit": "fitting",
     "tee": "fitting", "connection": "fitting", "fittings": "fitting",

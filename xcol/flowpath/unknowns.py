@@ -37,9 +37,11 @@ class Factor:
     relative: float
 
     def draw(self, uniform: Uniform01) -> Values:
-        """Return factors (Box and Muller's transform of two uniform numbers)."""
-        radius, angle = uniform(), uniform()
-        normal = np.sqrt(-2 * np.log(1 - radius)) * np.cos(2 * math.pi * angle)
+        """Return factors (Box and Muller's transform: of two uniform numbers two normal ones)."""
+        numbers = uniform()
+        half = (len(numbers) + 1) // 2
+        radius, angle = np.sqrt(-2 * np.log(numbers[:half])), 2 * math.pi * numbers[-half:]
+        normal = np.concatenate([radius * np.cos(angle), radius * np.sin(angle)])[: len(numbers)]
         factors: Values = np.exp(math.log1p(self.relative) / _NINETY * normal)
         return factors
 
