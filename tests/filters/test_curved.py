@@ -1,5 +1,7 @@
 """Bent tubes: the table against its script, against the reference values, smooth, monotone, and straight at the end."""
 
+from itertools import pairwise
+
 import numpy as np
 import pytest
 from hypothesis import given
@@ -81,7 +83,7 @@ def test_a_bend_that_fades_joins_the_straight_tube_without_a_step():
         straight = float(dimensionless_variance(t))
         assert float(bent_variance(t, 0.0)) == straight
         left = [1 - float(bent_variance(t, strength)) / straight for strength in (1e-3, 1.0, 3.0, 9.99, 10.01)]
-        assert all(0 <= one <= other for one, other in zip(left, left[1:], strict=False))
+        assert all(0 <= one <= other for one, other in pairwise(left))
         assert left[0] < 1e-9
         assert left[3] == pytest.approx(left[4], rel=0.02, abs=1e-6)
 

@@ -1,6 +1,7 @@
 """A loop that is washed out, a cell that is read over its bore."""
 
 import math
+from itertools import pairwise
 
 import numpy as np
 import pytest
@@ -52,7 +53,7 @@ def test_a_long_loop_is_a_plug():
 
 def test_it_falls_from_many_plugs_to_one_with_t_star():
     relative = [in_plugs_of_volume(loop(t)) for t in np.logspace(-4, 3, 60)]
-    assert all(one > other for one, other in zip(relative, relative[1:], strict=False))
+    assert all(one > other for one, other in pairwise(relative))
     assert relative[-1] > 1 / 12
 
 

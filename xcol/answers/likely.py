@@ -193,7 +193,8 @@ class Sampler:
 
         spread = Spread(chain, stream, (count,), elements)
         rows = list(spread.rows().values())
-        leads = np.stack([row.gain for row in rows]).argmax(axis=0) if rows else np.zeros(0, dtype=np.int64)
+        gains = [spread.gain(place) for place in spread.rows()]
+        leads = np.stack(gains).argmax(axis=0) if gains else np.zeros(0, dtype=np.int64)
         beds = [(link.part, element) for link, element in zip(chain, elements, strict=True)]
         time, column = _columns(beds, stream, peak)
         if peak.plates is not None:

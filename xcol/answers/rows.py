@@ -77,7 +77,7 @@ def rows_of(instrument: Instrument, chain: tuple[Link, ...], printed: Spread) ->
     for place, spread in printed.rows().items():
         link = chain[place]
         dean = ends[0].dean(place)
-        at_low, at_high = _reasons(link, dean, apart=spread.run == worst[place].run)
+        at_low, at_high = _reasons(link, dean, apart=spread.segment.places == worst[place].segment.places)
         figures = _figures(spread, best[place], dean, printed.zero)
         found[place] = [
             Row(

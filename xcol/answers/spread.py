@@ -8,6 +8,7 @@ from __future__ import annotations
 
 from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass
+from functools import cached_property
 from typing import TYPE_CHECKING
 
 import numpy as np
@@ -27,6 +28,9 @@ if TYPE_CHECKING:
     Values = npt.NDArray[np.float64]
 
 
+_CLOSED_UP = 8
+
+
 @dataclass(frozen=True)
 class LinkSpread:
     """What a link contributes: variance [s²], ``own`` and what it shares with other tubes of its run.
@@ -38,17 +42,12 @@ class LinkSpread:
     half: Values
     tube: Tube | None = None
     run_t_star: Values | None = None  # of the whole run of tubes that it belongs to
-    run: tuple[int, ...] = ()  # places of the tubes of its run
+    segment: Segment = Segment(())  # the run that it belongs to
 
     @property
     def variance(self) -> Values:
         """Variance of its row [s²]."""
         return self.own + self.half
-
-    @property
-    def gain(self) -> Values:
-        """Variance [s²] that goes with it, as long as the others of its run stay as they are."""
-        return self.own + 2 * self.half
 
 
 class Spread:
@@ -70,6 +69,10 @@ class Spread:
 
     def rows(self) -> dict[int, LinkSpread]:
         """Return what each link but the columns contributes, by its place in the chain."""
+        return self._rows
+
+    @cached_property
+    def _rows(self) -> dict[int, LinkSpread]:
         found = {
             place: spread
             for segment in self._segments(range(len(self._chain)))
@@ -82,6 +85,23 @@ class Spread:
         kept = [place for place in range(len(self._chain)) if place != removed]
         variances = (spread.variance for segment in self._segments(kept) for spread in self._spreads(segment))
         return sum(variances, self.zero)
+
+    def gain(self, place: int) -> Values:
+        """Return the variance [s²] that goes with a link, the tubes of its run closing up.
+
+        In runs of more than ``_CLOSED_UP`` tubes the others keep their distance, which takes n³ fewer computations.
+        """
+        row = self.rows()[place]
+        run, joined = row.segment.places, row.segment.joined
+        if len(run) > _CLOSED_UP:
+            return row.own + 2 * row.half
+        if len(run) < 2:
+            return row.variance
+        at = run.index(place)
+        over = (joined[at - 1] * joined[at],) if 0 < at < len(run) - 1 else ()
+        rest = Segment((*run[:at], *run[at + 1 :]), (*joined[: max(at - 1, 0)], *over, *joined[at + 1 :]))
+        before = sum(self.rows()[other].variance for other in run)
+        return self.zero + before - sum(spread.variance for spread in self._spreads(rest))
 
     def dean(self, place: int) -> Values | None:
         """Return the Dean number of a tube of the chain [-], None for what is none."""
@@ -117,7 +137,7 @@ class Spread:
         run: Real = sum(tube.t_star for tube in tubes)
         own, half = shares(tubes, segment.joined)
         return [
-            LinkSpread(self.zero + one, self.zero + other, tube, self.zero + run, segment.places)
+            LinkSpread(self.zero + one, self.zero + other, tube, self.zero + run, segment)
             for one, other, tube in zip(own, half, tubes, strict=True)
         ]
 
