@@ -65,7 +65,7 @@ def test_brewery_conventional_with_every_tube_bent_at_4_cm(examples):
 
 
 def test_above_a_dean_number_of_20_the_bend_is_an_upper_estimate():
-    answer, (_, row) = rows_of('{ tube = "40 cm x 0.5 mm", bend_radius = "5 mm" }', head="")
+    _, (_, row) = rows_of('{ tube = "40 cm x 0.5 mm", bend_radius = "5 mm" }', head="")
     assert row.tube.bent_dean < 20
     text = 'flow = "4 mL/min"\nviscosity = "0.4 mPa s"\npath = [ { inject = "3 uL" }, { tube = "40 cm x 0.25 mm" },\n'
     text += '{ detector = "UV" } ]\npeaks = [ { diffusion = "8e-10 m^2/s" } ]\n'

@@ -34,6 +34,40 @@ def test_version_help_and_no_arguments(run):
     assert b"Commands" in run().stdout + run().stderr
 
 
+def test_the_same_file_and_seed_give_the_same_text(run, examples):
+    file = examples / "small-column.toml"
+    first, again, other, few = (
+        run("budget", file, *options).stdout for options in ((), (), ("--seed", "7"), ("--draws", "300"))
+    )
+    assert first == again
+    assert b"likely" in first
+    assert other != first
+    assert few != first
+    full = run("budget", file, "--full", "--seed", "7").stdout.decode()
+    assert "seed 7" in full
+
+
+def test_without_intervals_nothing_is_likely(run, examples):
+    file = examples / "brewery-narrow.toml"
+    for options in ((), ("--full",), ("--format", "markdown")):
+        done = run("budget", file, "--no-interval", *options)
+        assert done.returncode == 0
+        text = done.stdout.decode()
+        assert "(likely" not in text
+        assert "draws" not in text.replace("the draws take any curvature", "")
+        assert "best-worst" in text
+    record = json.loads(run("budget", file, "--no-interval", "--format", "json").stdout)
+    assert record["detectors"][0]["peaks"][0]["interval_plates_kept"] is None
+
+
+@pytest.mark.parametrize("options", [("--draws", "5"), ("--draws", "many"), ("--draws", "10000000"), ("--seed", "x")])
+def test_draws_that_say_nothing_are_refused(run, examples, options):
+    done = run("budget", examples / "brewery-narrow.toml", *options)
+    assert done.returncode == 2
+    assert options[0].encode() in done.stderr
+    assert b"Traceback" not in done.stderr
+
+
 def test_a_mistyped_command_or_option_is_answered(run):
     done = run("budgett", "x.toml")
     assert done.returncode == 2

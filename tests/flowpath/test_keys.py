@@ -5,7 +5,8 @@ import datetime
 import pytest
 
 from xcol.flowpath.keys import Choice, Later, Measure, Number, Sizes, Tables, Text, Tolerance, YesOrNo
-from xcol.units import LENGTH, RATIO, UnitError, described
+from xcol.flowpath.shorthand import loop_size
+from xcol.units import LENGTH, RATIO, VOLUME, UnitError, described
 
 BORE = Measure(LENGTH, 1e-6, 1e-2)
 SHARE = Measure(RATIO, 0.2, 0.99)
@@ -80,10 +81,44 @@ def test_choices_propose_the_nearest():
 
 
 def test_what_is_not_computed_yet_is_refused():
-    for reader, raw in ((Later(), "x"),):
+    with pytest.raises(UnitError) as caught:
+        Later()("x")
+    assert "not yet" in caught.value.expected
+
+
+def test_tolerances_are_shares_with_or_without_a_sign_in_front():
+    read = Tolerance()
+    assert [read(raw) for raw in ("5 %", "±5%", "+/- 5 %", 0.05, "0,05", 0)] == pytest.approx([0.05] * 5 + [0])
+    for wrong in ("5", 5, "5 um", "-5 %", "60 %", True, [], "", 10**400):
         with pytest.raises(UnitError) as caught:
-            reader(raw)
-        assert "not yet" in caught.value.expected
+            read(wrong)
+        assert "share" in caught.value.expected
+
+
+def test_yes_or_no_is_not_a_word():
+    assert YesOrNo()(True) is True
+    assert YesOrNo()(False) is False
+    for wrong in ("false", 0, None):
+        with pytest.raises(UnitError):
+            YesOrNo()(wrong)
+
+
+def test_sizes_in_one_text():
+    read = Sizes(loop_size, (Measure(VOLUME, 1e-12, 1e-3), Measure(LENGTH, 1e-6, 0.01)))
+    assert read("20 uL") == (2e-8,)
+    assert read("20 µL × 0.5 mm") == pytest.approx((2e-8, 5e-4))
+    for wrong in ("20", 20, "20 uL x 0.5", "20 uL x 0.5 mm x 1 mm", "20 mm x 0.5 mm", "20 uL x 5 m", "", [], "-1 uL"):
+        with pytest.raises(UnitError):
+            read(wrong)
+
+
+def test_a_list_of_tables_or_one_table():
+    read = Tables((), "[{ }]")
+    assert read([{"a": 1}])
+    assert read({"a": 1})
+    for wrong in ([], "x", [1], [{}, 2], 3):
+        with pytest.raises(UnitError):
+            read(wrong)
 
 
 def test_values_are_described():

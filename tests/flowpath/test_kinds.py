@@ -2,11 +2,14 @@
 
 import math
 
+import numpy as np
 import pytest
 
 from xcol.filters.signal import GAUSSIAN_RISE, Boxcar, FirstOrder, GaussianFilter
+from xcol.filters.tube import Tube
+from xcol.filters.washout import WashedOut
 from xcol.flowpath.bed import Bed
-from xcol.flowpath.elements import Block, Bore, Cell, Electronics, Mixed
+from xcol.flowpath.elements import Block, Bore, Cell, Electronics, Loop, Mixed, Stream
 from xcol.flowpath.kinds import KINDS, KINDS_LATER
 from xcol.flowpath.reader import parse
 from xcol.report.topics import TOPICS
@@ -117,3 +120,142 @@ def test_a_detector_may_have_no_cell_and_no_filter():
 def test_every_part_carries_its_limits_and_measured_drop():
     part = part_of('{ mixer = "1 uL", drop = "2 bar", max_pressure = "300 bar", max_drop = "5 bar", note = "x" }')
     assert (part.drop, part.max_pressure, part.max_drop) == pytest.approx((2e5, 3e7, 5e5))
+
+
+def injection_of(keys):
+    """The injection's element, its filter at D = 1e-9 m²/s, and σ² in µL²."""
+    text = FILE.format(part='{ mixer = "1 uL" }').replace('inject = "2 uL"', keys)
+    instrument = parse(text, "f")
+    (element,) = instrument.parts[0].elements
+    made = element.filter(instrument.stream(instrument.parts[0], 1e-9), read_here=False)
+    return element, made, float(made.variance()) * (instrument.flow * 1e9) ** 2
+
+
+def test_an_injection_without_its_loop_is_a_plug_that_may_be_smeared():
+    for keys in ('inject = "2 uL"', 'inject = "2 uL", loop = "20 uL"', 'inject = "2 uL", loop = "2 uL"'):
+        element, _, variance = injection_of(keys)
+        assert variance == pytest.approx(4 / 12)
+        assert [unknown.what for unknown in element.unknowns] == ["form of the injection"]
+    (known,) = {len(injection_of('inject = "2 uL", loop = "20 uL", emptied = "reversed"')[0].unknowns)}
+    assert known == 0
+
+
+def test_a_full_loop_is_washed_out_through_its_bore():
+    element, made, variance = injection_of('inject = "20 uL", loop = "20 uL x 0.5 mm"')
+    tube = Tube(20e-9 / (math.pi / 4 * 0.5e-3**2), 0.5e-3, 0.5e-6 / 60, 1e-9)
+    assert isinstance(element, Loop)
+    assert variance == pytest.approx(float(WashedOut(tube).variance()) * (0.5e-6 / 60 * 1e9) ** 2, rel=1e-12)
+    assert {unknown.what for unknown in element.unknowns} == {"bend", "bore"}
+    assert made.delay() == pytest.approx(WashedOut(tube).delay())
+
+
+def test_a_loop_filled_in_part_leaves_as_a_plug_or_through_its_rest():
+    loop = 'loop = "20 uL x 0.3 mm"'
+    _, reversed_, plug = injection_of(f'inject = "5 uL", {loop}, emptied = "reversed"')
+    assert plug == pytest.approx(25 / 12)
+    assert reversed_.delay() == pytest.approx(2.5e-9 / (0.5e-6 / 60))
+    same, made, through = injection_of(f'inject = "5 uL", {loop}, emptied = "same way", filled = "part"')
+    rest = Tube(15e-9 / (math.pi / 4 * 0.3e-3**2), 0.3e-3, 0.5e-6 / 60, 1e-9)
+    assert through == pytest.approx(25 / 12 + float(rest.variance()) * (0.5e-6 / 60 * 1e9) ** 2, rel=1e-12)
+    assert made.delay() == pytest.approx((2.5e-9 + 15e-9) / (0.5e-6 / 60))
+    assert "bend" in {unknown.what for unknown in same.unknowns}
+    open_, _, printed = injection_of(f'inject = "5 uL", {loop}')
+    assert printed == plug
+    assert "way of emptying" in {unknown.what for unknown in open_.unknowns}
+
+
+def test_a_file_s_bend_serves_tubes_and_loops_and_no_fitting():
+    text = 'bend_radius = "5 cm"\n' + FILE.format(part='{ fitting = "a", bore = "0.2 mm", length = "5 mm" }')
+    text = text.replace('inject = "2 uL"', 'inject = "2 uL", loop = "2 uL x 0.25 mm"').replace(
+        "  { detector",
+        '  { tube = "5 cm x 0.2 mm" },\n  { tube = "5 cm x 0.2 mm", coil_diameter = "4 cm" },\n  { detector',
+    )
+    parts = parse(text, "f").parts
+    assert [part.elements[0].curvature for part in (parts[0], parts[1], parts[3], parts[4])] == [20, 0, 20, 50]
+
+
+def test_cells_with_a_path_length_are_straight_bores():
+    def cell_of(keys):
+        text = FILE.format(part='{ mixer = "1 uL" }').replace('cell = "2.5 uL"', keys)
+        return parse(text, "f").parts[-1].elements[0]
+
+    straight = cell_of('cell = "8 uL", path_length = "10 mm"')
+    stream = Stream(1e-6 / 60, 1e-9)
+    made = straight.filter(stream, read_here=True)
+    assert float(made.variance()) / (8e-9 / stream.flow) ** 2 == pytest.approx(1.284, rel=1e-3)
+    passed = straight.filter(stream, read_here=False)
+    assert passed == Tube(10e-3, pytest.approx(math.sqrt(4 * 8e-9 / (math.pi * 10e-3))), 1e-6 / 60, 1e-9)
+    tanks = cell_of('cell = "8 uL", path_length = "10 mm", tanks = 3')
+    assert tanks.filter(stream, read_here=True).variance() == pytest.approx((8e-9 / stream.flow) ** 2 / 3)
+    plug = cell_of('cell = "8 uL"')
+    assert plug.filter(stream, read_here=True).variance() == pytest.approx((8e-9 / stream.flow) ** 2 / 12)
+    assert plug.length == 10e-3
+
+
+def test_a_cell_between_a_plug_and_a_bore_has_a_variance_between():
+    stream = Stream(1e-6 / 60, 1e-9)
+    ends = [float(Cell(8e-9, likeness=end).filter(stream, read_here=True).variance()) for end in (0.0, 1.0)]
+    middle = Cell(8e-9, likeness=np.array([0.0, 0.5, 1.0])).filter(stream, read_here=True).variance()
+    assert middle == pytest.approx([ends[0], math.sqrt(ends[0] * ends[1]), ends[1]], rel=1e-9)
+
+
+def test_response_is_the_rise_of_a_first_order_filter_and_may_be_anything():
+    (filter_,) = electronics_of('response = "0.5 s"')
+    assert filter_.made.tau == pytest.approx(0.5 / math.log(9))
+    (unknown,) = filter_.unknowns
+    best, worst = (unknown.put(filter_, end).made.variance() for end in (unknown.ends.best, unknown.ends.worst))
+    assert worst / best == pytest.approx(21.2, abs=0.05)
+    assert worst == pytest.approx(0.25)
+
+
+def test_several_filters_are_a_contribution_each():
+    keys = 'filters = [{ time_constant = "0.1 s" }, { rise_time = "0.2 s", filter = "gaussian" }, { response = "1 s" }]'
+    found = electronics_of(keys)
+    assert [filter_.contribution for filter_ in found] == ["filter 1", "filter 2", "filter 3"]
+    assert found[0].made == FirstOrder(0.1, 1.0)
+    assert found[1].made == GaussianFilter(0.2 / GAUSSIAN_RISE)
+    assert electronics_of('filters = { time_constant = "0.1 s" }')[0].made == FirstOrder(0.1, 1.0)
+
+
+def test_dwell_is_the_time_of_averaging_and_the_rate_that_of_the_points():
+    (_, rate) = electronics_of('time_constant = "0.1 s", rate = "5 Hz", dwell = "50 ms"')
+    assert rate.made == Boxcar(0.05)
+    assert rate.period == pytest.approx(0.2)
+    (_, alone) = electronics_of('time_constant = "0.1 s", dwell = "50 ms"')
+    assert (alone.made, alone.period) == (Boxcar(0.05), None)
+
+
+def test_a_fitting_remixes_unless_it_says_otherwise():
+    size = '"a", bore = "0.2 mm", length = "4 mm"'
+    for word, remixed, unknown in (("", 1, True), (", remix = true", 1, False), (", remix = false", 0, False)):
+        (element,) = part_of(f"{{ fitting = {size}{word} }}").elements
+        assert element.remixed == remixed
+        assert ("remixing" in {one.what for one in element.unknowns}) is unknown
+    (volume,) = part_of('{ fitting = "0.5 uL", remix = true }').elements
+    assert [unknown.what for unknown in volume.unknowns] == ["mixing"]
+
+
+def test_tolerances_come_from_the_file_the_catalog_or_are_assumed(tmp_path):
+    def bores(keys, head=""):
+        part = parse(head + FILE.format(part=f'{{ tube = "20 cm x 0.25 mm"{keys} }}'), str(tmp_path / "f")).parts[1]
+        return {
+            unknown.what: unknown.spread.relative for unknown in part.elements[0].unknowns if unknown.what != "bend"
+        }
+
+    assert bores("") == {"bore": 0.05, "length": 0.02}
+    assert bores(', bore_tolerance = "8 %", length_tolerance = 0') == {"bore": pytest.approx(0.08)}
+    (tmp_path / "mine.toml").write_text(
+        '[[tubing]]\nbore = "0.25 mm"\ntolerance = "3 %"\ntolerance_from = "our calipers"\nmaterials = ["steel"]\n'
+        'source = "notebook"\n',
+        encoding="utf-8",
+    )
+    assert bores("", 'catalogs = ["mine.toml"]\n') == {"bore": pytest.approx(0.03), "length": 0.02}
+
+
+def test_a_tube_of_known_volume_keeps_it_whatever_its_bore():
+    (element,) = part_of('{ tube = "a", volume = "10 uL", bore = "0.2 mm", volume_tolerance = "5 %" }').elements
+    puts = {unknown.what: unknown.put for unknown in element.unknowns}
+    assert set(puts) == {"bend", "bore", "volume"}
+    assert puts["bore"](element, 1.1).volume == pytest.approx(10e-9)
+    assert puts["bore"](element, 1.1).bore == pytest.approx(0.22e-3)
+    assert puts["volume"](element, 1.1).volume == pytest.approx(11e-9)

@@ -150,6 +150,69 @@ WRONG = {
         path(INJECT, '  { column = "2.1 x 100 mm", plates = 9000, plates_at = "1 mL/min" },\n', DETECTOR),
         "plates_at", 6,
     ),
+    "bend radius and coil": (
+        path(INJECT, '  { tube = "3 cm x 1 mm", bend_radius = "3 cm", coil_diameter = "6 cm" },\n', COLUMN, DETECTOR),
+        "coil_diameter", 6,
+    ),
+    "bend radius and coil of the file": (
+        path(INJECT, COLUMN, DETECTOR, head=HEAD + 'bend_radius = "3 cm"\ncoil_diameter = "6 cm"\n'), "coil_diameter", 5
+    ),
+    "a bend as wide as the bore": (
+        path(INJECT, '  { tube = "3 cm x 1 mm", bend_radius = "1 mm" },\n', COLUMN, DETECTOR), "bend_radius", 6
+    ),
+    "a bend without a unit": (
+        path(INJECT, '  { tube = "3 cm x 1 mm", bend_radius = 3 },\n', COLUMN, DETECTOR), "bend_radius", 6
+    ),
+    "a bend of a fitting": (
+        path(INJECT, '  { fitting = "1 uL", bend_radius = "3 cm" },\n', DETECTOR), "bend_radius", 6
+    ),
+    "filled without a loop": (path('  { inject = "2 uL", filled = "full" },\n', COLUMN, DETECTOR), "filled", 5),
+    "emptied without a loop": (path('  { inject = "2 uL", emptied = "reversed" },\n', COLUMN, DETECTOR), "emptied", 5),
+    "a full loop of which a part is injected": (
+        path('  { inject = "2 uL", loop = "9 uL", filled = "full" },\n', COLUMN, DETECTOR), "filled", 5
+    ),
+    "the same way through a loop of unknown bore": (
+        path('  { inject = "2 uL", loop = "9 uL", emptied = "same way" },\n', COLUMN, DETECTOR), "emptied", 5
+    ),
+    "emptied in another word": (
+        path('  { inject = "2 uL", loop = "9 uL", emptied = "slowly" },\n', COLUMN, DETECTOR), "emptied", 5
+    ),
+    "a loop's bore without a unit": (
+        path('  { inject = "2 uL", loop = "9 uL x 0.5" },\n', COLUMN, DETECTOR), "loop", 5
+    ),
+    "response and rise time": (
+        path(INJECT, COLUMN, DETECTOR.replace('"0.1 s"', '"0.1 s", response = "0.2 s"')), "response", 7
+    ),
+    "a form of response": (
+        path(INJECT, COLUMN, '  { detector = "UV", response = "1 s", filter = "boxcar" },\n'), "filter", 7
+    ),
+    "filters beside a time constant": (
+        path(INJECT, COLUMN, DETECTOR.replace('"0.1 s"', '"0.1 s", filters = [{ rise_time = "1 s" }]')),
+        "time_constant", 7,
+    ),
+    "a filter of the list without a time": (
+        path(INJECT, COLUMN, '  { detector = "UV", filters = [{ filter = "boxcar" }] },\n'), "filters[1].filter", 7
+    ),
+    "an empty filter of the list": (
+        path(INJECT, COLUMN, '  { detector = "UV", filters = [{ }] },\n'), "filters[1].", 7
+    ),
+    "an empty list of filters": (path(INJECT, COLUMN, '  { detector = "UV", filters = [] },\n'), "filters", 7),
+    "unknown key of a filter": (
+        path(INJECT, COLUMN, '  { detector = "UV", filters = [{ rise = "1 s" }] },\n'), "filters[1].rise", 7
+    ),
+    "a dwell longer than the period": (
+        path(INJECT, COLUMN, DETECTOR.replace('"0.1 s"', '"0.1 s", rate = "5 Hz", dwell = "0.5 s"')), "dwell", 7
+    ),
+    "a volume that keeps its layers": (
+        path(INJECT, '  { fitting = "1 uL", remix = false },\n', COLUMN, DETECTOR), "remix", 6
+    ),
+    "remix in a word": (path(INJECT, '  { fitting = "1 uL", remix = "no" },\n', COLUMN, DETECTOR), "remix", 6),
+    "tolerance of a size that is not there": (
+        path(INJECT, '  { fitting = "1 uL", bore_tolerance = "5 %" },\n', COLUMN, DETECTOR), "bore_tolerance", 6
+    ),
+    "tolerance as a length": (
+        path(INJECT, '  { tube = "3 cm x 1 mm", bore_tolerance = "5 um" },\n', COLUMN, DETECTOR), "bore_tolerance", 6
+    ),
     "unknown liquid": (path(INJECT, COLUMN, DETECTOR, head=HEAD + 'mobile_phase = "beer"\n'), "mobile_phase", 4),
     "a mobile phase without parts": (
         path(INJECT, COLUMN, DETECTOR, head=HEAD + 'mobile_phase = "water/ACN"\n'), "mobile_phase", 4

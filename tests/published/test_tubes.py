@@ -5,10 +5,13 @@ import math
 import numpy as np
 import pytest
 
+from xcol.answers.budget import budget
+from xcol.filters.curved import bent_variance, long_tube_ratio
 from xcol.filters.laminar import relative_variance
 from xcol.filters.signal import Boxcar
 from xcol.filters.tube import Tube
 from xcol.filters.volumes import Plug, TanksInSeries, dead_gap_volume
+from xcol.flowpath.reader import parse
 
 INCH = 25.4e-3
 
@@ -101,3 +104,41 @@ def test_the_half_height_width_of_a_short_tube_says_little(t_star, share, within
 def test_points_across_a_peak():
     for points, share in ((20, 0.0033), (10, 0.013)):
         assert Boxcar(4.0 / points).variance() == pytest.approx(share, rel=0.03)
+
+
+# Johnson and Kamm, J. Fluid Mech. 172 (1986) 329 (abstract read): De²Sc is the controlling parameter, and the
+# dispersion coefficient of a long bent tube falls to about 0.2 of the straight one's.
+def test_a_long_bent_tube_falls_to_a_fifth():
+    ratios = [float(long_tube_ratio(strength)) for strength in (1e4, 1e5, 1e6)]
+    assert ratios == sorted(ratios, reverse=True)
+    assert ratios[-1] == pytest.approx(0.2, abs=0.01)
+
+
+# The same abstract: in a bend the convective range ends earlier, by a factor of about two. Taken here as the t* at
+# which the variance is within 10 % of its long-tube line.
+def test_in_a_bend_the_convective_range_ends_earlier():
+    t = np.logspace(-2, 1, 2000)
+    ends = []
+    for strength in (0.0, 1e5):
+        line = t / 24 * float(long_tube_ratio(strength)) if strength else t / 24
+        ends.append(t[np.flatnonzero(np.abs(bent_variance(t, strength) / line - 1) > 0.1)[-1]])
+    assert 1.5 < ends[0] / ends[1] < 6
+
+
+# J. Chromatogr. A 1659 (2021) 462578 (abstract read): coiled loops have 20 to 40 % less variance than straight ones.
+# The theory of a uniform coil takes more: the truth lies between straight and bent, which is the range that is given.
+def test_measured_coils_lie_between_straight_and_bent():
+    text = (
+        'flow = "0.5 mL/min"\nviscosity = "0.9 mPa s"\npath = [ { inject = "1 uL" }, { tube = "50 cm x 0.25 mm" },\n'
+        '{ detector = "UV" } ]\npeaks = [ { diffusion = "1e-9 m^2/s" } ]\n'
+    )
+    row = budget(parse(text, "f")).detectors[0].peaks[0].rows[1]
+    for less in (0.2, 0.4):
+        assert row.low < (1 - less) * row.tube.straight_variance < row.high
+
+
+# J. Liq. Chromatogr. 1982 (abstract read): the worst of a fitting's range is the measured valve passage's 16 plugs.
+def test_the_worst_fitting_is_the_measured_valve():
+    text = 'flow = "1 mL/min"\npath = [ { inject = "1 uL" }, { fitting = "0.2 uL" }, { detector = "UV" } ]\n'
+    answer = budget(parse(text + 'peaks = [ { diffusion = "1e-9 m^2/s" } ]\n', "f"))
+    assert answer.in_uL2(answer.detectors[0].peaks[0].rows[1].high) == pytest.approx(0.054, rel=1e-3)

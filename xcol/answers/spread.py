@@ -29,6 +29,7 @@ if TYPE_CHECKING:
 
 
 _CLOSED_UP = 8
+_ALONE = Segment(())
 
 
 @dataclass(frozen=True)
@@ -42,7 +43,7 @@ class LinkSpread:
     half: Values
     tube: Tube | None = None
     run_t_star: Values | None = None  # of the whole run of tubes that it belongs to
-    segment: Segment = Segment(())  # the run that it belongs to
+    segment: Segment = _ALONE  # the run that it belongs to
 
     @property
     def variance(self) -> Values:

@@ -2,11 +2,14 @@
 
 from __future__ import annotations
 
+import math
+
 from xcol.filters.block import MeasuredBlock
 from xcol.filters.column import Column, void_volume
 from xcol.filters.signal import Boxcar, FirstOrder, first_order_rise
 from xcol.filters.tube import Tube, TubeRun
 from xcol.filters.volumes import Plug, TanksInSeries, dead_gap_volume
+from xcol.filters.washout import WashedOut
 from xcol.report.topics.topic import Topic
 from xcol.units import significant
 
@@ -16,10 +19,6 @@ _SQUARE = (_FLOW * 1e9) ** 2  # s² to µL²
 
 def _shown(variance: object) -> str:
     return f"{significant(float(variance) * _SQUARE, zeros=True)} µL²"  # type: ignore[arg-type]
-
-
-def _inject() -> str:
-    return f"20 µL injected: {_shown(Plug(20e-9, _FLOW).variance())} at any flow"
 
 
 def _tube() -> str:
@@ -70,8 +69,9 @@ def _block() -> str:
 
 def _detector() -> str:
     return (
-        f"a 10 µL cell as a plug: {_shown(Plug(10e-9, _FLOW).variance())}; as one stirred tank: "
-        f"{_shown(TanksInSeries(10e-9, _FLOW).variance())}"
+        f"a 10 µL cell at 1 mL/min as a plug: {_shown(Plug(10e-9, _FLOW).variance())}; as one stirred tank: "
+        f"{_shown(TanksInSeries(10e-9, _FLOW).variance())}; as a straight bore of 10 mm, D = 1e-9 m²/s: "
+        f"{_shown(WashedOut(Tube(10e-3, 1.128e-3, _FLOW, 1e-9)).variance())}"
     )
 
 
@@ -80,6 +80,14 @@ def _filter() -> str:
     return (
         f"0.5 s as a time constant: {_shown(FirstOrder(0.5).variance())} at 1 mL/min; as a 10-90 % rise "
         f"time: {_shown(FirstOrder(tau).variance())}"
+    )
+
+
+def _inject() -> str:
+    tube = Tube(20e-9 / (math.pi / 4 * 0.5e-3**2), 0.5e-3, _FLOW, 1e-9)
+    return (
+        f"20 µL injected at 1 mL/min: {_shown(Plug(20e-9, _FLOW).variance())} as a plug; from a full loop of 0.5 mm bore, "
+        f"D = 1e-9 m²/s, {_shown(WashedOut(tube).variance())}"
     )
 
 
@@ -95,12 +103,24 @@ PARTS = (
     Topic(
         "inject",
         "Injection",
-        "The injected volume enters as a plug: a rectangle in time. This is the best case. A loop "
-        "that is washed out through its own bore spreads more: 5 times for 20 µL in 0.5 mm at 1 mL/min, and more "
-        "for slow molecules.",
-        ("σ² = (V/F)²/12 [s²],  V²/12 [µL²]", "mean delay V/(2F)"),
-        "Any flow. What the sample's solvent does at the column head is not counted yet.",
-        ("variance of a rectangular distribution; Sternberg, Adv. Chromatogr. 2 (1966) 205, from memory",),
+        "Without a loop that is described, the injected volume enters as a plug: a rectangle in time. This is the best "
+        'case, and the range goes to V²/4 (assumed). With loop = "20 uL x 0.5 mm", its volume and bore, it is as the '
+        "loop is: full (where as much is injected as it holds), and washed out through its own bore, which is 5 "
+        "plugs for 20 µL in 0.5 mm at 1 mL/min and more for slow molecules; or filled in part, and then a plug where "
+        "it is emptied "
+        'the other way (emptied = "reversed"), and a plug that passes the rest of the loop, a tube, where it is emptied '
+        'the "same way". Where the file does not say which way, the plug is printed and the range goes to the other.',
+        (
+            "plug: σ² = (V/F)²/12 [s²],  V²/12 [µL²];  mean delay V/(2F)",
+            "full loop: of the density 1 − F(t), F of the loop as a tube: mean m₂/2m₁, second moment m₃/3m₁",
+            "σ²/V² at t* 0.02, 0.1, 0.5: 0.456, 0.224, 0.122;  1/12 for a long loop",
+        ),
+        "Any flow. A loop is printed as straight; its range goes to a coil of 3 cm. What the sample's solvent does "
+        "at the column head is not counted yet.",
+        (
+            "variance of a rectangular distribution; Sternberg, Adv. Chromatogr. 2 (1966) 205, from memory",
+            "washing-out by residence time theory; Danckwerts, Chem. Eng. Sci. 2 (1953) 1, from memory",
+        ),
         _inject,
         ("injection", "plug", "loop", "sample"),
     ),
@@ -118,8 +138,9 @@ PARTS = (
             "Φ → 1/(24 t*) − 1/(384 t*²) for t* > 1;  0.224 at 0.1;  0.536 at 0.01",
             "and along the tube 2·D·L/u³ [s²], u the mean velocity",
         ),
-        "Straight, round, Reynolds number below 2000. Below t* = 0.001 entrance effects blur it. Bends "
-        "mix the stream and lower the variance, up to 5 times: a straight tube is the worst case.",
+        "Round, Reynolds number below 2000. Below t* = 0.001 entrance effects blur it. Bends mix the stream and lower "
+        "the variance, up to 5 times (xcol explain bend): a straight tube is the worst case, and is what is printed "
+        "unless the file gives bend_radius or coil_diameter.",
         (
             "Aris, Proc. R. Soc. A 235 (1956) 67 (method of moments), from memory",
             "Taylor, Proc. R. Soc. A 219 (1953) 186; Golay 1958 (long-tube limit), from memory",
@@ -140,7 +161,9 @@ PARTS = (
             "σ² = Σ w_i²·V(t_i) + Σ_{i<j} w_i·w_j·[V(t_i+d+t_j) − V(t_i+d) − V(d+t_j) + V(d)] [s²]",
             "V(t) = t²·Φ(t),  w = a²/D,  t the tubes' t*,  d the t* between i and j",
         ),
-        "Straight tubes with nothing between them.",
+        "Exact for straight tubes with nothing between them. Where bends differ, what two tubes share is taken with "
+        "the stronger bend of the two. Whether a fitting mixes the stream is rarely known: that it does is printed, "
+        "the worst of the tubes beside it is that it does not (even odds in the draws); remix says which.",
         ("moment equations of laminar flow with piecewise bore, as for a tube",),
         _run,
         ("runs", "series of tubes"),
@@ -149,11 +172,11 @@ PARTS = (
         "fitting",
         "Fitting, union, frit, valve passage",
         "A volume or a dead gap is one stirred tank, unless tanks says otherwise. A bore with a length "
-        "is a short tube, mixed at both ends.",
+        "is a short tube, mixed at both ends; with remix = false it is a part of the run of tubes beside it.",
         ("σ² = (V/F)²/n [s²]", "gap: V = π/4·d_port²·gap"),
-        "Real fittings lie on either side of a tank: a measured valve passage of 0.2 µL spread 1.35 times "
-        "as much (J. Liq. Chromatogr. 1982, abstract). That a fitting mixes the stream of the tubes beside "
-        "it is the best case for them.",
+        "Real fittings lie on either side of a tank: the range goes from a plug, V²/12, to 1.35 V², which a measured "
+        "valve passage of 0.2 µL showed (J. Liq. Chromatogr. 1982, abstract). That a fitting mixes the stream of the "
+        "tubes beside it is the best case for them.",
         ("tanks in series: Levenspiel, Chemical Reaction Engineering, from memory",),
         _fitting,
         ("union", "gap", "dead volume", "frit", "valve", "port"),
@@ -199,12 +222,21 @@ PARTS = (
     Topic(
         "detector",
         "Detector: cell",
-        "The cell is read over its volume: a plug, which is the best case, or as many stirred tanks as "
-        "are given. Filter and data rate act on the signal of this detector only. A cell on the way to "
-        "a later detector is a part of that one's path; its electronics are not.",
-        ("σ² = (V/F)²/12, or (V/F)²/n with n tanks [s²]",),
-        "A real cell can be 15 times worse than a plug at 1 mL/min, and more for slow molecules.",
-        ("variance of a rectangular distribution; Sternberg, Adv. Chromatogr. 2 (1966) 205, from memory",),
+        "The cell is read over its volume: a plug, which is the best case, as many stirred tanks as are given, or, "
+        "with path_length, a straight bore that is read over its volume, which is the worst case. The range goes "
+        "from the plug to that bore (of 10 mm where no path length is given), at this flow and for this molecule. "
+        "Filter and data rate act on the signal of this detector only. A cell on the way to a later detector is a "
+        "part of that one's path (a straight bore is then a tube); its electronics are not.",
+        (
+            "plug (V/F)²/12;  n tanks (V/F)²/n [s²]",
+            "straight bore: as a full loop, of the density 1 − F(t), with t* = π·D·L/F",
+        ),
+        "A straight 10 mm bore has 1.28 V² at 1 mL/min and D = 1e-9 m²/s, 15 plugs, and more for slow molecules: 2.9 "
+        "V² for an antibody at 0.3 mL/min.",
+        (
+            "variance of a rectangular distribution; Sternberg, Adv. Chromatogr. 2 (1966) 205, from memory",
+            "residence time theory; Danckwerts, Chem. Eng. Sci. 2 (1953) 1, from memory",
+        ),
         _detector,
         ("cell", "uv", "ri"),
     ),
@@ -213,7 +245,8 @@ PARTS = (
         "Noise filter of the detector",
         "A time constant τ is that of each first-order stage, or σ of a Gaussian filter. A rise time is "
         "10-90 % of the whole filter. A word like 'response' can mean either, or the time to 90 or "
-        "99 %: look it up, the readings span a factor of 21 in variance.",
+        "99 %: the readings span a factor of 21 in variance. response is taken as 10-90 % of a first-order filter, its "
+        "range goes over all readings, and the draws take each alike: look it up. filters lists several.",
         (
             "first order: σ² = n·τ² [s²], n stages",
             "rise time: σ = t_rise/c,  c = 2.197, 2.374, 2.437, 2.468 for 1 to 4 stages",
@@ -230,8 +263,9 @@ PARTS = (
     Topic(
         "rate",
         "Data rate",
-        "The signal is averaged between two data points over the whole time between them.",
-        ("σ² = dwell²/12 [s²], dwell = 1/rate",),
+        "The signal is averaged between two data points over the whole time between them, or over dwell where that is "
+        "given. Averaging broadens; sampling alone only scatters.",
+        ("σ² = dwell²/12 [s²], dwell = 1/rate unless it is given",),
         "20 points across 4σ add 0.33 % to the variance, 10 points 1.3 %.",
         ("variance of a rectangular distribution",),
         _rate,

@@ -1,0 +1,115 @@
+"""How sure an answer is, in words: what leads is named only when it leads, and what would decide it otherwise."""
+
+import pytest
+
+from xcol.answers.budget import budget
+from xcol.answers.likely import SURE, Sampler
+from xcol.flowpath.reader import parse, read
+from xcol.report.sureness import beyond, figures, verdict_on_parts, what_settles
+
+HEAD = 'flow = "0.3 mL/min"\nviscosity = "0.9 mPa s"\n'
+COLUMN = '{ column = "2.1 x 100 mm, 3 um", plates = 12000, total_porosity = 0.6 }'
+PEAKS = 'peaks = [ { k = 2, diffusion = "1e-9 m^2/s" } ]\n'
+
+
+def answer_of(*parts):
+    answer = budget(parse(HEAD + "path = [\n" + ",\n".join(parts) + "\n]\n" + PEAKS, "f"))
+    return (
+        answer,
+        answer.detectors[-1].peaks[0],
+        Sampler(answer).of(answer.detectors[-1], answer.detectors[-1].peaks[0]),
+    )
+
+
+def words_of(*parts):
+    _, peak, likely = answer_of(*parts)
+    return " ".join(verdict_on_parts(likely, peak, 2000))
+
+
+@pytest.mark.parametrize(
+    ("part", "words"),
+    [
+        ('{ tube = "2 m x 0.5 mm", name = "long line" }', "long line"),
+        ('{ fitting = "filter", volume = "20 uL" }', "filter"),
+        ('{ mixer = "20 uL", name = "loop of old" }', "loop of old"),
+        ('{ block = "400 uL^2", name = "autosampler" }', "autosampler"),
+    ],
+)
+def test_a_part_that_leads_whatever_is_unknown_is_named(part, words):
+    text = words_of('{ inject = "0.5 uL" }', part, COLUMN, '{ detector = "UV", cell = "0.5 uL" }')
+    assert text.startswith("Surest gain: ")
+    assert words in text
+    assert "%" in text
+
+
+def test_injection_cell_filter_and_rate_are_named_by_what_to_do():
+    small = '{ inject = "0.2 uL" }'
+    for parts, words in (
+        (('{ inject = "50 uL" }', COLUMN, '{ detector = "UV", cell = "0.5 uL" }'), "inject less"),
+        ((small, COLUMN, '{ detector = "UV", cell = "50 uL", tanks = 1 }'), "smaller cell of"),
+        ((small, COLUMN, '{ detector = "UV", time_constant = "3 s" }'), "faster filter of"),
+        ((small, COLUMN, '{ detector = "UV", rate = "0.1 Hz" }'), "faster rate of"),
+    ):
+        assert words in words_of(*parts)
+
+
+def test_what_is_open_names_two_or_three_and_what_decides(examples):
+    answer = budget(read(str(examples / "brewery-conventional.toml")))
+    peak = answer.detectors[0].peaks[1]
+    likely = Sampler(answer).of(answer.detectors[0], peak)
+    text = " ".join(verdict_on_parts(likely, peak, 2000))
+    assert "Surest" not in text
+    named = [row for row, _ in likely.leaders[:3]]
+    assert 2 <= text.count("%)") + text.count("% of draws)") <= 3
+    assert "union run" in text
+    assert "loop" in text
+    assert what_settles(likely, named, has_column=True)
+
+
+def test_the_union_run_itself_does_not_ask_for_a_union_run(examples):
+    answer = budget(read(str(examples / "union-run.toml")))
+    peak = answer.detectors[0].peaks[0]
+    likely = Sampler(answer).of(answer.detectors[0], peak)
+    text = " ".join(verdict_on_parts(likely, peak, 2000))
+    assert "union run" not in text
+    assert "measured" in text
+
+
+def test_a_path_that_costs_nothing_names_no_part():
+    text = words_of('{ inject = "0.1 uL" }', COLUMN, '{ detector = "UV", cell = "0.1 uL", time_constant = "0.01 s" }')
+    assert "Surest" not in text
+    assert "Nothing" in text
+
+
+def test_no_part_is_named_that_leads_in_less_than_nine_of_ten_draws(examples):
+    for file in examples.glob("*.toml"):
+        answer = budget(read(str(file)))
+        sampler = Sampler(answer)
+        for found in answer.detectors:
+            for peak in found.peaks:
+                likely = sampler.of(found, peak)
+                text = " ".join(verdict_on_parts(likely, peak, 2000))
+                assert ("Surest" in text) <= (likely.leaders[0][1] >= SURE)
+
+
+def test_a_printed_figure_outside_of_its_interval_says_which_end_it_is(examples):
+    outside = 0
+    for file in examples.glob("*.toml"):
+        answer = budget(read(str(file)))
+        sampler = Sampler(answer)
+        for found in answer.detectors:
+            for peak in found.peaks:
+                if peak.plates_kept is None:
+                    continue
+                low, high = sampler.of(found, peak).plates_kept
+                remark = beyond(peak.plates_kept, (low, high), peak)
+                assert bool(remark) == (not low <= peak.plates_kept <= high)
+                outside += bool(remark)
+    assert outside
+    assert "worse" in beyond(0.1, (0.2, 0.3), peak)
+    assert "better" in beyond(0.4, (0.2, 0.3), peak)
+
+
+def test_figures():
+    assert figures((103.2, 208.9)) == "103-209"
+    assert figures((4.0, 4.0)) == "4.00"
