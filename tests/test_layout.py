@@ -37,8 +37,9 @@ def test_the_top_level_is_what_it_should_be(root):
 # Modules that hold records, tables of words or constants, or that the test beside them runs whole.
 WITHOUT_A_TEST_OF_THEIR_OWN = {
     "elements", "model", "estimate", "catalog_records", "catalog_kinds", "catalog_values", "composition_words",
-    "liquids", "curved_table", "straight_table", "bed", "file_keys", "findings", "part_reader", "peak_reader", "laminar_modes", "table", "stream", "topic",
-    "parts", "quantities", "ranges", "tolerances", "budget_tables", "app", "output", "__main__",
+    "liquids", "curved_table", "straight_table", "bed", "file_keys", "findings", "part_reader", "peak_reader",
+    "laminar_modes", "table", "stream", "topic", "parts", "quantities", "ranges", "tolerances", "budget_tables",
+    "detail_tables", "app", "output", "__main__",
 }  # fmt: skip
 
 

@@ -71,7 +71,7 @@ def peaks_grid(answer: Budget, peaks: tuple[PeakBudget, ...], likely: Sequence[L
             for peak in peaks
         )
         return Grid(headers, rows, (False, True, True, True, True))
-    headers = ("peak", "k", "t_R, min", "plates", "kept", "likely", "W½, s", "column's", "Rs kept")
+    headers = ("peak", "k", "t_R, min", "plates", "kept", "likely", "W½, s", "alone", "Rs")
     rows = tuple(
         (
             peak.peak.name,
@@ -89,35 +89,6 @@ def peaks_grid(answer: Budget, peaks: tuple[PeakBudget, ...], likely: Sequence[L
     return Grid(headers, rows, (False, *(True,) * 8))
 
 
-def detail_grid(answer: Budget, peak: PeakBudget, *, wide: bool) -> Grid:
-    """Return every contribution to one peak; ``wide`` with side, s² and share of all."""
-    columns: list[tuple[str, bool, list[str]]] = [
-        ("part", False, [contribution_label(row.part, row.contribution) for row in peak.rows]),
-        ("held, µL", True, [_held(row) for row in peak.rows]),
-        ("t*", True, [_or_dash(row.tube.t_star if row.tube else None) for row in peak.rows]),
-        ("µL²", True, [three(answer.in_uL2(row.variance)) for row in peak.rows]),
-        ("best-worst", True, [span_of(answer, row.low, row.high) for row in peak.rows]),
-        (
-            "long-tube",
-            True,
-            [_or_dash(answer.in_uL2(row.tube.longtube_variance) if row.tube else None) for row in peak.rows],
-        ),
-        ("share", True, [percent(row.share_extra) for row in peak.rows]),
-        ("if gone", True, [percent(row.plates_kept_without) for row in peak.rows]),
-    ]
-    if wide:
-        columns[1:1] = [("side", False, [row.side for row in peak.rows])]
-        columns += [
-            ("s²", True, [three(row.variance) for row in peak.rows]),
-            ("of all", True, [percent(row.share_total) for row in peak.rows]),
-        ]
-    return Grid(
-        tuple(header for header, _, _ in columns),
-        tuple(zip(*(cells for _, _, cells in columns), strict=True)),
-        tuple(right for _, right, _ in columns),
-    )
-
-
 def pressure_grid(answer: Budget) -> Grid:
     """Return flow, Reynolds number, drop, inlet pressure with its range, and limit of each part."""
     headers = ("part", "mL/min", "Re", "drop, bar", "inlet, bar", "range", "limit, bar")
@@ -125,7 +96,7 @@ def pressure_grid(answer: Budget) -> Grid:
         (
             name_of(row.part),
             significant(row.flow * 60e6),
-            _or_dash(row.reynolds),
+            or_dash(row.reynolds),
             bars(row.drop),
             bars(row.inlet),
             span(row.inlet),
@@ -134,32 +105,6 @@ def pressure_grid(answer: Budget) -> Grid:
         for row in answer.pressure.rows
     )
     return Grid(headers, rows, (False, *(True,) * 6))
-
-
-def reasons_grid(peak: PeakBudget) -> Grid:
-    """Return for each contribution with a range why it is as low and as high as it may be."""
-    rows = tuple(
-        (contribution_label(row.part, row.contribution), row.at_low, row.at_high)
-        for row in peak.rows
-        if row.low < row.high
-    )
-    return Grid(("part", "best", "worst"), rows, (False, False, False))
-
-
-def bends_grid(answer: Budget, peak: PeakBudget) -> Grid:
-    """Return each tube straight and bent: Dean number, De²Sc, and both variances, its own without what it shares."""
-    tubes = [(row, row.tube) for row in peak.rows if row.tube is not None and row.part.viscosity is not None]
-    rows = tuple(
-        (
-            contribution_label(row.part, row.contribution),
-            _or_dash(tube.bent_dean or None),
-            _or_dash(tube.bent_strength or None),
-            three(answer.in_uL2(tube.straight_variance)),
-            three(answer.in_uL2(tube.bent_variance)),
-        )
-        for row, tube in tubes
-    )
-    return Grid(("tube", "De", "De²Sc", "straight, µL²", "bent, µL²"), rows, (False, True, True, True, True))
 
 
 def span_of(answer: Budget, low: float, high: float) -> str:
@@ -209,11 +154,8 @@ def span(drop: PressureRange | None) -> str:
     return f"{three(drop.low / 1e5)}-{three(drop.high / 1e5)}"
 
 
-def _held(row: Row) -> str:
-    return significant(row.volume * 1e9) if row.side != "signal" else "-"
-
-
-def _or_dash(value: float | None) -> str:
+def or_dash(value: float | None) -> str:
+    """Return a figure, '-' where there is none."""
     return three(value) if value is not None else "-"
 
 

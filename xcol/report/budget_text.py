@@ -8,26 +8,22 @@ from typing import TYPE_CHECKING
 from xcol.answers.doubt import over_diffusion
 from xcol.report.budget_tables import (
     bars,
-    bends_grid,
-    detail_grid,
     peaks_grid,
     percent,
     plates,
     pressure_grid,
-    reasons_grid,
     shares,
     span,
     three,
 )
+from xcol.report.detail_tables import detail_grid, reasons_grid, tubes_grid, unknowns_grid
 from xcol.report.labels import name_of, show
-from xcol.report.sheet import Sheet, fitted, markdown
+from xcol.report.sheet import Grid, Sheet, fitted, markdown
 from xcol.report.sureness import (
     beyond,
     ends_line,
     figures,
-    influence_lines,
     interval_line,
-    leaders_line,
     verdict_on_parts,
 )
 from xcol.units import FLOW, PRESSURE, TEMPERATURE, VISCOSITY, VOLUME, significant
@@ -61,12 +57,13 @@ def full_report(
         for one, doubt in zip(found.peaks, doubts, strict=True):
             sheet.line()
             sheet.line(_peak_line(one, doubt, answer), indent=2)
-            sheet.grid(detail_grid(answer, one, wide=sheet.width >= 110), indent=2)
-            for line in how_sure(answer, found, one, sampler):
+            likely = sampler.of(found, one) if sampler is not None else None
+            sheet.grid(detail_grid(answer, one, likely, wide=sheet.width >= 110), indent=2)
+            for line in how_sure(answer, one, likely, sampler):
                 sheet.line(line, indent=2, hang=2)
-            if (bends := bends_grid(answer, one)).rows:
-                sheet.line("Tubes by themselves, straight and bent (as entered, or at 3 cm):", indent=2)
-                sheet.grid(bends, indent=4)
+            for title, grid in _further(answer, one, likely):
+                sheet.line(title, indent=2, hang=2)
+                sheet.grid(grid, indent=4, flexible=len(grid.headers) - 1 if grid.right[-1] is False else 0)
         sheet.line()
         sheet.line("What the ends of the ranges are", "bold")
         for label, best, worst in reasons_grid(found.peaks[0]).rows:
@@ -94,17 +91,24 @@ def likely_of(sampler: Sampler | None, at: DetectorBudget) -> list[Likely | None
     return [sampler.of(at, peak) if sampler is not None else None for peak in at.peaks]
 
 
-def how_sure(answer: Budget, at: DetectorBudget, peak: PeakBudget, sampler: Sampler | None) -> list[str]:
-    """Return how sure the answer for a peak is, in lines: intervals, ends, which part leads, what moves it."""
-    if sampler is None:
-        return [line for line in (ends_line(peak),) if line]
-    likely = sampler.of(at, peak)
-    lines = [interval_line(likely, peak, answer, sampler.draws.count, sampler.draws.seed), ends_line(peak)]
-    lines.append(leaders_line(likely))
-    if moves := influence_lines(likely):
-        what = "plates kept" if likely.plates_kept is not None else "variance added"
-        lines.append(f"Of the scatter of {what} over the draws comes from {'; '.join(moves)}.")
+def how_sure(answer: Budget, peak: PeakBudget, likely: Likely | None, sampler: Sampler | None) -> list[str]:
+    """Return how sure the answer for a peak is, in lines: its intervals, and its ends."""
+    lines = [ends_line(peak)]
+    if likely is not None and sampler is not None:
+        lines.insert(0, interval_line(likely, peak, answer, sampler.draws.count, sampler.draws.seed))
     return [line for line in lines if line]
+
+
+def _further(answer: Budget, peak: PeakBudget, likely: Likely | None) -> list[tuple[str, Grid]]:
+    """Return the tables below the one of a peak's contributions, those that have rows."""
+    found = []
+    if likely is not None:
+        what = "plates kept" if likely.plates_kept is not None else "variance added"
+        found.append((f"What the scatter of the {what} comes from", unknowns_grid(likely)))
+    found.append(
+        ("Tubes by themselves, µL²; De, De²Sc and bent at the bend entered, or at 3 cm", tubes_grid(answer, peak))
+    )
+    return [(title, grid) for title, grid in found if grid.rows]
 
 
 def budget_markdown(answer: Budget, at: DetectorBudget, peak: PeakBudget, sampler: Sampler | None = None) -> str:
@@ -118,10 +122,11 @@ def budget_markdown(answer: Budget, at: DetectorBudget, peak: PeakBudget, sample
         for one, doubt in zip(found.peaks, doubts, strict=True):
             pieces.append(f"### {one.peak.name}\n")
             pieces.append(_peak_line(one, doubt, answer) + "\n")
-            pieces.append(markdown(detail_grid(answer, one, wide=True)))
-            pieces += [line + "\n" for line in how_sure(answer, found, one, sampler)]
-            if (bends := bends_grid(answer, one)).rows:
-                pieces.append(markdown(bends))
+            likely = sampler.of(found, one) if sampler is not None else None
+            pieces.append(markdown(detail_grid(answer, one, likely, wide=True)))
+            pieces += [line + "\n" for line in how_sure(answer, one, likely, sampler)]
+            for title, grid in _further(answer, one, likely):
+                pieces += [title + "\n", markdown(grid)]
         pieces += ["### What the ends of the ranges are\n", markdown(reasons_grid(found.peaks[0]))]
     pieces += ["## Pressure\n", markdown(pressure_grid(answer)), _pressure_line(answer) + "\n"]
     for title, lines in titled_lists(answer):
@@ -139,21 +144,20 @@ def verdict(answer: Budget, at: DetectorBudget, peak: PeakBudget, sampler: Sampl
     if peak.plates_column is None:
         sigma = math.sqrt(extra)
         return [
-            f"Without a column, the {name_of(at.detector)} records a band of σ = {three(sigma)} µL "
+            f"Without a column, {_the(at)} records a band of σ = {three(sigma)} µL "
             f"({three(extra)} µL²{added.replace(' (', ', ').removesuffix(')')}) or {three(peak.sigma)} s. "
             "Compare moments: its width at half height says little.",
             *on_parts,
         ]
     whose = "column's" if len(peak.columns) == 1 else "columns'"
-    kept, remark = percent(peak.plates_kept), ""
+    kept, remark, own = percent(peak.plates_kept), "", three(answer.in_uL2(peak.variance_column))
     if likely and likely.plates_kept and peak.plates_kept is not None:
         kept += _likely(shares(likely.plates_kept))
         remark = beyond(peak.plates_kept, likely.plates_kept, peak)
     lines = [
-        f"{_which(peak)}: the {name_of(at.detector)} records {plates(peak.plates_observed)} of "
+        f"{_which(peak)}: {_the(at)} records {plates(peak.plates_observed)} of "
         f"{plates(peak.plates_column)} plates, {kept}.",
-        f"The path adds {three(extra)} µL²{added} to the {whose} own "
-        f"{three(answer.in_uL2(peak.variance_column))}{f' ({remark})' if remark else ''}.",
+        f"The path adds {three(extra)} µL²{added}{f': {remark}' if remark else f' to the {whose} own {own}'}.",
     ]
     others = [
         f"{name_of(found.detector)} {plates(same.plates_observed)} ({percent(same.plates_kept)})"
@@ -173,6 +177,10 @@ def _likely(interval: str) -> str:
 
 def _in_uL2(answer: Budget, interval: tuple[float, float]) -> tuple[float, float]:
     return answer.in_uL2(interval[0]), answer.in_uL2(interval[1])
+
+
+def _the(at: DetectorBudget) -> str:
+    return at.detector.name or f"the {name_of(at.detector)}"
 
 
 def _which(peak: PeakBudget) -> str:

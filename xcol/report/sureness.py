@@ -5,7 +5,7 @@ from __future__ import annotations
 from typing import TYPE_CHECKING
 
 from xcol.report.budget_tables import percent, shares, three
-from xcol.report.labels import contribution_label, name_of
+from xcol.report.labels import name_of
 
 if TYPE_CHECKING:
     from xcol.answers.budget import Budget, PeakBudget
@@ -41,10 +41,10 @@ def beyond(printed: float, interval: tuple[float, float], peak: PeakBudget) -> s
     low, high = interval
     if low <= printed <= high:
         return ""
-    if printed < low:
-        straight = any(row.tube is not None and row.tube.strength == 0 and row.low < row.variance for row in peak.rows)
-        return f"{'tubes straight' if straight else 'all at its worst'}: printed is the worse end"
-    return "plugs: printed is the better end"
+    if printed > high:
+        return "printed at its best: plugs"
+    straight = any(row.tube is not None and row.tube.strength == 0 and row.low < row.variance for row in peak.rows)
+    return "tubes printed straight, the worst" if straight else "printed at its worst"
 
 
 def verdict_on_parts(likely: Likely, peak: PeakBudget, draws: int) -> list[str]:
@@ -60,8 +60,8 @@ def verdict_on_parts(likely: Likely, peak: PeakBudget, draws: int) -> list[str]:
         named = list(likely.leaders[:2])
     if not named:
         return []
-    listed = [f"{_named(row)} ({percent(share)})" for row, share in named]
-    listed[0] = listed[0].replace("%)", "% of draws)")
+    listed = [f"{_named(row)} {percent(share)}" for row, share in named]
+    listed[0] += " of draws"
     lines = [f"Could lead: {', '.join(listed)}."]
     if settles := what_settles(likely, [row for row, _ in named], has_column=peak.plates_column is not None):
         lines.append(f"To decide: {'; '.join(settles)}.")
@@ -79,16 +79,6 @@ def what_settles(likely: Likely, rows: list[Row], *, has_column: bool) -> list[s
             found[settle_in_words(influence)] = None
     # without a column the path is the union run itself
     return [text if has_column else text.replace("a union run", "this path's variance, measured") for text in found]
-
-
-def influence_lines(likely: Likely, most: int = 6) -> list[str]:
-    """Return the unknowns that move the answer most, each with its share and what would settle it."""
-    return [
-        f"{_of(influence)}: {percent(influence.share)}"
-        + (f" ({settle_in_words(influence)})" if influence.settle else "")
-        for influence in likely.influences[:most]
-        if influence.share >= 0.01
-    ]
 
 
 def interval_line(likely: Likely, peak: PeakBudget, answer: Budget, draws: int, seed: int) -> str:
@@ -117,16 +107,6 @@ def ends_line(peak: PeakBudget) -> str:
     return f"End to end, every part at its best or at its worst: {shares((worst, best))} kept, {lost}."
 
 
-def leaders_line(likely: Likely) -> str:
-    """Return in what share of the draws each part leads."""
-    listed = [
-        f"{contribution_label(row.part, row.contribution)} {percent(share)}"
-        for row, share in likely.leaders
-        if share >= 0.01
-    ]
-    return f"Leads in so many draws: {', '.join(listed)}." if listed else ""
-
-
 def _action(row: Row) -> str:
     return _ACTIONS.get(row.contribution, _FILTER).format(name=_plain_name(row))
 
@@ -143,8 +123,13 @@ def _plain_name(row: Row) -> str:
     return f'"{name}"' if row.part.name else name
 
 
-def _of(influence: Influence) -> str:
-    return f"{influence.what} of {name_of(influence.part)}" if influence.part is not None else influence.what
+def unknown_in_words(influence: Influence) -> str:
+    """Return an unknown with the name of its part: 'bend of valve to column', 'mixing of UV cell'."""
+    part = influence.part
+    if part is None or (part.kind == "inject" and not part.name):
+        return influence.what
+    cell = " cell" if influence.what == "mixing" and part.kind == "detector" else ""
+    return f"{influence.what} of {name_of(part)}{cell}"
 
 
 def settle_in_words(influence: Influence) -> str:

@@ -79,7 +79,7 @@ def bend(curvature: float | None) -> tuple[float, tuple[Unknown, ...]]:
 def injection_form() -> Unknown:
     """Return how an injection enters of which the loop is not described."""
     ends = Ends(PLUG, _WORST_INJECTION, "a plug", "smeared to V²/4 (assumed)")
-    settle = 'the loop with its bore, loop = "20 uL x 0.5 mm"'
+    settle = "the loop with its bore"
     return Unknown("form of the injection", Between(PLUG, _WORST_INJECTION), setting("spread"), ends, settle)
 
 

@@ -86,8 +86,8 @@ def _filter() -> str:
 def _inject() -> str:
     tube = Tube(20e-9 / (math.pi / 4 * 0.5e-3**2), 0.5e-3, _FLOW, 1e-9)
     return (
-        f"20 µL injected at 1 mL/min: {_shown(Plug(20e-9, _FLOW).variance())} as a plug; from a full loop of 0.5 mm bore, "
-        f"D = 1e-9 m²/s, {_shown(WashedOut(tube).variance())}"
+        f"20 µL injected at 1 mL/min: {_shown(Plug(20e-9, _FLOW).variance())} as a plug; from a full loop of 0.5 mm "
+        f"bore, D = 1e-9 m²/s, {_shown(WashedOut(tube).variance())}"
     )
 
 
@@ -107,9 +107,9 @@ PARTS = (
         'case, and the range goes to V²/4 (assumed). With loop = "20 uL x 0.5 mm", its volume and bore, it is as the '
         "loop is: full (where as much is injected as it holds), and washed out through its own bore, which is 5 "
         "plugs for 20 µL in 0.5 mm at 1 mL/min and more for slow molecules; or filled in part, and then a plug where "
-        "it is emptied "
-        'the other way (emptied = "reversed"), and a plug that passes the rest of the loop, a tube, where it is emptied '
-        'the "same way". Where the file does not say which way, the plug is printed and the range goes to the other.',
+        'it is emptied the other way (emptied = "reversed"), and a plug that passes the rest of the loop, a tube, '
+        'where it is emptied the "same way". Where the file does not say which way, the plug is printed and the range '
+        "goes to the other.",
         (
             "plug: σ² = (V/F)²/12 [s²],  V²/12 [µL²];  mean delay V/(2F)",
             "full loop: of the density 1 − F(t), F of the loop as a tube: mean m₂/2m₁, second moment m₃/3m₁",
