@@ -5,15 +5,16 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 
 from xcol.answers.budget import budget
+from xcol.answers.likely import Sampler
 from xcol.flowpath.reader import parse, read
 from xcol.report.budget_screen import first_screen
 from xcol.report.sheet import Sheet
 
 
-def screen_of(answer, at=-1, peak=0, **sheet):
+def screen_of(answer, at=-1, peak=0, draws=100, **sheet):
     found = answer.detectors[at]
     made = Sheet(**sheet)
-    first_screen(answer, found, found.peaks[peak], made)
+    first_screen(answer, found, found.peaks[peak], made, Sampler(answer, draws) if draws else None)
     return made.text()
 
 
@@ -85,7 +86,8 @@ def test_what_does_not_fit_is_counted():
 def test_up_to_seven_rows_are_shown_as_they_are(examples):
     answer = budget(read(str(examples / "brewery-narrow.toml")))
     text = screen_of(answer, peak=1)
-    for words in ("3100", "12000", "26 %", "33.3", "37.9", "26.7", "8.33", "2.78", "71.8", "58.0-112", "not checked"):
+    known = ("3100", "12000", "26 %", "33.3", "37.9", "26.7", "8.33", "2.78", "71.8", "58.0-112", "not checked")
+    for words in (*known, "33.3-100", "20.3-37.9", "likely", "inject less"):
         assert words in text, words
     assert "others" not in text
 
@@ -131,3 +133,23 @@ def test_what_is_assumed_is_listed_and_nothing_is_called_safe(examples):
         assert "Assumed: " in text
         assert "safe" not in text.lower()
         assert "pressure at zero" in text
+
+
+def test_without_draws_there_are_ranges_and_nothing_is_likely(examples):
+    for file in examples.glob("*.toml"):
+        answer = budget(read(str(file)))
+        text = screen_of(answer, draws=0)
+        assert fits(text)
+        assert "best-worst" in text
+        assert "(likely" not in text
+        assert "Surest" not in text
+        assert "Could lead" not in text
+
+
+def test_every_first_screen_says_what_leads_or_that_nothing_matters(examples):
+    for file in examples.glob("*.toml"):
+        answer = budget(read(str(file)))
+        for at, found in enumerate(answer.detectors):
+            for peak in range(len(found.peaks)):
+                text = screen_of(answer, at, peak, draws=500)
+                assert sum(words in text for words in ("Surest gain", "Could lead", "Nothing is worth")) == 1

@@ -98,6 +98,7 @@ class Instrument:
     density: float  # kg/m³
     temperature: float | None  # K, of the columns
     pump_pressure: float | None  # Pa
+    bend_radius: float | None  # m, of the tubes and loops that give none
     parts: tuple[Part, ...]
     peaks: tuple[Peak, ...]
     place: Place

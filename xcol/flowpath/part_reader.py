@@ -12,7 +12,7 @@ from xcol.errors import nearest
 from xcol.flowpath import slips
 from xcol.flowpath.file_keys import FILE_KEYS, OTHER_WORDS
 from xcol.flowpath.findings import Draft, Findings
-from xcol.flowpath.keys import Key, Later, Measure, Sizes, Table, Tables, as_typed, tables_in
+from xcol.flowpath.keys import Key, Later, Measure, Sizes, Table, Tables, Tolerance, as_typed, tables_in
 from xcol.flowpath.kinds import KINDS, KINDS_LATER, Kind
 from xcol.flowpath.model import Part, Reading
 from xcol.units import UnitError, described, plain, quote
@@ -272,11 +272,18 @@ def _readings(kind: Kind, draft: Draft) -> Iterable[Reading]:
         value = draft.values.get(key.name)
         inner = [draft.inner[key.name]] if key.name in draft.inner else draft.lists.get(key.name, [])
         if inner:
-            shown = (", ".join(f"{word} = {typed}" for word, typed in one.written.items()) for one in inner)
-            yield Reading(key.name, "; ".join(shown))
+            for number, one in enumerate(inner, start=1):
+                shown = ", ".join(
+                    typed if word == "filter" else f"{word} {typed}" for word, typed in one.written.items()
+                )
+                yield Reading(key.name if len(inner) == 1 else f"{key.name} {number}", shown)
         elif isinstance(key.read, Sizes):
             names = (key.name, f"{key.name} bore")
             for name, size, measure in zip(names, draft.sizes(key.name), key.read.measures, strict=False):
                 yield Reading(name, size, measure.quantity)
+        elif isinstance(key.read, Tolerance) and isinstance(value, float):
+            yield Reading(key.name, f"±{100 * value:g} %")
+        elif isinstance(value, bool):
+            yield Reading(key.name, "true" if value else "false")
         elif key.name != "name" and isinstance(value, float | int | str):
             yield Reading(key.name, value, key.quantity)

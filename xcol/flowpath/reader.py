@@ -129,6 +129,7 @@ def _instrument(top: Draft, conditions: Conditions, parts: list[Part]) -> Instru
         density=density_of(top, conditions),
         temperature=conditions.known,
         pump_pressure=top.number("pump_pressure"),
+        bend_radius=1 / curvature if (curvature := curvature_of(top)) else None,
         parts=tuple(parts),
         peaks=(),
         place=Place(top.file),

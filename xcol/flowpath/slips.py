@@ -276,9 +276,9 @@ def _detector(draft: Draft) -> None:
         elif not 0.1e-3 <= bore <= 3e-3:
             draft.warn(f"{shown}, which is unusual: is the cell volume or the path length off?")
     _odd_volume(draft, cell, 1e-7)
-    if cell is not None and draft.number("time_constant") is None and draft.number("rise_time") is None:
-        draft.warn("no filter setting (time_constant or rise_time): its filter is not counted")
-    for key in ("time_constant", "rise_time"):
+    if cell is not None and not {"time_constant", "rise_time", "response", "filters"} & set(draft.written):
+        draft.warn("no filter setting (time_constant, rise_time or response): its filter is not counted")
+    for key in ("time_constant", "rise_time", "response", "dwell"):
         seconds = draft.number(key)
         if seconds is not None and seconds > 5:
             draft.warn(f"{key} of {seconds:g} s is unusual: is the unit meant?")

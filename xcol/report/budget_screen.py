@@ -6,7 +6,7 @@ from typing import TYPE_CHECKING
 
 from xcol.report.budget_tables import bars, parts_grid, peaks_grid
 from xcol.report.budget_text import heading, liquid_line, total_pressure, verdict
-from xcol.report.labels import name_of, show
+from xcol.report.labels import short_name, show
 from xcol.report.sheet import Sheet
 from xcol.units import PRESSURE
 
@@ -18,6 +18,7 @@ if TYPE_CHECKING:
 
 LINES = 24
 _CAUTION = "Before opening a line: pump off, pressure at zero, eye protection, site rules."
+_SAID = 8  # lines of the liquid and the verdict together
 _HANG = 2  # indent of the lines of a paragraph after its first
 _LEAST_PARTS = 6  # lines of the table of parts that are kept whatever else there is to say
 
@@ -27,10 +28,12 @@ def first_screen(
 ) -> None:
     """Write the first screen for one peak at one detector."""
     heading(answer, sheet)
+    said = verdict(answer, at, peak, sampler)
     if liquid := liquid_line(answer, peak):
-        _at_most(2, liquid, sheet)
-    for line in verdict(answer, at, peak, sampler):
-        _at_most(2, line, sheet)
+        said.insert(0, liquid)
+    for index, line in enumerate(said):
+        left = _SAID - (sheet.count() - 1) - (len(said) - index - 1)
+        _at_most(max(1, min(2, left)), line, sheet)
     sheet.line()
     foot = Sheet(sheet.width, sheet.ascii_only)
     _footer(answer, foot)
@@ -65,16 +68,11 @@ def _pressure(answer: Budget) -> str:
         limit = show(nearest.part.max_pressure or 0.0, PRESSURE)
         rest = f", {len(limited) - 1} more: --full" if len(limited) > 1 else ""
         word = "Above its limit" if _share_of_limit(nearest) > 1 else "Nearest its limit"
-        pieces.append(f"{word}: {_short(nearest.part)} {bars(nearest.inlet)} of {limit}{rest}.")
-    if without := [_short(part) for part in answer.unchecked]:
+        pieces.append(f"{word}: {short_name(nearest.part)} {bars(nearest.inlet)} of {limit}{rest}.")
+    if without := [short_name(part) for part in answer.unchecked]:
         more = f" and {len(without) - 2} more" if len(without) > 2 else ""
         pieces.append(f"Limits not checked (none entered): {', '.join(without[:2])}{more}.")
     return " ".join(pieces)
-
-
-def _short(part: Part) -> str:
-    name = name_of(part)
-    return name if len(name) <= 24 else f"{name[:21]}..."
 
 
 def _share_of_limit(row: PressureRow) -> float:

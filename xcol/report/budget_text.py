@@ -166,9 +166,7 @@ def verdict(answer: Budget, at: DetectorBudget, peak: PeakBudget, sampler: Sampl
         for same in found.peaks
         if same.peak is peak.peak
     ]
-    if others:
-        lines.append(f"Other detectors, same peak: {', '.join(others)}.")
-    return [*lines, *on_parts]
+    return [*lines, *on_parts, *([f"Other detectors, same peak: {', '.join(others)}."] if others else [])]
 
 
 def _likely(interval: str) -> str:

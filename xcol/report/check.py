@@ -68,6 +68,7 @@ def check_record(answer: Budget) -> dict[str, Any]:
         "density_kg_m3": instrument.density,
         "temperature_degC": None if instrument.temperature is None else instrument.temperature - 273.15,
         "pump_pressure_bar": _times(instrument.pump_pressure, 1e-5),
+        "bend_radius_mm": _times(instrument.bend_radius, 1e3),
         "parts": [
             {
                 "position": part.position,
@@ -126,6 +127,7 @@ def _grids(answer: Budget) -> list[tuple[str, Grid]]:
         ("temperature", instrument.temperature, TEMPERATURE),
         ("outside the columns", instrument.outside or instrument.temperature, TEMPERATURE),
         ("pump pressure", instrument.pump_pressure, PRESSURE),
+        ("bend radius", instrument.bend_radius, LENGTH),
     ]
     flow = tuple(
         (name, show(value, quantity, 4) if value is not None else "not entered") for name, value, quantity in conditions

@@ -77,6 +77,12 @@ def name_of(part: Part) -> str:
     return part.name or f"{part.kind} {_sizes(part)}".strip()
 
 
+def short_name(part: Part) -> str:
+    """Return the part's name in a sentence: at most 24 characters."""
+    name = name_of(part)
+    return name if len(name) <= 24 else f"{name[:21]}..."
+
+
 def column_label(part: Part) -> str:
     """Return a column's name and sizes: 'column 2.1 x 100 mm'."""
     return f"{part.name or part.kind} {_sizes(part)}".strip()

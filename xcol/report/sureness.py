@@ -5,7 +5,7 @@ from __future__ import annotations
 from typing import TYPE_CHECKING
 
 from xcol.report.budget_tables import percent, shares, three
-from xcol.report.labels import name_of
+from xcol.report.labels import name_of, short_name
 
 if TYPE_CHECKING:
     from xcol.answers.budget import Budget, PeakBudget
@@ -114,13 +114,12 @@ def _action(row: Row) -> str:
 def _named(row: Row) -> str:
     """Return a contribution without its size: 'UV cell', 'injection', 'valve to column'."""
     if row.contribution == "injection":
-        return row.part.name or "injection"
-    return f"{name_of(row.part)} {row.contribution}" if row.part.kind == "detector" else name_of(row.part)
+        return short_name(row.part) if row.part.name else "injection"
+    return f"{short_name(row.part)} {row.contribution}" if row.part.kind == "detector" else short_name(row.part)
 
 
 def _plain_name(row: Row) -> str:
-    name = name_of(row.part)
-    return f'"{name}"' if row.part.name else name
+    return f'"{short_name(row.part)}"' if row.part.name else name_of(row.part)
 
 
 def unknown_in_words(influence: Influence) -> str:
@@ -134,4 +133,4 @@ def unknown_in_words(influence: Influence) -> str:
 
 def settle_in_words(influence: Influence) -> str:
     """Return what would settle an unknown, with the name of its part."""
-    return influence.settle.format(name=name_of(influence.part) if influence.part is not None else "")
+    return influence.settle.format(name=short_name(influence.part) if influence.part is not None else "")
