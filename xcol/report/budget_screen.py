@@ -14,7 +14,6 @@ if TYPE_CHECKING:
     from xcol.answers.budget import Budget, DetectorBudget, PeakBudget
     from xcol.answers.likely import Sampler
     from xcol.answers.pressure import PressureRow
-    from xcol.flowpath.model import Part
 
 LINES = 24
 _CAUTION = "Before opening a line: pump off, pressure at zero, eye protection, site rules."
