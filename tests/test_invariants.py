@@ -26,6 +26,7 @@ conditions = st.fixed_dictionaries(
         "diffusion": st.floats(1e-11, 5e-9),
         "k": st.just(0.0) | st.floats(0.01, 20),
         "inject": st.just(0.0) | st.floats(0.01, 50),
+        "bend": st.none() | st.floats(0.5, 200),  # cm, of all tubes
         # None: all is entered; otherwise liquid, plates and diffusion come from the catalogs
         "liquid": st.none() | st.fixed_dictionaries(
             {
@@ -46,8 +47,13 @@ DETECTOR = '{ detector = "UV", cell = "2.5 uL", time_constant = "0.1 s", rate = 
 
 def peak_of(before, after, c, flow_unit="mL/min", flow_factor=1.0):
     liquid = c["liquid"]
+    bend = f'bend_radius = "{c["bend"]!r} cm"\n' if c["bend"] else ""
     parts = [f'{{ inject = "{c["inject"]!r} uL" }}', *before, BY_CURVE if liquid else COLUMN, *after, DETECTOR]
-    text, solute = f'flow = "{c["flow"] * flow_factor!r} {flow_unit}"\n', f'diffusion = "{c["diffusion"]!r} m^2/s"'
+    head = 'viscosity = "0.8 mPa s"\n' if bend and not liquid else ""
+    text, solute = (
+        f'{head}{bend}flow = "{c["flow"] * flow_factor!r} {flow_unit}"\n',
+        f'diffusion = "{c["diffusion"]!r} m^2/s"',
+    )
     if liquid:
         share = liquid["percent"]
         text += f'mobile_phase = "{liquid["organic"]}/water {share}:{100 - share}"\n'
@@ -79,6 +85,17 @@ def test_observed_plates_are_positive_finite_and_at_most_the_column_s(before, af
     assert all(row.variance >= 0 for row in peak.rows)
     assert detector.delay > 0
     assert sum(row.variance for row in peak.rows) == pytest.approx(peak.variance_extra)
+    assert all(row.low <= row.variance <= row.high for row in peak.rows)
+    worst, best = peak.plates_kept_range
+    assert 0 < worst <= peak.plates_kept <= best <= 1 + 1e-12
+
+
+@settings(max_examples=40)
+@given(before=sides, after=sides, c=conditions)
+def test_bending_every_tube_broadens_nothing(before, after, c):
+    straight, bent = (peak_of(before, after, c | {"bend": bend})[1] for bend in (None, c["bend"] or 3.0))
+    assert bent.variance_extra <= straight.variance_extra * (1 + 1e-9)
+    assert bent.plates_observed >= straight.plates_observed * (1 - 1e-9)
 
 
 @settings(max_examples=60)

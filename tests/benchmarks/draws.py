@@ -7,9 +7,9 @@ written out below for this one path: the same uniform numbers, the same function
 import math
 import statistics
 import time
+from pathlib import Path
 
 import numpy as np
-from start import PATH
 
 from xcol.answers.budget import budget
 from xcol.answers.draws import Draws
@@ -18,6 +18,7 @@ from xcol.filters.curved import bent_variance
 from xcol.flowpath.reader import parse
 from xcol.flowpath.unknowns import Between, Factor, LogBetween, OneOf
 
+PATH = Path(__file__).with_name("twelve.toml").read_text(encoding="utf-8")
 COUNT = 100_000
 RUNS = 7
 FLOW, VISCOSITY, DENSITY, DIFFUSION = 0.5e-6 / 60, 0.8e-3, 1000.0, 9e-10

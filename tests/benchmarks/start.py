@@ -12,30 +12,7 @@ import time
 from pathlib import Path
 
 NAIVE = "import numpy, pint, rich.table, typer; pint.UnitRegistry()"
-PATH = """\
-title = "Invented: twelve parts"
-flow = "0.5 mL/min"
-viscosity = "0.8 mPa s"
-temperature = "40 degC"
-path = [
-  { inject = "5 uL", loop = "20 uL" },
-  { tube = "35 cm x 0.17 mm", name = "valve to filter" },
-  { fitting = "inline filter", volume = "0.3 uL" },
-  { tube = "12 cm x 0.13 mm", name = "filter to first column" },
-  { column = "3.0 x 50 mm, 2.7 um", plates = 9000, total_porosity = 0.54, max_pressure = "600 bar" },
-  { tube = "8 cm x 0.12 mm", name = "between columns" },
-  { column = "3.0 x 100 mm, 2.7 um", plates = 18000, total_porosity = 0.54, max_pressure = "600 bar" },
-  { tube = "25 cm x 0.12 mm", name = "column to cell" },
-  { detector = "UV", cell = "2.5 uL", time_constant = "0.05 s", rate = "20 Hz", max_pressure = "60 bar" },
-  { tube = "60 cm x 0.17 mm", name = "UV to MS" },
-  { fitting = "union", gap = "0.2 mm" },
-  { detector = "MS", rate = "5 Hz" },
-]
-peaks = [
-  { name = "a", k = 1, diffusion = "1.0e-9 m^2/s" }, { name = "b", k = 2, diffusion = "9.0e-10 m^2/s" },
-  { name = "c", k = 5, diffusion = "8.0e-10 m^2/s" }, { name = "d", k = 10, diffusion = "7.0e-10 m^2/s" },
-]
-"""
+PATH = Path(__file__).with_name("twelve.toml").read_text(encoding="utf-8")
 # the same path, its liquid, columns and solutes by name
 BY_NAME = (
     PATH.replace('viscosity = "0.8 mPa s"', 'mobile_phase = "water/acetonitrile 60:40"\nambient = "22 degC"')

@@ -217,8 +217,8 @@ def test_the_first_screen_is_24_lines_of_80_columns(run, examples):
 
 def test_peaks_and_detectors_are_chosen_by_name_or_k(run, examples):
     file = examples / "sugar-two-detectors.toml"
-    assert b"the RI records" in run("budget", file).stdout
-    assert b"the UV records" in run("budget", file, "--detector", "uv").stdout
+    assert b"RI records" in run("budget", file).stdout
+    assert b"UV records" in run("budget", file, "--detector", "uv").stdout
     narrow = examples / "brewery-narrow.toml"
     for word in ("late", "5", "k=5", "k = 5", "5.01"):
         assert b'"late", k = 5' in run("budget", narrow, "--peak", word).stdout

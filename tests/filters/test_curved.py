@@ -78,6 +78,11 @@ def test_it_falls_with_t_star_and_with_the_bend():
     assert np.all(np.diff(long_tube_ratio(strengths)) <= 0)
 
 
+def test_the_variance_itself_grows_with_t_star():
+    t, strengths = np.logspace(-6, 3, 1500), np.logspace(0, 6.3, 300)
+    assert np.all(np.diff(bent_variance(t[None, :], strengths[:, None]), axis=1) > 0)
+
+
 def test_a_bend_that_fades_joins_the_straight_tube_without_a_step():
     for t in (1e-3, 0.1, 1.0, 30.0):
         straight = float(dimensionless_variance(t))
