@@ -38,11 +38,20 @@ def test_what_is_usual_has_no_warning():
     for tube in ("30 cm x 0.005 in", "30 cm x 0.13 mm", "30 cm x 0.18 mm", "30 cm x 75 um", "1 m x 0.5 mm"):
         assert warnings_of(tube=tube) == ()
     assert warnings_of(column="2.1 x 100 mm, 3 um", porosity='void_volume = "0.2 mL"') == ()
+    assert warnings_of(inject='2 uL", loop = "20 uL x 0.5 mm') == ()
+    assert warnings_of(tube='30 cm x 0.17 mm", bend_radius = "2 cm') == ()
+    for detector in ('cell = "2 uL", response = "0.5 s"', 'cell = "2 uL", filters = [{ rise_time = "0.2 s" }]'):
+        assert warnings_of(detector=detector) == ()
 
 
 @pytest.mark.parametrize(
     ("changed", "word"),
     [
+        ({"tube": '30 cm x 0.17 mm", bend_radius = "3 mm'}, "bend"),
+        ({"tube": '30 cm x 0.17 mm", coil_diameter = "5 m'}, "bend"),
+        ({"inject": '2 uL", loop = "20 uL x 0.03 mm'}, "long"),
+        ({"inject": '2 uL", loop = "20 uL x 3 mm'}, "long"),
+        ({"detector": 'cell = "2.5 uL", response = "20 s"'}, "response"),
         ({"tube": "30 cm x 1.59 mm"}, "outside diameter"),
         ({"tube": "30 cm x 0.0625 in"}, "outside diameter"),
         ({"tube": "30 cm x 0.794 mm"}, "outside diameter"),

@@ -146,7 +146,7 @@ def plates_fault(draft: Draft, key: str, plates: float, length: float, particle:
 
 
 def _inject(draft: Draft) -> None:
-    volume, (loop, _) = draft.number("volume"), loop_of(draft)
+    volume, (loop, bore) = draft.number("volume"), loop_of(draft)
     if volume is not None and loop is not None and volume > loop * (1 + 1e-9):
         draft.fault(
             "loop",
@@ -155,6 +155,10 @@ def _inject(draft: Draft) -> None:
             f"{write(volume, 'uL', VOLUME)} injected from a loop of {write(loop, 'uL', VOLUME)}",
         )
     _odd_volume(draft, volume, 1e-6)
+    if loop is not None and bore is not None:
+        length = loop / (math.pi / 4 * bore**2)
+        if not max(5e-3, 5 * bore) <= length <= 10:
+            draft.warn(f"a loop of this volume and bore is {write(length, 'mm', LENGTH)} long: is the bore meant?")
 
 
 def _tube(draft: Draft) -> None:
@@ -182,6 +186,9 @@ def _tube(draft: Draft) -> None:
                 if math.isclose(2 * bore, known, rel_tol=0.06):
                     draft.warn(f"{shown} is half of the stock bore {write(known, 'mm', LENGTH)}: "
                                "is it a radius?")  # fmt: skip
+    radius = draft.number("bend_radius") or (draft.number("coil_diameter") or 0.0) / 2
+    if radius and not 5e-3 <= radius <= 1:
+        draft.warn(f"a bend of radius {write(radius, 'mm', LENGTH)} is unusual: is the unit meant?")
     if length is not None and length > 10:
         draft.warn(f"length {write(length, 'm', LENGTH)} is long for a connecting tube")
     if length is not None and 0 < length < 5 * bore:

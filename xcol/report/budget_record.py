@@ -187,6 +187,10 @@ def _row(answer: Budget, row: Row) -> dict[str, Any]:
         "volume_uL": row.volume * 1e9,
         "tstar": tube.t_star if tube else None,
         "bend_De2Sc": tube.strength if tube else None,
+        "bent_De": tube.bent_dean if tube else None,  # at the bend entered, or at the one assumed
+        "bent_De2Sc": tube.bent_strength if tube else None,
+        "variance_straight_uL2": answer.in_uL2(tube.straight_variance) if tube else None,
+        "variance_bent_uL2": answer.in_uL2(tube.bent_variance) if tube else None,
         "compression": row.compression,
         "variance_uL2": answer.in_uL2(row.variance),
         "variance_low_uL2": answer.in_uL2(row.low),
