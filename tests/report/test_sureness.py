@@ -5,7 +5,7 @@ import pytest
 from xcol.answers.budget import budget
 from xcol.answers.likely import SURE, Sampler
 from xcol.flowpath.reader import parse, read
-from xcol.report.sureness import beyond, figures, verdict_on_parts, what_settles
+from xcol.report.sureness import beyond, ends_line, figures, verdict_on_parts, what_settles
 
 HEAD = 'flow = "0.3 mL/min"\nviscosity = "0.9 mPa s"\n'
 COLUMN = '{ column = "2.1 x 100 mm, 3 um", plates = 12000, total_porosity = 0.6 }'
@@ -113,3 +113,12 @@ def test_a_printed_figure_outside_of_its_interval_says_which_end_it_is(examples)
 def test_figures():
     assert figures((103.2, 208.9)) == "103-209"
     assert figures((4.0, 4.0)) == "4.00"
+
+
+def test_end_to_end_says_what_tubes_and_cells_have_in_it(examples):
+    peak = budget(read(str(examples / "antibody-size-exclusion.toml"))).detectors[0].peaks[0]
+    text = ends_line(peak)
+    for shares in ("50-84 %", "16-50 %", "16-29 %", "29-50 %"):
+        assert shares in text
+    (union,) = budget(read(str(examples / "union-run.toml"))).detectors[0].peaks
+    assert ends_line(union) == ""

@@ -53,14 +53,14 @@ def verdict_on_parts(likely: Likely, peak: PeakBudget, draws: int) -> list[str]:
         return [f"Nothing is worth changing at this k: {shares(likely.plates_kept)} of the plates are kept."]
     row = likely.leader
     if row is not None:
-        led = percent(likely.leaders[0][1])
+        led = _of_draws(likely.leaders[0][1])
         return [f"Surest gain: {_action(row)} (leads in {led} of {draws} draws of what is unknown)."]
     named = [pair for pair in likely.leaders if pair[1] >= _COULD_LEAD][:_MOST_NAMED]
     if len(named) < 2:
         named = list(likely.leaders[:2])
     if not named:
         return []
-    listed = [f"{_named(row)} {percent(share)}" for row, share in named]
+    listed = [f"{_named(row)} {_of_draws(share)}" for row, share in named]
     listed[0] += " of draws"
     lines = [f"Could lead: {', '.join(listed)}."]
     if settles := what_settles(likely, [row for row, _ in named], has_column=peak.plates_column is not None):
@@ -98,13 +98,33 @@ def interval_line(likely: Likely, peak: PeakBudget, answer: Budget, draws: int, 
 
 
 def ends_line(peak: PeakBudget) -> str:
-    """Return the answer with every part at its best and at its worst, "" without a column."""
+    """Return the answer with every part at its best and at its worst, and what tubes and cells have in that."""
     ends = peak.plates_kept_range
     if ends is None:
         return ""
     worst, best = ends
-    lost = f"{shares((1 - best, 1 - worst))} lost"
-    return f"End to end, every part at its best or at its worst: {shares((worst, best))} kept, {lost}."
+    text = (
+        f"End to end, every part at its best or at its worst: {shares(ends)} kept, {shares((1 - best, 1 - worst))} lost"
+    )
+    for name, group in (
+        ("tubes", [row for row in peak.rows if row.tube is not None]),
+        ("cells", [row for row in peak.rows if row.contribution == "cell"]),
+    ):
+        low = _lost_with(peak, sum(row.low - row.variance for row in group))
+        high = _lost_with(peak, sum(row.high - row.variance for row in group))
+        if low < high:
+            text += f", by {name} alone {shares((low, high))}"
+    return text + "."
+
+
+def _lost_with(peak: PeakBudget, more: float) -> float:
+    """Return the share of the plates that is lost with so much more variance [s²] than printed."""
+    return 1 - peak.variance_column / (peak.variance_total + more)
+
+
+def _of_draws(share: float) -> str:
+    """Return a share of the draws in whole per cent: all of them only where it is all of them."""
+    return percent(share if share == 1 else min(share, 0.99))
 
 
 def _action(row: Row) -> str:
