@@ -106,7 +106,9 @@ def test_what_is_known_has_no_interval():
     assert likely.variance_extra == pytest.approx((peak.variance_extra,) * 2, rel=1e-12)
     assert likely.influences == ()
     assert likely.leaders[0][1] == 1
-    assert all(row.low == row.variance == row.high for row in peak.rows)
+    # a bend that was entered is not drawn, and keeps its range up to straight
+    assert [row.contribution for row in peak.rows if row.low < row.high] == ["tube"]
+    assert all(row.low == row.variance for row in peak.rows)
     assert likely.plates_kept is None
 
 
@@ -147,7 +149,7 @@ def test_fittings_that_may_not_mix_are_even_odds_of_two_runs():
     assert [(i.what, i.share > 0.9) for i in likely.influences] == [("remixing", True)]
     open_ended = budget(parse(text(f"{{ fitting = {size} }}"), "f")).detectors[0].peaks[0]
     assert sum(row.low for row in open_ended.rows) == pytest.approx(known[0], rel=1e-9)
-    assert sum(row.high for row in open_ended.rows) == pytest.approx(known[1], rel=1e-9)
+    assert sum(row.high for row in open_ended.rows) == pytest.approx(known[1], rel=1e-3)  # straight, not a bend of 10 m
 
 
 def test_estimated_diffusion_coefficients_and_plates_are_drawn():

@@ -259,3 +259,16 @@ def test_a_tube_of_known_volume_keeps_it_whatever_its_bore():
     assert puts["bore"](element, 1.1).volume == pytest.approx(10e-9)
     assert puts["bore"](element, 1.1).bore == pytest.approx(0.22e-3)
     assert puts["volume"](element, 1.1).volume == pytest.approx(11e-9)
+
+
+def test_a_cell_of_no_volume_has_nothing_unknown():
+    text = FILE.format(part='{ mixer = "1 uL" }').replace('cell = "2.5 uL"', 'cell = "0 uL", path_length = "10 mm"')
+    cell = parse(text, "f").parts[-1].elements[0]
+    assert cell == Cell(0.0)
+    assert cell.unknowns == ()
+
+
+def test_part_filled_in_words_counts_though_all_of_it_is_injected():
+    _, made, variance = injection_of('inject = "20 uL", loop = "20 uL x 0.5 mm", filled = "part", emptied = "same way"')
+    assert variance == pytest.approx(400 / 12)
+    assert made.delay() == pytest.approx(10e-9 / (0.5e-6 / 60))

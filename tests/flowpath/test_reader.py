@@ -194,7 +194,7 @@ WRONG = {
         path(INJECT, COLUMN, '  { detector = "UV", filters = [{ filter = "boxcar" }] },\n'), "filters[1].filter", 7
     ),
     "an empty filter of the list": (
-        path(INJECT, COLUMN, '  { detector = "UV", filters = [{ }] },\n'), "filters[1].", 7
+        path(INJECT, COLUMN, '  { detector = "UV", filters = [{ }] },\n'), "filters[1]", 7
     ),
     "an empty list of filters": (path(INJECT, COLUMN, '  { detector = "UV", filters = [] },\n'), "filters", 7),
     "unknown key of a filter": (

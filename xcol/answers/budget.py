@@ -148,7 +148,7 @@ def budget(instrument: Instrument) -> Budget:
     """
     profile = pressures(instrument)
     detectors = tuple(_at_detector(instrument, detector) for detector in instrument.detectors)
-    warnings = [*profile.limits, *profile.warnings, *instrument.warnings, *_remarks(detectors)]
+    warnings = [*profile.limits, *profile.warnings, *_remarks(detectors), *instrument.warnings]
     return Budget(instrument, profile, detectors, tuple(warnings), _cautions(instrument))
 
 

@@ -144,6 +144,8 @@ class Sampler:
         for link in chain:
             place = next(n for n, element in enumerate(link.part.elements) if element is link.element)
             for unknown in link.element.unknowns:
+                if unknown.spread is None:
+                    continue
                 if peak.plates is not None and unknown.what == PLATES_UNKNOWN:
                     continue  # the peak's own plates are in place of the column's
                 key = f"part {link.part.position}.{place} {unknown.what}"

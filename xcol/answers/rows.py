@@ -10,14 +10,17 @@ import numpy as np
 
 from xcol.answers.spread import LinkSpread, Spread, at_end
 from xcol.filters.curved import HIGHEST_DEAN
-from xcol.flowpath.elements import InBore
-from xcol.units import LENGTH, significant, write
+from xcol.flowpath.elements import InBore, Loop
+from xcol.units import significant
 
 if TYPE_CHECKING:
     from xcol.answers.spread import Values
     from xcol.flowpath.chain import Link
     from xcol.flowpath.elements import Element, Stream
     from xcol.flowpath.model import Instrument, Part
+
+
+FULL, SAME_WAY = "full", "same way"  # how a loop is emptied that spreads more than a plug
 
 
 @dataclass(frozen=True)
@@ -37,6 +40,7 @@ class Row:
     at_low: str  # the reason for each end in words
     at_high: str
     tube: TubeFigures | None = None
+    form: str = ""  # of a loop: FULL, or SAME_WAY (filled in part)
     compression: float = 1.0  # θ, 1 for isocratic elution
 
 
@@ -94,10 +98,18 @@ def rows_of(instrument: Instrument, chain: tuple[Link, ...], printed: Spread) ->
                 at_low=at_low,
                 at_high=at_high,
                 tube=figures[n] if figures else None,
+                form=_form(link.element),
             )
             for n in range(len(instrument.peaks))
         ]
     return found
+
+
+def _form(element: Element) -> str:
+    """Return how a loop is emptied, where that is more than a plug."""
+    if not isinstance(element, Loop):
+        return ""
+    return FULL if element.injected is None else SAME_WAY if element.same_way else ""
 
 
 def _reasons(link: Link, dean: Values | None, *, apart: bool) -> tuple[str, str]:
@@ -107,8 +119,6 @@ def _reasons(link: Link, dean: Values | None, *, apart: bool) -> tuple[str, str]
     high = [unknown.ends.at_worst for unknown in element.unknowns if unknown.ends]
     if isinstance(element, InBore) and link.part.viscosity is None:
         low = high = ["straight: without a viscosity bends are not computed"]
-    elif isinstance(element, InBore) and element.curvature:
-        low = high = [f"bent at {write(1 / float(element.curvature), 'cm', LENGTH)} all along, as entered"]
     if dean is not None and dean.max(initial=0.0) > HIGHEST_DEAN:
         low = [*low, f"De {significant(float(dean.max()))} taken as {HIGHEST_DEAN:g}, an upper estimate"]
     if not apart:

@@ -115,7 +115,7 @@ class Draft:
     def place(self, key: str = "") -> Place:
         """Return the place of a key, or of the part."""
         line = self.lines.get(key) or self.lines.get("")
-        return Place(self.file, line, self.label, f"{self.within}{plain(key)}"[:60])
+        return Place(self.file, line, self.label, f"{self.within}{plain(key)}".removesuffix(".")[:60])
 
     def fault(self, key: str, expected: str, suggestion: str, read: str = "") -> None:
         """Add a fault at a key; ``read`` defaults to what was typed there."""

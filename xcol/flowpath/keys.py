@@ -266,22 +266,23 @@ class Sizes:
         return sizes
 
 
+_SHARE = "a share of the size, from 0 to 50 %"
+
+
 class Tolerance:
     """How far a size may be off, as a share of it."""
 
     def __call__(self, raw: object) -> float:
         """Return the share; a sign in front of it is read over."""
         if is_huge(raw):
-            raise UnitError(described(raw), "a share of the size", '"5 %"')
+            raise UnitError(described(raw), _SHARE, '"5 %"')
         text = re.sub(r"^\s*(?:±|\+/-|\+-)\s*", "", as_typed(raw))
         try:
             value = parse(text, RATIO)
         except UnitError as error:
-            raise UnitError(described(raw), "a share of the size", f'"5 %" ({error.suggestion})') from None
+            raise UnitError(described(raw), _SHARE, '"5 %", as 0.01 mm are of 0.2 mm') from error
         if not 0 <= value <= 0.5:
-            raise UnitError(
-                described(raw), "a share of the size, from 0 to 50 %", f'"{value:g} %", if per cent was meant'
-            )
+            raise UnitError(described(raw), _SHARE, '"5 %"')
         return value
 
 

@@ -15,6 +15,7 @@ from xcol.flowpath.conditions import Conditions, check_range, density_of, read_c
 from xcol.flowpath.elements import Bore, Cell, Injected, Loop
 from xcol.flowpath.file_keys import FILE_KEYS, curvature_of
 from xcol.flowpath.findings import Draft, Findings
+from xcol.flowpath.kinds.tolerances import bend
 from xcol.flowpath.locate import KeyLines, key_lines
 from xcol.flowpath.model import Assumption, Instrument, Part, Peak
 from xcol.flowpath.part_reader import read_keys, read_part, refuse_unknown
@@ -220,10 +221,12 @@ def _bent(part: Part, curvature: float) -> Part:
         return part
 
     def bent(element: Element) -> Element:
-        rest = tuple(unknown for unknown in element.unknowns if unknown.what != BEND)
-        if not isinstance(element, Bore | Loop) or len(rest) == len(element.unknowns):
+        drawn = [unknown for unknown in element.unknowns if unknown.what == BEND and unknown.spread is not None]
+        if not isinstance(element, Bore | Loop) or not drawn:
             return element
-        return replace(element, curvature=curvature, unknowns=rest)
+        rest = (unknown for unknown in element.unknowns if unknown.what != BEND)
+        entered, bends = bend(curvature)
+        return replace(element, curvature=entered, unknowns=(*bends, *rest))
 
     return replace(part, elements=tuple(bent(element) for element in part.elements))
 
@@ -233,7 +236,8 @@ def _ends_of_ranges(instrument: Instrument) -> list[Assumption]:
     found = []
     elements = [element for part in instrument.parts for element in part.elements]
     tubes = [element for element in elements if isinstance(element, Bore | Loop)]
-    if any(unknown.what == BEND for tube in tubes for unknown in tube.unknowns):
+    unknowns = [unknown for tube in tubes for unknown in tube.unknowns]
+    if any(unknown.what == BEND and unknown.spread is not None for unknown in unknowns):
         text = (
             "tubes without bend_radius are printed as straight, the worst case; their range goes to a bend of 3 cm all "
             "along, and the draws take any curvature between"
@@ -241,8 +245,8 @@ def _ends_of_ranges(instrument: Instrument) -> list[Assumption]:
         found.append(Assumption("tubes straight", text))
     if any(tube.curvature for tube in tubes):
         text = (
-            "tubes with bend_radius or coil_diameter are bent like that all along: where they run straight they spread "
-            "more (measured coils: 20 to 40 % less than straight, J. Chromatogr. A 1659 (2021) 462578, abstract)"
+            "tubes with bend_radius or coil_diameter are bent like that all along, as theory has it; their range goes "
+            "to straight: measured coils have 20 to 40 % less (J. Chromatogr. A 1659 (2021) 462578, abstract)"
         )
         found.append(Assumption("tubes bent all along", text))
     injected = elements[0] if elements else None

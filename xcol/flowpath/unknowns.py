@@ -96,13 +96,13 @@ class Ends:
 class Unknown:
     """One thing about an element that nobody knows exactly.
 
-    ``put`` returns the element with a value, or an array of values, of this unknown; ``ends`` are those of the
-    range that stands beside the element's variance (None: a tolerance, which only the draws have); ``settle``
-    says what would settle it, "" where nothing within reach would.
+    ``put`` returns the element with a value, or an array of values, of this unknown. ``spread`` is None where it was
+    entered, and is not drawn; ``ends`` are those of the range that stands beside the element's variance (None: a
+    tolerance, which only the draws have); ``settle`` says what would settle it, with {name} for the part's name.
     """
 
     what: str
-    spread: Spread
+    spread: Spread | None
     put: Callable[[Any, Real], Any]
     ends: Ends | None = None
     settle: str = ""

@@ -18,7 +18,7 @@ if TYPE_CHECKING:
     from xcol.answers.pressure import PressureRow
     from xcol.answers.rows import Row
     from xcol.flowpath.hydraulics import PressureRange
-    from xcol.flowpath.model import Part
+    from xcol.flowpath.model import Part, Peak
 
 SCHEMA = "xcol.budget/1"
 
@@ -133,7 +133,7 @@ def _peak(answer: Budget, peak: PeakBudget, doubt: Doubt | None, likely: Likely 
         "width_base_s": 4 * peak.sigma,
         "extra_volume_uL": peak.delay * answer.instrument.flow * 1e9,
         "points_4sigma": peak.points,
-        "parts": [_row(answer, row) for row in peak.rows],
+        "parts": [_row(answer, row, peak.peak) for row in peak.rows],
     }
 
 
@@ -176,13 +176,14 @@ def _whose(part: Part | None) -> dict[str, Any]:
     return {"part": part.kind, "name": part.name or part.kind, "position": part.position}
 
 
-def _row(answer: Budget, row: Row) -> dict[str, Any]:
+def _row(answer: Budget, row: Row, peak: Peak) -> dict[str, Any]:
     tube = row.tube
     return {
         "part": row.part.kind,
         "name": row.part.name or row.part.kind,
         "position": row.part.position,
         "contribution": row.contribution,
+        "diffusion_m2_s": peak.diffusion_in(row.part),
         "side": row.side,
         "volume_uL": row.volume * 1e9,
         "tstar": tube.t_star if tube else None,

@@ -70,7 +70,7 @@ def _pressure(answer: Budget) -> str:
         pieces.append(f"{word}: {short_name(nearest.part)} {bars(nearest.inlet)} of {limit}{rest}.")
     if without := [short_name(part) for part in answer.unchecked]:
         more = f" and {len(without) - 2} more" if len(without) > 2 else ""
-        pieces.append(f"Limits not checked (none entered): {', '.join(without[:2])}{more}.")
+        pieces.append(f"Limits not checked: {', '.join(without[:2])}{more}.")
     return " ".join(pieces)
 
 

@@ -86,7 +86,8 @@ def peaks_grid(answer: Budget, peaks: tuple[PeakBudget, ...], likely: Sequence[L
         )
         for peak, one in zip(peaks, likely, strict=True)
     )
-    return Grid(headers, rows, (False, *(True,) * 8))
+    whole = Grid(headers, rows, (False, *(True,) * 8))
+    return whole if any(one is not None for one in likely) else whole.without("likely")
 
 
 def pressure_grid(answer: Budget) -> Grid:

@@ -101,12 +101,27 @@ def _sizes(part: Part) -> str:
 
 def contribution_label(part: Part, contribution: str) -> str:
     """Return the line's label: 'injected 20 µL', 'UV time constant 0.5 s', 'valve to column'."""
-    values = {reading.key: reading for reading in part.readings}
-    key = next((key for key in KINDS[part.kind].sizes.get(contribution, ()) if key in values), "")
-    size = show_reading(values[key]) if key else ""
+    _, size = _size_of(part, contribution)
     if contribution == "injection":
         return f"injected {size}" + (f", {part.name}" if part.name else "")
-    name = name_of(part)
-    if part.kind == "detector":  # a time constant is not a rise time: the key says which
-        return f"{name} {key.replace('_', ' ') or contribution} {size}".strip()
-    return f"{name} {size}".strip()
+    return f"{contribution_name(part, contribution, name_of(part))} {size}".strip()
+
+
+def contribution_name(part: Part, contribution: str, name: str) -> str:
+    """Return the label without its size, ``name`` being the part's: 'UV time constant', 'valve to column'."""
+    if part.kind != "detector":
+        return name
+    key, _ = _size_of(part, contribution)  # a time constant is not a rise time: the key says which
+    return f"{name} {key.replace('_', ' ') or contribution}"
+
+
+def _size_of(part: Part, contribution: str) -> tuple[str, str]:
+    """Return the key that says how large a contribution is, and its value as it is printed; "" where there is none."""
+    values = {reading.key: reading for reading in part.readings}
+    kind, _, number = contribution.partition(" ")  # "filter 2" is the second of the list
+    listed = values.get(f"filters {number}") or values.get("filters") if number else None
+    if listed is not None:
+        key, _, value = show_reading(listed).partition(" ")
+        return key, value
+    key = next((key for key in KINDS[part.kind].sizes.get(kind, ()) if key in values), "")
+    return key, show_reading(values[key]) if key else ""

@@ -46,6 +46,12 @@ class Grid:
     rows: tuple[tuple[str, ...], ...]
     right: tuple[bool, ...]
 
+    def without(self, header: str) -> Grid:
+        """Return the table without the column of this header."""
+        at = self.headers.index(header)
+        headers, right, *rows = ((*row[:at], *row[at + 1 :]) for row in (self.headers, self.right, *self.rows))
+        return Grid(headers, tuple(rows), right)  # type: ignore[arg-type]
+
 
 @dataclass
 class Sheet:

@@ -2,10 +2,13 @@
 
 from __future__ import annotations
 
+import math
 from typing import TYPE_CHECKING
 
-from xcol.report.budget_tables import percent, shares, three
-from xcol.report.labels import name_of, short_name
+from xcol.answers.likely import SURE
+from xcol.answers.rows import FULL, SAME_WAY
+from xcol.report.budget_tables import shares, three
+from xcol.report.labels import contribution_name, name_of, short_name
 
 if TYPE_CHECKING:
     from xcol.answers.budget import Budget, PeakBudget
@@ -17,15 +20,21 @@ _MOST_NAMED = 3
 _SETTLES = 0.05  # share of the variance of the answer from which an unknown is worth settling
 LOSES_LITTLE = 0.97  # share of the plates that is kept all over the interval: nothing is worth changing
 
+# where the longest bar is another part's than the one that leads in most draws
+_WHY_OTHER = "Bars show tubes at their worst, plugs at their best; the draws all between."
+
 # what to do about the part that leads, by contribution; by kind where several kinds have one
 _ACTIONS = {
-    "injection": "inject less",
     "tube": "a narrower or shorter {name}",
     "fitting": "a smaller {name}",
     "mixer": "a smaller {name}",
     "block": "a {name} that spreads less",
     "cell": "a smaller cell of {name}",
     "rate": "a faster rate of {name}",
+}
+_ABOUT_INJECTION = {
+    FULL: "a smaller or narrower loop, or a part of it",
+    SAME_WAY: "emptying the loop the other way, or a smaller or narrower one",
 }
 _FILTER = "a faster filter of {name}"
 
@@ -51,20 +60,31 @@ def verdict_on_parts(likely: Likely, peak: PeakBudget, draws: int) -> list[str]:
     """Return which part to change first, or what could lead and what would decide it, a line each."""
     if likely.plates_kept is not None and likely.plates_kept[0] >= LOSES_LITTLE:
         return [f"Nothing is worth changing at this k: {shares(likely.plates_kept)} of the plates are kept."]
+    leads = f"of {draws} draws"
     row = likely.leader
     if row is not None:
-        led = _of_draws(likely.leaders[0][1])
-        return [f"Surest gain: {_action(row)} (leads in {led} of {draws} draws of what is unknown)."]
+        return [f"Surest gain: {_action(row)} (leads in {_of_draws(likely.leaders[0][1])} {leads})."]
+    tubes = [(row, share) for row, share in likely.leaders if row.tube is not None and share >= _COULD_LEAD]
+    if len(tubes) > 1 and sum(share for _, share in tubes) >= SURE:
+        listed = ", ".join(_named(row) for row, _ in tubes[:_MOST_NAMED])
+        share = _of_draws(sum(share for _, share in tubes))
+        return [f"Surest gain: narrower or shorter tubes, {listed} (one of them leads in {share} {leads})."]
     named = [pair for pair in likely.leaders if pair[1] >= _COULD_LEAD][:_MOST_NAMED]
     if len(named) < 2:
         named = list(likely.leaders[:2])
     if not named:
         return []
-    listed = [f"{_named(row)} {_of_draws(share)}" for row, share in named]
-    listed[0] += " of draws"
-    lines = [f"Could lead: {', '.join(listed)}."]
-    if settles := what_settles(likely, [row for row, _ in named], has_column=peak.plates_column is not None):
-        lines.append(f"To decide: {'; '.join(settles)}.")
+    listed = ", ".join(f"{_named(row)} {_of_draws(share)}" for row, share in named).replace(" %", " % of draws", 1)
+    lines = [f"Could lead: {listed}."]
+    settles = [
+        f"a faster {_named(row)}, a setting" for row, _ in named if row.side == "signal" and not row.low < row.high
+    ]
+    settles += what_settles(likely, [row for row, _ in named], has_column=peak.plates_column is not None)
+    if settles:
+        lines.append(f"To decide: {'; '.join(settles[:2])}.")
+    largest = max(peak.rows, key=lambda row: row.variance)
+    if largest is not named[0][0]:
+        lines.append(_WHY_OTHER)
     return lines
 
 
@@ -104,7 +124,7 @@ def ends_line(peak: PeakBudget) -> str:
         return ""
     worst, best = ends
     text = (
-        f"End to end, every part at its best or at its worst: {shares(ends)} kept, {shares((1 - best, 1 - worst))} lost"
+        f"Mixing end to end, every part at its best or worst: {shares(ends)} kept, {shares((1 - best, 1 - worst))} lost"
     )
     for name, group in (
         ("tubes", [row for row in peak.rows if row.tube is not None]),
@@ -123,19 +143,22 @@ def _lost_with(peak: PeakBudget, more: float) -> float:
 
 
 def _of_draws(share: float) -> str:
-    """Return a share of the draws in whole per cent: all of them only where it is all of them."""
-    return percent(share if share == 1 else min(share, 0.99))
+    """Return a share of the draws in whole per cent, rounded down: nine of ten are nine of ten."""
+    return f"{math.floor(100 * share + 1e-9)} %"
 
 
 def _action(row: Row) -> str:
+    if row.contribution == "injection":
+        return _ABOUT_INJECTION.get(row.form, "inject less")
     return _ACTIONS.get(row.contribution, _FILTER).format(name=_plain_name(row))
 
 
 def _named(row: Row) -> str:
-    """Return a contribution without its size: 'UV cell', 'injection', 'valve to column'."""
+    """Return a contribution without its size: 'UV time constant', 'injection', 'valve to column'."""
     if row.contribution == "injection":
         return short_name(row.part) if row.part.name else "injection"
-    return f"{short_name(row.part)} {row.contribution}" if row.part.kind == "detector" else short_name(row.part)
+    name = short_name(row.part) if row.part.name else f"{row.part.kind} (part {row.part.position})"
+    return contribution_name(row.part, row.contribution, name)
 
 
 def _plain_name(row: Row) -> str:

@@ -79,11 +79,13 @@ def _cell(draft: Draft) -> list[Element]:
             f"the cell is a straight bore of {write(length, 'mm', LENGTH)} that is read over its volume, the worst "
             "case: turns at its ends and what they mix make it better, down to a plug",
         )
-    elif volume > 0:
+    elif volume:
         draft.assume(
             "no mixing in cell",
             "the cell passes as a plug, the best case; the range goes to a straight bore of 10 mm",
         )
+    if not volume:
+        return [Cell(0.0)]
     mixing = mixing_of_cell(length or USUAL_CELL_LENGTH, length is None)
     likeness = 0.0 if length is None else 1.0
     return [Cell(volume, None, length or USUAL_CELL_LENGTH, likeness, (mixing, *sizes))]

@@ -41,13 +41,15 @@ def _inject(draft: Draft) -> Elements:
     if loop is None and (given := [key for key in ("filled", "emptied") if key in draft.values]):
         draft.fault(given[0], "the loop with it", 'loop = "20 uL x 0.5 mm", its volume and bore')
         return ()
-    in_part = loop is not None and volume < loop * (1 - 1e-9)
-    if draft.text("filled") == "full" and in_part:
+    in_part = loop is not None and (volume < loop * (1 - 1e-9) or draft.text("filled") == "part")
+    if draft.text("filled") == "full" and loop is not None and volume < loop * (1 - 1e-9):
         draft.fault("filled", "the whole loop injected", 'filled = "part", or inject what the loop holds')
     if in_part and emptied == SAME_WAY and bore is None:
         draft.fault("emptied", "the loop's bore with it", 'loop = "20 uL x 0.5 mm"')
     refuse_tolerances(draft, "volume", *(("bore",) if bore else ()))
     sizes = tolerance_of(draft, "volume", scaling("volume"))
+    if loop is not None and bore is None:
+        draft.assume("loop without bore", "the loop's bore is not entered: it counts as an injection without a loop")
     if loop is None or bore is None:
         form = () if in_part and emptied == REVERSED else (injection_form(),)
         return (Injected(volume, unknowns=(*form, *sizes)),)
@@ -62,6 +64,8 @@ def _inject(draft: Draft) -> Elements:
             bends = bores = ()
         same_way = float(emptied == SAME_WAY)
         return (Loop(length, bore, volume, same_way, curvature, (*ways, *bends, *bores, *sizes)),)
+    if emptied:
+        draft.assume("full loop", "which way a full loop is emptied makes no difference")
     sizes = tolerance_of(draft, "volume", scaling("length"))
     return (Loop(length, bore, None, 0.0, curvature, (*bends, *bores, *sizes)),)
 
@@ -80,7 +84,17 @@ INJECT = Kind(
         ),
         Key(
             "emptied",
-            Choice((SAME_WAY, REVERSED), (("same", SAME_WAY), ("same-way", SAME_WAY), ("backwards", REVERSED))),
+            Choice(
+                (SAME_WAY, REVERSED),
+                (
+                    ("same", SAME_WAY),
+                    ("same-way", SAME_WAY),
+                    ("backwards", REVERSED),
+                    ("backflush", REVERSED),
+                    ("back-flush", REVERSED),
+                    ("other way", REVERSED),
+                ),
+            ),
             "which way a loop filled in part is emptied: as it was filled, or the other way",
         ),
         Key("fraction", Later("the injected volume"), "fraction of a first dimension"),

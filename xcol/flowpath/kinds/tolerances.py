@@ -67,9 +67,14 @@ def bore_keeping_volume(element: Any, factor: Real) -> Any:
 
 
 def bend(curvature: float | None) -> tuple[float, tuple[Unknown, ...]]:
-    """Return the curvature [1/m] that is computed with, and the unknown that it is, where none was entered (None)."""
+    """Return the curvature [1/m] that is computed with, and what is unknown of it; None: none was entered.
+
+    One that was entered is not drawn, and keeps its range: measured coils take less than theory says.
+    """
     if curvature is not None:
-        return curvature, ()
+        entered = f"bent at {write(1 / curvature, 'cm', LENGTH)} all along, as entered"
+        ends = Ends(curvature, 0.0, entered, "straight: measured coils lie between")
+        return curvature, (Unknown(BEND, None, setting("curvature"), ends),)
     tightest = 1 / TIGHTEST_BEND
     ends = Ends(tightest, 0.0, f"bent at {write(TIGHTEST_BEND, 'cm', LENGTH)} all along (assumed)", "straight")
     settle = "bend_radius of {name}"
