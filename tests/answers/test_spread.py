@@ -54,7 +54,7 @@ def test_rows_add_up_and_a_fitting_that_does_not_remix_is_part_of_the_run(chain)
 
 
 def test_all_at_its_best_is_less_than_all_at_its_worst(chain):
-    ends = [[at_end(link.element, worst=worst) for link in chain[1]] for worst in (False, True)]
+    ends = [[at_end(link.element, worst=worst, joined=worst) for link in chain[1]] for worst in (False, True)]
     best, worst = (spread_of(chain, np.array([1e-9]), elements).total() for elements in ends)
     assert best < spread_of(chain, np.array([1e-9])).total() < worst
 
@@ -63,5 +63,5 @@ def test_the_dean_number_is_that_of_a_tube(chain):
     spread = spread_of(chain, np.array([1e-9]))
     assert spread.dean(0) is None
     assert spread.dean(1)[0] == 0
-    bent = spread_of(chain, np.array([1e-9]), [at_end(link.element, worst=False) for link in chain[1]])
+    bent = spread_of(chain, np.array([1e-9]), [at_end(link.element, worst=False, joined=False) for link in chain[1]])
     assert bent.dean(1)[0] > bent.dean(2)[0] > 1  # Re goes as 1/d, De as 1/√d

@@ -207,9 +207,6 @@ WRONG = {
         path(INJECT, '  { fitting = "1 uL", remix = false },\n', COLUMN, DETECTOR), "remix", 6
     ),
     "remix in a word": (path(INJECT, '  { fitting = "1 uL", remix = "no" },\n', COLUMN, DETECTOR), "remix", 6),
-    "tolerance of a size that is not there": (
-        path(INJECT, '  { fitting = "1 uL", bore_tolerance = "5 %" },\n', COLUMN, DETECTOR), "bore_tolerance", 6
-    ),
     "tolerance as a length": (
         path(INJECT, '  { tube = "3 cm x 1 mm", bore_tolerance = "5 um" },\n', COLUMN, DETECTOR), "bore_tolerance", 6
     ),

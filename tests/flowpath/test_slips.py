@@ -47,6 +47,8 @@ def test_what_is_usual_has_no_warning():
 @pytest.mark.parametrize(
     ("changed", "word"),
     [
+        ({"tube": '30 cm x 0.17 mm", volume_tolerance = "3 %'}, "not used"),
+        ({"inject": '2 uL", bore_tolerance = "3 %'}, "not used"),
         ({"tube": '30 cm x 0.17 mm", bend_radius = "3 mm'}, "bend"),
         ({"tube": '30 cm x 0.17 mm", coil_diameter = "5 m'}, "bend"),
         ({"inject": '2 uL", loop = "20 uL x 0.03 mm'}, "long"),

@@ -12,6 +12,7 @@ from typing import TYPE_CHECKING
 from xcol.answers.pressure import Pressures, pressures
 from xcol.answers.rows import Row, rows_of, spread_of
 from xcol.filters.column import Column
+from xcol.filters.curved import HIGHEST_DEAN
 from xcol.filters.laminar import UNMIXED_BELOW
 from xcol.flowpath.chain import Link, links, transit
 from xcol.flowpath.elements import Electronics
@@ -276,12 +277,23 @@ def _remarks(detectors: tuple[DetectorBudget, ...]) -> list[str]:
             row.part.label
             for p in answer.peaks
             for row in p.rows
-            if row.tube is not None and 0 < row.tube.run_t_star < UNMIXED_BELOW
+            if 0 < (row.tube.run_t_star if row.tube else row.washed_t_star or 0.0) < UNMIXED_BELOW
         }
         if unmixed:
             found.append(
                 f"nearly unmixed flow (t* below {UNMIXED_BELOW:g}) in {', '.join(sorted(unmixed))}: entrance "
                 "effects blur the variance"
+            )
+        above = {
+            row.part.label
+            for p in answer.peaks
+            for row in p.rows
+            if row.tube is not None and row.tube.strength and row.tube.bent_dean > HIGHEST_DEAN
+        }
+        if above:
+            found.append(
+                f"Dean number above {HIGHEST_DEAN:g} in {', '.join(sorted(above))}: its bend is computed as at "
+                f"{HIGHEST_DEAN:g}, an upper estimate of the variance"
             )
     return list(dict.fromkeys(found))
 

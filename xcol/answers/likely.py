@@ -122,7 +122,7 @@ class Sampler:
         chain = links(self._instrument, at.detector)
         drawn = [*self._of_chain(chain, peak.peak), *self._of_peak(peak.peak, number)]
         starts = range(0, self.draws.count, _BLOCK)
-        sums = [self._block(chain, peak.peak, drawn, slice(start, start + _BLOCK)) for start in starts]
+        sums = [self._block(chain, peak, drawn, slice(start, start + _BLOCK)) for start in starts]
         extra, column, time = (
             np.concatenate(parts) for parts in zip(*((one.extra, one.column, one.time) for one in sums), strict=True)
         )
@@ -175,8 +175,9 @@ class Sampler:
                 self._drawn[key] = _Drawn(what, None, settle, self.draws.of(key, Factor(uncertainty)))
         return [self._drawn[key] for _, key, uncertainty, _ in unsure if uncertainty]
 
-    def _block(self, chain: tuple[Link, ...], peak: Peak, drawn: list[_Drawn], block: slice) -> _Sums:
+    def _block(self, chain: tuple[Link, ...], at: PeakBudget, drawn: list[_Drawn], block: slice) -> _Sums:
         """Compute a block of the draws; blocks, because what fits into the processor's cache is much quicker."""
+        peak = at.peak
         elements = [link.element for link in chain]
         factors: dict[str, Real] = {}
         for one in drawn:
@@ -203,6 +204,9 @@ class Sampler:
             last = links(self._instrument, self._instrument.detectors[-1])
             whole, variance = _columns([(link.part, link.element) for link in last], stream, peak)
             column = column * whole**2 / variance / (peak.plates * factors[PLATES_UNKNOWN])
+        if peak.retention is not None and at.columns:  # what was recorded holds, whatever the void volume is
+            entered = at.retention - at.delay
+            column, time = column * (entered / time) ** 2, entered
         return _Sums(
             extra=sum((row.variance for row in rows), spread.zero),
             column=spread.zero + column,

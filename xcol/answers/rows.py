@@ -10,7 +10,9 @@ import numpy as np
 
 from xcol.answers.spread import LinkSpread, Spread, at_end
 from xcol.filters.curved import HIGHEST_DEAN
-from xcol.flowpath.elements import InBore, Loop
+from xcol.filters.washout import WashedOut
+from xcol.flowpath.elements import Bore, InBore, Loop
+from xcol.flowpath.unknowns import REMIXING
 from xcol.units import significant
 
 if TYPE_CHECKING:
@@ -40,6 +42,7 @@ class Row:
     at_low: str  # the reason for each end in words
     at_high: str
     tube: TubeFigures | None = None
+    washed_t_star: float | None = None  # of a loop or a cell that is washed out
     form: str = ""  # of a loop: FULL, or SAME_WAY (filled in part)
     compression: float = 1.0  # θ, 1 for isocratic elution
 
@@ -73,16 +76,14 @@ def spread_of(instrument: Instrument, chain: tuple[Link, ...], elements: Sequenc
 
 def rows_of(instrument: Instrument, chain: tuple[Link, ...], printed: Spread) -> dict[int, list[Row]]:
     """Return the row of each link but the columns, one entry a peak, by its place; shares are still to come."""
-    ends = [
-        spread_of(instrument, chain, [at_end(link.element, worst=worst) for link in chain]) for worst in (False, True)
-    ]
-    best, worst = (spread.rows() for spread in ends)
+    ends = _ends(instrument, chain)
+    bent = next(end for end in ends if not end.worst).spread
     found = {}
     for place, spread in printed.rows().items():
-        link = chain[place]
-        dean = ends[0].dean(place)
-        at_low, at_high = _reasons(link, dean, apart=spread.segment.places == worst[place].segment.places)
-        figures = _figures(spread, best[place], dean, printed.zero)
+        link, made = chain[place], printed.filter(place)
+        variances = np.stack([spread.variance, *(end.spread.rows()[place].variance for end in ends)])
+        figures = _figures(spread, bent.rows()[place], bent.dean(place), printed.zero)
+        words = [_words(link, None, bent.dean(place)), *(_words(link, end, bent.dean(place)) for end in ends)]
         found[place] = [
             Row(
                 part=link.part,
@@ -93,11 +94,12 @@ def rows_of(instrument: Instrument, chain: tuple[Link, ...], printed: Spread) ->
                 share_extra=0.0,
                 share_total=0.0,
                 plates_kept_without=None,
-                low=float(min(best[place].variance[n], spread.variance[n])),
-                high=float(max(worst[place].variance[n], spread.variance[n])),
-                at_low=at_low,
-                at_high=at_high,
+                low=float(variances[:, n].min()),
+                high=float(variances[:, n].max()),
+                at_low=words[_end(variances[:, n], lowest=True)],
+                at_high=words[_end(variances[:, n], lowest=False)],
                 tube=figures[n] if figures else None,
+                washed_t_star=float((printed.zero + made.tube.t_star)[n]) if isinstance(made, WashedOut) else None,
                 form=_form(link.element),
             )
             for n in range(len(instrument.peaks))
@@ -105,26 +107,62 @@ def rows_of(instrument: Instrument, chain: tuple[Link, ...], printed: Spread) ->
     return found
 
 
+@dataclass(frozen=True)
+class _End:
+    """A chain with all that is unknown of its mixing at one end."""
+
+    worst: bool
+    joined: bool | None  # whether layers run on through fittings of which nobody knows; None: there are none
+    spread: Spread
+
+
+def _ends(instrument: Instrument, chain: tuple[Link, ...]) -> list[_End]:
+    """Return the chain at its best and at its worst, with fittings mixing the stream and not, where that is unknown.
+
+    Whether a fitting that mixes helps hangs on the tubes beside it: straight ones, yes; bent ones, hardly, or not.
+    """
+    open_ = any(unknown.what == REMIXING for link in chain for unknown in link.element.unknowns)
+    found = []
+    for worst in (False, True):
+        for joined in (False, True) if open_ else (None,):
+            elements = [at_end(link.element, worst=worst, joined=bool(joined)) for link in chain]
+            found.append(_End(worst, joined, spread_of(instrument, chain, elements)))
+    return found
+
+
+def _end(variances: Values, *, lowest: bool) -> int:
+    """Return which of the variances, printed and at the ends, is the lowest or highest: an end where it is both."""
+    ends = variances[1:]
+    at = int(ends.argmin() if lowest else ends.argmax())
+    beyond = variances[0] < ends[at] if lowest else variances[0] > ends[at]
+    return 0 if beyond and not np.isclose(variances[0], ends[at], rtol=1e-9) else 1 + at
+
+
+def _words(link: Link, end: _End | None, dean: Values | None) -> str:
+    """Return in words what a link is like at an end; None: as printed."""
+    element = link.element
+    if isinstance(element, InBore) and link.part.viscosity is None:
+        return "straight: without a viscosity bends are not computed"
+    words = []
+    if end is not None:
+        words = [u.ends.at_worst if end.worst else u.ends.at_best for u in element.unknowns if u.ends is not None]
+    highest = float(dean.max(initial=0.0)) if dean is not None else 0.0
+    if highest > HIGHEST_DEAN and not (end and end.worst):
+        words.append(f"De {significant(highest)} taken as {HIGHEST_DEAN:g}, an upper estimate")
+    if end is not None and end.joined is not None and isinstance(element, Bore):
+        words.append(
+            "its layers running on through the fitting" if end.joined else "mixed anew in the fitting beside it"
+        )
+    if end is not None and isinstance(element, Bore) and not any(words):
+        words.append("beside straight tubes" if end.worst else "beside bent tubes")
+    return ", ".join(word for word in words if word) or "as entered"
+
+
 def _form(element: Element) -> str:
     """Return how a loop is emptied, where that is more than a plug."""
     if not isinstance(element, Loop):
         return ""
     return FULL if element.injected is None else SAME_WAY if element.same_way else ""
-
-
-def _reasons(link: Link, dean: Values | None, *, apart: bool) -> tuple[str, str]:
-    """Return why a link's variance is as low and as high as it may be; ``apart``: its run never reaches further."""
-    element = link.element
-    low = [unknown.ends.at_best for unknown in element.unknowns if unknown.ends]
-    high = [unknown.ends.at_worst for unknown in element.unknowns if unknown.ends]
-    if isinstance(element, InBore) and link.part.viscosity is None:
-        low = high = ["straight: without a viscosity bends are not computed"]
-    if dean is not None and dean.max(initial=0.0) > HIGHEST_DEAN:
-        low = [*low, f"De {significant(float(dean.max()))} taken as {HIGHEST_DEAN:g}, an upper estimate"]
-    if not apart:
-        low, high = [*low, "mixed anew in the fitting beside it"], [*high, "its layers running on through the fitting"]
-    found = [", ".join(piece for piece in words if piece) or "as entered" for words in (low, high)]
-    return found[0], found[1]
 
 
 def _figures(spread: LinkSpread, bent: LinkSpread, dean: Values | None, zero: Values) -> list[TubeFigures] | None:

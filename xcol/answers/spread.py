@@ -17,6 +17,7 @@ from xcol.filters.tube import Tube, shares
 from xcol.flowpath.bed import Bed
 from xcol.flowpath.chain import Link, Segment, filter_of, segments
 from xcol.flowpath.elements import InBore
+from xcol.flowpath.unknowns import REMIXING
 
 if TYPE_CHECKING:
     import numpy.typing as npt
@@ -117,7 +118,8 @@ class Spread:
             if not isinstance(self._elements[places[segment.places[0]]], Bed):
                 yield Segment(tuple(places[at] for at in segment.places), segment.joined)
 
-    def _filter(self, place: int) -> Filter:
+    def filter(self, place: int) -> Filter:
+        """Return the filter that a link is."""
         if place not in self._filters:
             link = self._chain[place]
             self._filters[place] = filter_of(link, self._stream(link.part), self._elements[place])
@@ -131,7 +133,7 @@ class Spread:
         return self._known[segment]
 
     def _compute(self, segment: Segment) -> list[LinkSpread]:
-        filters = [self._filter(place) for place in segment.places]
+        filters = [self.filter(place) for place in segment.places]
         tubes = [one for one in filters if isinstance(one, Tube)]
         if len(tubes) < len(filters) or not isinstance(self._elements[segment.places[0]], InBore):
             return [LinkSpread(self.zero + one.variance(), self.zero) for one in filters]
@@ -143,9 +145,14 @@ class Spread:
         ]
 
 
-def at_end(element: Element, *, worst: bool) -> Element:
-    """Return an element with all that is unknown of its mixing at its worst, or at its best."""
+def at_end(element: Element, *, worst: bool, joined: bool) -> Element:
+    """Return an element with all that is unknown of its mixing at its worst, or at its best.
+
+    ``joined``: where nobody knows whether it mixes the stream of the tubes beside it, it does not.
+    """
     for unknown in element.unknowns:
-        if unknown.ends is not None:
+        if unknown.what == REMIXING:
+            element = unknown.put(element, 0.0 if joined else 1.0)
+        elif unknown.ends is not None:
             element = unknown.put(element, unknown.ends.worst if worst else unknown.ends.best)
     return element

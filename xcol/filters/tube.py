@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterator, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from functools import cached_property
 from typing import TYPE_CHECKING
 
@@ -163,6 +163,21 @@ def _shared_by_pairs(edges: Array, units: Array, strengths: Array, pairs: list[t
     return half
 
 
+def _merged(tubes: Sequence[Tube]) -> list[Tube]:
+    """Return the tubes with neighbours that differ in their length only put together: a cut changes nothing."""
+    found: list[Tube] = []
+    for tube in tubes:
+        last = found[-1] if found else None
+        pairs = (
+            ((last.bore, tube.bore), (last.diffusion, tube.diffusion), (last.strength, tube.strength)) if last else ()
+        )
+        if last is not None and all(np.array_equal(one, other) for one, other in pairs):
+            found[-1] = replace(last, length=last.length + tube.length)
+        else:
+            found.append(tube)
+    return found
+
+
 @dataclass(frozen=True)
 class TubeRun:
     """Tubes that follow each other with nothing between: one stream, whose layers run on (see ``shares``)."""
@@ -192,10 +207,14 @@ class TubeRun:
 
         Bent tubes have the form of straight ones at the t* of the same variance, an approximation.
         """
-        t_stars, units, scale = self._as_straight
         axial = sum(tube.axial_variance() for tube in self.tubes)
+        return self.laminar_transfer(omega) * gaussian_transfer(0.0 * self.delay(), axial, omega)
+
+    def laminar_transfer(self, omega: Real) -> Complex:
+        """H(ω) of the laminar flow alone, without axial diffusion, with the delay."""
+        t_stars, units, scale = self._as_straight
         laminar = run_transfer(t_stars, [scale * unit for unit in units], omega)
-        return laminar * gaussian_transfer(self.delay(), axial, omega)
+        return laminar * gaussian_transfer(self.delay(), 0.0, omega)
 
     @cached_property
     def _as_straight(self) -> tuple[list[Real], list[Real], Real]:
@@ -206,7 +225,7 @@ class TubeRun:
         if all(np.ndim(tube.strength) == 0 and tube.strength == 0 for tube in self.tubes):
             return [tube.t_star for tube in self.tubes], [tube.time_unit for tube in self.tubes], 1.0
         alike = []
-        for tube in self.tubes:
+        for tube in _merged(self.tubes):
             t_star = np.where(tube.t_star > 0, tube.t_star, 1.0)
             same = t_star_of(bent_variance(t_star, tube.strength) / np.square(t_star)) / t_star
             # a longer tube at the same delay: D greater, and the bore with it

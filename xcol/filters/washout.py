@@ -9,7 +9,8 @@ import numpy as np
 
 from xcol.filters.curved import bent_variance
 from xcol.filters.interface import outer
-from xcol.filters.laminar import dimensionless_third_moment, fourth_moment, t_star_of
+from xcol.filters.laminar import dimensionless_third_moment, fourth_moment, relative_variance, t_star_of
+from xcol.filters.tube import TubeRun
 
 if TYPE_CHECKING:
     from xcol.filters.interface import Complex, Real
@@ -21,7 +22,8 @@ class WashedOut:
     """What leaves a full ``tube`` that is washed out: the density 1 − F(t) over t̄, F the tube's own distribution.
 
     A cell that is read over its bore sees the same of what passes through it. A long tube (t* → ∞) is a plug.
-    Moments about 0 from those of the tube, m_n: mean m₂/2m₁, second m₃/3m₁, third m₄/4m₁.
+    Moments about 0 from those of the tube, m_n: mean m₂/2m₁, second m₃/3m₁, third m₄/4m₁. Of the laminar flow alone:
+    diffusion along so short a bore ends at what it is connected to.
 
     Source: residence time theory (Danckwerts, Chem. Eng. Sci. 2 (1953) 1, from memory).
 
@@ -35,21 +37,19 @@ class WashedOut:
 
     def delay(self) -> Real:
         """Mean delay m₂/2m₁ [s]."""
-        return self.tube.delay() * (1 + self._spread()) / 2
+        spread, _ = self._moments()
+        return self.tube.delay() * (1 + spread) / 2
 
     def variance(self) -> Real:
         """Variance [s²]: t̄²(1/12 + φ/2 − φ²/4 + s/3), φ and s the tube's central moments over t̄² and t̄³."""
-        spread, skew = self._spread(), self._skew()
+        spread, skew = self._moments()
         return self.tube.delay() ** 2 * (1 / 12 + spread / 2 - spread**2 / 4 + skew / 3)
 
     def third_moment(self) -> Real:
         """Third central moment [s³]."""
-        spread, skew = self._spread(), self._skew()
-        t_star, time_unit = self._straight()
-        # the tube's central fourth moment, that of axial diffusion with it, over t̄⁴
-        axial = self._axial()
-        fourth = fourth_moment(t_star) * self._per_delay(time_unit) ** 4
-        fourth = fourth + 6 * (spread - axial) * axial + 3 * axial**2
+        spread, skew = self._moments()
+        t_star = self._t_star()
+        fourth = fourth_moment(t_star) / t_star**4
         first, second = (1 + spread) / 2, (1 + 3 * spread + skew) / 3
         third = (1 + 6 * spread + 4 * skew + fourth) / 4
         return self.tube.delay() ** 3 * (third - 3 * first * second + 2 * first**3)
@@ -58,28 +58,18 @@ class WashedOut:
         """H(ω) = (1 − H_tube)/(iωt̄); 1 at ω = 0."""
         turn = 1j * outer(self.tube.delay(), omega)
         still = turn == 0
-        h = (1 - self.tube.transfer(omega)) / np.where(still, 1.0, turn)
+        h = (1 - TubeRun((self.tube,)).laminar_transfer(omega)) / np.where(still, 1.0, turn)
         result: Complex = np.where(still, 1.0 + 0.0j, h)
         return result
 
-    def _straight(self) -> tuple[Real, Real]:
-        """Return t* and a²/D of the straight tube of the same delay and variance."""
-        bent = np.where(np.asarray(self.tube.t_star) > 0, self.tube.t_star, 1.0)
+    def _t_star(self) -> Real:
+        """Return t* of the straight tube of the same variance over t̄² (1 where there is no length)."""
+        t_star = np.where(np.asarray(self.tube.t_star) > 0, self.tube.t_star, 1.0)
         if np.ndim(self.tube.strength) == 0 and self.tube.strength == 0:
-            return bent, self.tube.time_unit
-        straight = t_star_of(bent_variance(bent, self.tube.strength) / np.square(bent))
-        return straight, self.tube.time_unit * bent / straight
+            return t_star
+        return t_star_of(bent_variance(t_star, self.tube.strength) / np.square(t_star))
 
-    def _per_delay(self, time: Real) -> Real:
-        delay = self.tube.delay()
-        return time / np.where(np.asarray(delay) > 0, delay, 1.0)
-
-    def _axial(self) -> Real:
-        return self._per_delay(self._per_delay(self.tube.axial_variance()))
-
-    def _spread(self) -> Real:
-        return self._per_delay(self._per_delay(self.tube.variance()))
-
-    def _skew(self) -> Real:
-        t_star, time_unit = self._straight()
-        return dimensionless_third_moment(t_star) * self._per_delay(time_unit) ** 3
+    def _moments(self) -> tuple[Real, Real]:
+        """Return second and third central moment of the tube over t̄² and t̄³ [-]."""
+        t_star = self._t_star()
+        return relative_variance(t_star), dimensionless_third_moment(t_star) / t_star**3

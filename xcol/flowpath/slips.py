@@ -52,7 +52,10 @@ def of_path(instrument: Instrument, flow_place: Place, findings: Findings) -> No
     _blocks(instrument, findings)
     _order(instrument, findings)
     if instrument.viscosity is None:
-        findings.warn("no viscosity entered: pressures, Reynolds numbers and bends are not computed")
+        findings.warn(
+            "no viscosity entered: pressures, Reynolds numbers and bends are not computed (tubes count as straight, "
+            "in the intervals, too)"
+        )
     else:
         _viscosity(instrument, instrument.viscosity, findings)
 

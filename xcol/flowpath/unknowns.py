@@ -18,6 +18,7 @@ if TYPE_CHECKING:
     Uniform01 = Callable[[], Values]  # each call gives new numbers between 0 and 1, one a draw
 
 BEND = "bend"  # what a tube's unknown curvature is called
+REMIXING = "remixing"  # and whether a fitting mixes the stream of the tubes beside it
 
 _NINETY = 1.6448536269514722  # 90 % of a normal distribution lie within so many σ of its middle
 

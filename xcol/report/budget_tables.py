@@ -133,6 +133,8 @@ def percent(share: float | None) -> str:
         return "-"
     if 0 < share < 0.005:
         return "<1 %"
+    if -0.005 < share < 0:
+        return "0 %"
     if 0.995 <= share < 1:
         return f"{100 * share:.1f} %"
     return f"{100 * share:.0f} %"

@@ -12,7 +12,13 @@ from xcol.flowpath.file_keys import FLOWS
 from xcol.flowpath.findings import Draft
 from xcol.flowpath.keys import Choice, Key, Later, Measure, Number, Table, Text, Value
 from xcol.flowpath.kinds.table import DROP, Elements, Kind, must
-from xcol.flowpath.kinds.tolerances import plates_of_column, quality_of_packing, refuse_tolerances, tolerance_of
+from xcol.flowpath.kinds.tolerances import (
+    check_tolerances,
+    plates_of_column,
+    quality_of_packing,
+    tolerance_of,
+    total_porosity,
+)
 from xcol.flowpath.shorthand import column_size, length_first
 from xcol.flowpath.unknowns import Unknown, scaling
 from xcol.units import LENGTH, RATIO, VOLUME, significant
@@ -60,19 +66,21 @@ def _column(draft: Draft) -> Elements:
             if curve and curve.ends
             else ()
         ),
-        *_tolerances(draft),
+        *_of_void_volume(draft, packing),
     )
     particle = draft.number("particle")
     return (Bed(bore, length, particle, plates, void, porosity, plates_at, curve, packing.source, unknowns=unknowns),)
 
 
-def _tolerances(draft: Draft) -> tuple[Unknown, ...]:
-    """Return what the tolerances that the file enters leave open of the void volume; none is assumed."""
-    refuse_tolerances(draft, *(("volume",) if "void_volume" in draft.values else ("bore", "length")))
+def _of_void_volume(draft: Draft, packing: Packing) -> tuple[Unknown, ...]:
+    """Return what is unknown of the void volume: an assumed porosity, or what the file's tolerances leave open."""
+    check_tolerances(draft, *(("volume",) if "void_volume" in draft.values else ("bore", "length")))
 
     def square(element: Bed, factor: Real) -> Bed:
         return replace(element, void_volume=element.void_volume * factor**2)
 
+    if draft.number("void_volume") is None and draft.number("total_porosity") is None:
+        return (total_porosity(packing.total_porosity, _porosities(draft, packing)),)
     puts = {"bore": square, "length": scaling("void_volume"), "volume": scaling("void_volume")}
     return tuple(
         unknown
@@ -93,6 +101,15 @@ def _packing(draft: Draft) -> Packing | None:
         suggestion = f'packing = "{draft.catalogs.near(PACKINGS, named) or names[0]}"'
         draft.fault("packing", f"one of {', '.join(names)}, or a packing of your own catalog", suggestion)
     return packing
+
+
+def _porosities(draft: Draft, packing: Packing) -> tuple[float, float]:
+    """Return the range of the total porosity: of the packing that is named, or of all with a plate height curve."""
+    usual = [row for row in draft.catalogs.rows(PACKINGS) if row.knox is not None]
+    spans = (
+        [packing.total_range] if draft.text("packing") else [packing.total_range, *(row.total_range for row in usual)]
+    )
+    return min(low for low, _ in spans), max(high for _, high in spans)
 
 
 def _void_volume(draft: Draft, packing: Packing, bore: float, length: float) -> float:

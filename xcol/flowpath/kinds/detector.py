@@ -18,7 +18,7 @@ from xcol.flowpath.elements import USUAL_CELL_LENGTH, Cell, Electronics, Element
 from xcol.flowpath.findings import Draft
 from xcol.flowpath.keys import Choice, Key, Measure, Number, Tables
 from xcol.flowpath.kinds.table import DROP, TANKS, VOLUMES, Elements, Kind, one_size
-from xcol.flowpath.kinds.tolerances import mixing_of_cell, refuse_tolerances, tolerance_of
+from xcol.flowpath.kinds.tolerances import check_tolerances, mixing_of_cell, tolerance_of
 from xcol.flowpath.unknowns import Ends, OneOf, Unknown, scaling
 from xcol.units import FREQUENCY, LENGTH, TIME, VOLUME, write
 
@@ -42,7 +42,7 @@ _FILTER_EXAMPLE = 'filters = [{ time_constant = "0.1 s" }, { rise_time = "0.2 s"
 
 
 def _detector(draft: Draft) -> Elements:
-    refuse_tolerances(draft, *(("volume",) if draft.number("cell") is not None else ()))
+    check_tolerances(draft, *(("volume",) if draft.number("cell") is not None else ()))
     elements: list[Element] = [*_cell(draft)]
     if "filters" in draft.values:
         elements += _several_filters(draft)

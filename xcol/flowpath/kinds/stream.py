@@ -23,9 +23,9 @@ from xcol.flowpath.kinds.table import (
 from xcol.flowpath.kinds.tolerances import (
     bend,
     bore_keeping_volume,
+    check_tolerances,
     injection_form,
     mixing_of_volume,
-    refuse_tolerances,
     remixing,
     tolerance_of,
     way_of_emptying,
@@ -38,7 +38,8 @@ from xcol.units import FLOW, LENGTH, VARIANCE, VOLUME, write
 def _inject(draft: Draft) -> Elements:
     volume, (loop, bore) = must(draft, "volume"), loop_of(draft)
     emptied = draft.text("emptied")
-    if loop is None and (given := [key for key in ("filled", "emptied") if key in draft.values]):
+    needs = (("filled", "emptied") if loop is None else ()) + (("bend_radius", "coil_diameter") if bore is None else ())
+    if given := [key for key in needs if key in draft.values]:
         draft.fault(given[0], "the loop with it", 'loop = "20 uL x 0.5 mm", its volume and bore')
         return ()
     in_part = loop is not None and (volume < loop * (1 - 1e-9) or draft.text("filled") == "part")
@@ -46,15 +47,18 @@ def _inject(draft: Draft) -> Elements:
         draft.fault("filled", "the whole loop injected", 'filled = "part", or inject what the loop holds')
     if in_part and emptied == SAME_WAY and bore is None:
         draft.fault("emptied", "the loop's bore with it", 'loop = "20 uL x 0.5 mm"')
-    refuse_tolerances(draft, "volume", *(("bore",) if bore else ()))
+    check_tolerances(draft, "volume", *(("bore",) if bore else ()))
     sizes = tolerance_of(draft, "volume", scaling("volume"))
     if loop is not None and bore is None:
-        draft.assume("loop without bore", "the loop's bore is not entered: it counts as an injection without a loop")
+        draft.assume(
+            "loop without bore",
+            "the loop's bore is not entered: it counts as an injection without one; full, it can be more than 5 plugs",
+        )
     if loop is None or bore is None:
         form = () if in_part and emptied == REVERSED else (injection_form(),)
         return (Injected(volume, unknowns=(*form, *sizes)),)
     length = loop / (math.pi / 4 * bore**2)
-    curvature, bends = bend(None)
+    curvature, bends = bend(curvature_of(draft))
     bores = tolerance_of(draft, "bore", bore_keeping_volume)
     if in_part:
         sizes = tolerance_of(draft, "volume", scaling("injected"))
@@ -97,6 +101,8 @@ INJECT = Kind(
             ),
             "which way a loop filled in part is emptied: as it was filled, or the other way",
         ),
+        Key("bend_radius", BEND_RADIUS.read, "radius at which the loop is bent, all along"),
+        Key("coil_diameter", COIL_DIAMETER.read, "diameter of the coil that the loop is wound to"),
         Key("fraction", Later("the injected volume"), "fraction of a first dimension"),
         Key("loop_in_line", Later(), "loop that stays in line"),
     ),
@@ -113,11 +119,11 @@ def _tube(draft: Draft) -> Elements:
     curvature, bends = bend(curvature_of(draft))
     if length is None:
         length = must(draft, "volume") / (math.pi / 4 * bore**2)
-        refuse_tolerances(draft, "bore", "volume")
+        check_tolerances(draft, "bore", "volume")
         volumes = tolerance_of(draft, "volume", scaling("length"))
         sizes = (*tolerance_of(draft, "bore", bore_keeping_volume), *volumes)
     else:
-        refuse_tolerances(draft, "bore", "length")
+        check_tolerances(draft, "bore", "length")
         sizes = _bore_and_length(draft)
     if curvature and 2 * bore * curvature > 1:
         key = "bend_radius" if "bend_radius" in draft.values else "coil_diameter"
@@ -159,7 +165,7 @@ def _fitting(draft: Draft) -> Elements:
                 "tanks for a volume or a gap only",
                 "give volume in place of bore and length",
             )
-        refuse_tolerances(draft, "bore", "length")
+        check_tolerances(draft, "bore", "length")
         unknowns = (*mixes, *_bore_and_length(draft))
         remixed = 0.0 if remix is False else 1.0
         return (Bore(must(draft, "length"), must(draft, "bore"), remixed, 0.0, unknowns, "fitting"),)
@@ -174,7 +180,7 @@ def _fitting(draft: Draft) -> Elements:
             port = 25.4e-3 / 16
             draft.assume("port 1/16 in", "port of 1/16 in (1.59 mm) around the gap")
         volume = float(dead_gap_volume(port, must(draft, "gap")))
-    refuse_tolerances(draft, "volume")
+    check_tolerances(draft, "volume")
     sizes = tolerance_of(draft, "volume", scaling("volume"))
     if tanks is None:
         draft.assume("fittings mix fully", "the volume mixes as one stirred tank")
@@ -207,7 +213,7 @@ def _mixer(draft: Draft) -> Elements:
     tanks = draft.number("tanks")
     if tanks is None:
         draft.assume("mixer: one tank", "the volume mixes as one stirred tank")
-    refuse_tolerances(draft, "volume")
+    check_tolerances(draft, "volume")
     return (
         Mixed(must(draft, "volume"), tanks or 1.0, "mixer", unknowns=tolerance_of(draft, "volume", scaling("volume"))),
     )
@@ -230,7 +236,7 @@ MIXER = Kind(
 
 
 def _block(draft: Draft) -> Elements:
-    refuse_tolerances(draft)
+    check_tolerances(draft)
     volume = draft.number("volume")
     if volume is None:
         volume = 0.0
@@ -265,7 +271,7 @@ BLOCK = Kind(
 
 
 def _outlet(draft: Draft) -> Elements:
-    refuse_tolerances(draft)
+    check_tolerances(draft)
     return ()
 
 

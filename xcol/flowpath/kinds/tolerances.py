@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING, Any
 
 from xcol.catalog_kinds import TUBING
 from xcol.flowpath.elements import PLUG
-from xcol.flowpath.unknowns import BEND, Between, Ends, Factor, LogBetween, OneOf, Unknown, scaling, setting
+from xcol.flowpath.unknowns import BEND, REMIXING, Between, Ends, Factor, LogBetween, OneOf, Unknown, scaling, setting
 from xcol.units import LENGTH, write
 
 if TYPE_CHECKING:
@@ -28,12 +28,11 @@ _WORST_FITTING = 1.35
 _WORST_INJECTION = 1 / 4
 
 
-def refuse_tolerances(draft: Draft, *known: str) -> None:
-    """Report tolerances of sizes that this part does not have."""
+def check_tolerances(draft: Draft, *known: str) -> None:
+    """Warn of tolerances of sizes that this part does not have."""
     for size in SIZES:
         if f"{size}_tolerance" in draft.values and size not in known:
-            others = " or ".join(f"{name}_tolerance" for name in known) or "no tolerance"
-            draft.fault(f"{size}_tolerance", f"{others}: it has no {size} that its variance hangs on", "leave it out")
+            draft.warn(f"{size}_tolerance is not used: it has no {size} that its variance hangs on")
 
 
 def tolerance_of(draft: Draft, size: str, put: Callable[[Any, Real], Any]) -> tuple[Unknown, ...]:
@@ -106,14 +105,14 @@ def mixing_of_volume() -> Unknown:
 
 def remixing() -> Unknown:
     """Return whether a fitting mixes the stream of the tubes beside it."""
-    ends = Ends(1.0, 0.0, "", "")  # it shows in the tubes beside it
-    return Unknown("remixing", OneOf((0.0, 1.0)), setting("remixed"), ends, "a union run with {name}, and without it")
+    # it has no ends of its own: what it is worth shows in the tubes beside it
+    return Unknown(REMIXING, OneOf((0.0, 1.0)), setting("remixed"), settle="a union run with {name}, and without it")
 
 
 def mixing_of_cell(length: float, assumed: bool) -> Unknown:
     """Return how a cell mixes, between a plug and a straight bore of this ``length`` [m]."""
     shown = f"a straight bore of {write(length, 'mm', LENGTH)}{' (assumed)' if assumed else ''}"
-    ends = Ends(0.0, 1.0, "a plug", f"read over {shown}")
+    ends = Ends(0.0, 1.0, "a plug", f"as {shown}")
     settle = "a union run (cell's mixing)"
     return Unknown("mixing", Between(0.0, 1.0), setting("likeness"), ends, settle)
 
@@ -127,3 +126,12 @@ def plates_of_column(draft: Draft) -> Unknown:
 def quality_of_packing() -> Unknown:
     """Return where, between the worst and the best of such packings, a column lies."""
     return Unknown("plates", Between(0.0, 1.0), setting("quality"), settle="plates, measured or from the certificate")
+
+
+def total_porosity(usual: float, span: tuple[float, float]) -> Unknown:
+    """Return what is unknown of a void volume of which the total porosity was assumed to be the ``usual`` one."""
+
+    def put(element: Any, value: Real) -> Any:
+        return replace(element, void_volume=element.void_volume * value / usual)
+
+    return Unknown("total porosity", Between(*span), put, settle="total_porosity, or a measured void_volume")
