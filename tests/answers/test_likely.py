@@ -224,3 +224,31 @@ def test_twice_the_same_text_gives_the_same_answer_whatever_the_number_of_parts(
         parts = [f'{{ tube = "{10 + n} cm x 0.2 mm" }}, {{ fitting = "0.1 uL" }}' for n in range(tubes)]
         text = VAGUE.replace('{ tube = "40 cm x 0.17 mm", name = "first" }', ",\n".join(parts))
         assert likely_of(text, draws=300) == likely_of(text, draws=300)
+
+
+def test_a_recorded_retention_holds_whatever_the_void_volume_is():
+    exact = VAGUE.replace("total_porosity = 0.6", 'void_volume = "0.208 mL"').replace("k = 2", 'retention = "2.3 min"')
+    loose = exact.replace('"0.208 mL"', '"0.208 mL", volume_tolerance = "15 %"')
+    assert likely_of(loose).plates_kept == pytest.approx(likely_of(exact).plates_kept, rel=1e-9)
+    by_k = loose.replace('retention = "2.3 min"', "k = 2")
+    low, high = likely_of(by_k).plates_kept
+    assert high - low > 1.1 * np.ptp(likely_of(loose).plates_kept)
+
+
+def test_an_assumed_total_porosity_is_drawn():
+    assumed = VAGUE.replace(", total_porosity = 0.6", "")
+    shares = {i.what: i.share for i in likely_of(assumed).influences}
+    assert shares["total porosity"] > 0.05
+    low, high = likely_of(assumed).plates_kept
+    for porosity in (0.52, 0.66):
+        entered = VAGUE.replace("total_porosity = 0.6", f"total_porosity = {porosity}")
+        middle = sum(likely_of(entered).plates_kept) / 2
+        assert low < middle < high
+    assert "total porosity" not in {i.what for i in likely_of(VAGUE).influences}
+
+
+def test_a_cell_of_no_volume_leads_nowhere():
+    likely = likely_of(VAGUE.replace('cell = "4 uL"', 'cell = "0 uL"'))
+    assert all(math.isfinite(end) for end in (*likely.plates_kept, *likely.variance_extra))
+    (cell,) = [share for row, share in likely.leaders if row.contribution == "cell"]
+    assert cell == 0

@@ -124,3 +124,44 @@ def test_ends_hold_what_is_printed_in_every_example(examples):
                 if peak.plates_kept is not None:
                     worst, best = peak.plates_kept_range
                     assert worst <= peak.plates_kept <= best
+
+
+def test_strongly_bent_tubes_may_be_better_joined_than_mixed():
+    head = 'bend_radius = "14 mm"\n'
+    tube, union = '{ tube = "8 cm x 0.25 mm" }', '{ fitting = "a", bore = "0.25 mm", length = "0.1 mm"'
+    _, (_, apart, _, _) = rows_of(tube, f"{union}, remix = true }}", tube, head=head.replace("flow", "flow"))
+    _, (_, joined, _, _) = rows_of(tube, f"{union}, remix = false }}", tube, head=head)
+    _, (_, open_, _, _) = rows_of(tube, f"{union} }}", tube, head=head)
+    assert open_.low == pytest.approx(min(apart.variance, joined.variance), rel=1e-9)
+    assert open_.high >= max(apart.high, joined.high) * (1 - 1e-9)
+
+
+def test_a_cell_that_is_passed_through_has_both_ends_whichever_is_the_worse():
+    for flow in ("1 uL/min", "1 mL/min"):
+        text = (
+            f'flow = "{flow}"\nviscosity = "1 cP"\npath = [ {{ inject = "20 nL" }}, {{ detector = "first", cell = "200 nL" }},\n'
+            '{ detector = "second" } ]\npeaks = [ { diffusion = "1e-9 m^2/s" } ]\n'
+        )
+        answer = budget(parse(text, "f"))
+        cell = answer.detectors[1].peaks[0].rows[1]
+        ends = [200e-3**2 / 12, answer.in_uL2(float(Tube(10e-3, (4 * 200e-12 / 3.14159265 / 10e-3) ** 0.5,
+                                                           answer.instrument.flow, 1e-9).variance()))]  # fmt: skip
+        assert [answer.in_uL2(cell.low), answer.in_uL2(cell.high)] == pytest.approx(sorted(ends), rel=1e-6)
+        words = [cell.at_low, cell.at_high]
+        assert "plug" in words[0 if ends[0] < ends[1] else 1]
+
+
+def test_unmixed_loops_and_cells_and_high_dean_numbers_are_warned_of():
+    text = (
+        'flow = "0.3 mL/min"\nviscosity = "1 cP"\npath = [ { inject = "5 uL", loop = "5 uL x 0.5 mm" },\n'
+        '{ detector = "UV", cell = "8 uL", path_length = "10 mm" } ]\npeaks = [ { diffusion = "4e-11 m^2/s" } ]\n'
+    )
+    (warning,) = [w for w in budget(parse(text, "f")).warnings if "unmixed" in w]
+    assert "inject" in warning
+    assert "UV" in warning
+    answer, _ = rows_of('{ tube = "40 cm x 0.25 mm", bend_radius = "1 cm" }')
+    assert not any("Dean" in warning for warning in answer.warnings)
+    fast = text.replace("0.3 mL/min", "5 mL/min").replace(
+        "{ detector", '{ tube = "40 cm x 0.25 mm", bend_radius = "1 cm" },\n{ detector'
+    )
+    assert any("Dean" in warning for warning in budget(parse(fast, "f")).warnings)

@@ -93,6 +93,8 @@ def test_a_bent_tube_cut_into_many_is_the_whole_tube():
     whole = Tube(0.4, 254e-6, FLOW, 1e-9, 2e4)
     cut = TubeRun(tuple(Tube(length, 254e-6, FLOW, 1e-9, 2e4) for length in (0.1, 0.05, 0.2, 0.0, 0.05)))
     assert cut.variance() == pytest.approx(whole.variance(), rel=1e-12)
+    assert cut.third_moment() == pytest.approx(whole.third_moment(), rel=1e-9)
+    assert np.allclose(cut.transfer(np.array([0.1, 1.0])), whole.transfer(np.array([0.1, 1.0])), atol=1e-9)
     assert whole.variance() < 0.4 * Tube(0.4, 254e-6, FLOW, 1e-9).variance()
 
 

@@ -82,3 +82,15 @@ def test_a_bent_loop_spreads_less_and_a_faint_bend_hardly():
     assert float(bent.third_moment()) < float(straight.third_moment())
     for moment in ("delay", "variance", "third_moment"):
         assert float(getattr(faint, moment)()) == pytest.approx(float(getattr(straight, moment)()), rel=1e-6)
+
+
+def test_below_the_table_it_goes_on_rising():
+    # finite volumes of a reviewer's own, converged to four digits
+    for t_star, relative in ((1e-5, 10.10), (3e-6, 15.7), (1e-6, 23.2), (1e-7, 52.0)):
+        assert in_plugs_of_volume(loop(t_star)) == pytest.approx(relative, rel=0.03)
+
+
+def test_where_diffusion_along_the_bore_is_fast_it_stays_positive():
+    cell = WashedOut(Tube(75e-6, math.sqrt(4 * 4e-12 / (math.pi * 75e-6)), 80e-12 / 60, 2e-9))
+    assert 1 / 12 <= in_plugs_of_volume(cell) < 0.15
+    assert np.all(np.abs(cell.transfer(np.array([0.0, 0.1, 1.0]))) <= 1)

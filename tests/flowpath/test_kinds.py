@@ -174,6 +174,13 @@ def test_a_file_s_bend_serves_tubes_and_loops_and_no_fitting():
     assert [part.elements[0].curvature for part in (parts[0], parts[1], parts[3], parts[4])] == [20, 0, 20, 50]
 
 
+def test_a_loop_has_a_bend_of_its_own():
+    for key in ('bend_radius = "2 cm"', 'coil_diameter = "4 cm"'):
+        element, _, variance = injection_of(f'inject = "20 uL", loop = "20 uL x 0.25 mm", {key}')
+        assert element.curvature == pytest.approx(50)
+        assert variance < injection_of('inject = "20 uL", loop = "20 uL x 0.25 mm"')[2]
+
+
 def test_cells_with_a_path_length_are_straight_bores():
     def cell_of(keys):
         text = FILE.format(part='{ mixer = "1 uL" }').replace('cell = "2.5 uL"', keys)

@@ -166,6 +166,9 @@ WRONG = {
     "a bend of a fitting": (
         path(INJECT, '  { fitting = "1 uL", bend_radius = "3 cm" },\n', DETECTOR), "bend_radius", 6
     ),
+    "a bend of a loop of unknown bore": (
+        path('  { inject = "2 uL", loop = "9 uL", coil_diameter = "4 cm" },\n', COLUMN, DETECTOR), "coil_diameter", 5
+    ),
     "filled without a loop": (path('  { inject = "2 uL", filled = "full" },\n', COLUMN, DETECTOR), "filled", 5),
     "emptied without a loop": (path('  { inject = "2 uL", emptied = "reversed" },\n', COLUMN, DETECTOR), "emptied", 5),
     "a full loop of which a part is injected": (
