@@ -1,10 +1,12 @@
 """Intervals, leaders and the ranking of the unknowns: coverage by simulation, scenarios, exact cases."""
 
 import math
+from dataclasses import replace
 
 import numpy as np
 import pytest
 
+from xcol.answers import likely as likely_module
 from xcol.answers.budget import budget
 from xcol.answers.likely import SURE, Sampler
 from xcol.filters.laminar import run_third_moment, variance_by_modes
@@ -252,3 +254,54 @@ def test_a_cell_of_no_volume_leads_nowhere():
     assert all(math.isfinite(end) for end in (*likely.plates_kept, *likely.variance_extra))
     (cell,) = [share for row, share in likely.leaders if row.contribution == "cell"]
     assert cell == 0
+
+
+def test_a_part_is_named_from_nine_of_ten_draws_on():
+    assert SURE == 0.9
+
+
+def test_the_draws_are_the_same_in_whatever_blocks_they_are_computed(monkeypatch):
+    text = VAGUE.replace('diffusion = "1e-9 m^2/s"', 'molar_mass = "300 g/mol"').replace(
+        'viscosity = "0.9 mPa s"', 'mobile_phase = "water/THF 60:40"'
+    )
+    whole = likely_of(text, draws=3000)
+    monkeypatch.setattr(likely_module, "_BLOCK", 700)
+    assert likely_of(text, draws=3000).variance_extra == pytest.approx(whole.variance_extra, rel=1e-12)
+    assert [share for _, share in likely_of(text, draws=3000).leaders] == [share for _, share in whole.leaders]
+
+
+def test_an_unknown_that_moves_nothing_has_no_share():
+    shares = [
+        influence.share
+        for seed in range(6)
+        for influence in likely_of(VAGUE.replace('"4 uL"', '"1 nL"'), seed=seed).influences
+        if influence.what == "mixing"
+    ]
+    assert np.mean(shares) < 0.004
+
+
+def test_the_viscosity_s_doubt_moves_the_bends():
+    text = VAGUE.replace('viscosity = "0.9 mPa s"', 'mobile_phase = "water"').replace(
+        "0.17 mm", '0.17 mm", coil_diameter = "40 cm'
+    )
+    answer = budget(parse(text, "f"))
+    found = answer.detectors[0]
+    widths = []
+    for uncertainty in (0.01, 4.0):
+        viscosity = replace(answer.instrument.viscosity, uncertainty=uncertainty)
+        moved = replace(answer, instrument=replace(answer.instrument, viscosity=viscosity))
+        widths.append(np.ptp(Sampler(moved).of(found, found.peaks[0]).variance_extra))
+    assert widths[1] > 1.1 * widths[0]
+
+
+def test_a_peak_s_plates_are_those_of_all_columns_at_a_detector_between_them():
+    column = '{ column = "2.1 x 100 mm, 3 um", plates = 12000, total_porosity = 0.6 }'
+    text = VAGUE.replace(column, "{ column = \"2.1 x 50 mm, 3 um\", plates = 7000, total_porosity = 0.6 },\n"
+                         '{ detector = "between" },\n' + column).replace("k = 2", "k = 2, plates = 9000")  # fmt: skip
+    answer = budget(parse(text, "f"))
+    for n, found in enumerate(answer.detectors):
+        (peak,) = found.peaks
+        low, high = likely_of(text, at=n).plates_column
+        assert (low, high) == pytest.approx((peak.plates_column / 1.1, peak.plates_column * 1.1), rel=0.01)
+    loose = text.replace("plates = 12000", 'plates = 12000, bore_tolerance = "20 %"')
+    assert likely_of(loose).plates_column == pytest.approx(likely_of(text).plates_column, rel=0.03)

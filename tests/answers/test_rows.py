@@ -139,7 +139,8 @@ def test_strongly_bent_tubes_may_be_better_joined_than_mixed():
 def test_a_cell_that_is_passed_through_has_both_ends_whichever_is_the_worse():
     for flow in ("1 uL/min", "1 mL/min"):
         text = (
-            f'flow = "{flow}"\nviscosity = "1 cP"\npath = [ {{ inject = "20 nL" }}, {{ detector = "first", cell = "200 nL" }},\n'
+            f'flow = "{flow}"\nviscosity = "1 cP"\npath = [ {{ inject = "20 nL" }},\n'
+            '{ detector = "first", cell = "200 nL" },\n'
             '{ detector = "second" } ]\npeaks = [ { diffusion = "1e-9 m^2/s" } ]\n'
         )
         answer = budget(parse(text, "f"))

@@ -10,6 +10,7 @@ import sys
 
 import pytest
 
+from xcol.answers import likely
 from xcol.cli.app import app
 
 COMMANDS = [command.name for command in app.registered_commands]
@@ -45,6 +46,12 @@ def test_the_same_file_and_seed_give_the_same_text(run, examples):
     assert few != first
     full = run("budget", file, "--full", "--seed", "7").stdout.decode()
     assert "seed 7" in full
+
+
+def test_the_default_draws_and_seed_are_those_of_the_library(run, examples):
+    file = examples / "brewery-narrow.toml"
+    asked = run("budget", file, "--draws", str(likely.DRAWS), "--seed", str(likely.SEED)).stdout
+    assert run("budget", file).stdout == asked
 
 
 def test_without_intervals_nothing_is_likely(run, examples):

@@ -12,8 +12,8 @@ from xcol.filters.curved import HIGHEST_DEAN, bend_strength, bent_variance, dean
 from xcol.filters.laminar import dimensionless_variance
 
 T_STARS = np.array([0.003, 0.01, 0.03, 0.1, 0.3, 1.0, 3.0])
-# De²Sc: g, and Φ at these t*; two independent solutions that agree. From 1e5 on they are good to 0.4 %, at 3e5 to
-# 1 %, at 1e6 to 3 %
+# De²Sc: g, and Φ at these t*; finite volumes with cosine modes and a Galerkin expansion, which agree. From 1e5 on they
+# are good to 0.4 %, at 3e5 to 1 %, at 1e6 to 3 %
 REFERENCE = {
     300: (0.84168, [0.71861, 0.53621, 0.37879, 0.22233, 0.10579, 0.03451, 0.01163], 1e-3),
     1000: (0.48361, [0.71858, 0.53588, 0.37659, 0.20845, 0.07481, 0.02075, 0.00678], 1e-3),

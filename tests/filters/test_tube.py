@@ -24,7 +24,7 @@ def laminar_part(run):
         ([0.05, 0.1, 0.03], [1.0, 0.5, 3.0], 0.0062468, 0.0044054),
     ],
 )
-def test_runs_of_the_model_document(t_stars, units, together, remixed):
+def test_runs_of_the_reference(t_stars, units, together, remixed):
     assert laminar_part(run_of(t_stars, units)) == pytest.approx(together, rel=1e-4)
     apart = sum(laminar_part(run_of([t], [w])) for t, w in zip(t_stars, units, strict=True))
     assert apart == pytest.approx(remixed, rel=1e-4)

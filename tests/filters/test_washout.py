@@ -25,7 +25,7 @@ def in_plugs_of_volume(washed):
     ("t_star", "relative"),
     [(0.02, 0.456), (0.05, 0.303), (0.1, 0.2235), (0.2, 0.1677), (0.5, 0.1219), (1.0, 0.1034), (5.0, 0.0875)],
 )
-def test_full_loops_of_the_model_document(t_star, relative):
+def test_full_loops_of_the_reference(t_star, relative):
     # the table has three to four digits; axial diffusion is negligible in this bore
     assert in_plugs_of_volume(loop(t_star)) == pytest.approx(relative, rel=1e-3, abs=5e-4 if relative > 0.4 else 5e-5)
 
@@ -36,7 +36,7 @@ def test_a_loop_of_20_uL_in_half_a_millimetre_is_five_and_a_half_plugs():
     assert 12 * in_plugs_of_volume(washed) == pytest.approx(5.5, abs=0.1)
 
 
-def test_cells_of_the_model_document():
+def test_cells_of_the_reference():
     # a straight 10 mm bore at 1 mL/min, D = 1e-9 m²/s; and at t* = 2.5e-4
     cell = WashedOut(Tube(10e-3, 1.1e-3, FLOW, DIFFUSION))
     assert in_plugs_of_volume(cell) == pytest.approx(1.284, rel=1e-3)
@@ -85,7 +85,7 @@ def test_a_bent_loop_spreads_less_and_a_faint_bend_hardly():
 
 
 def test_below_the_table_it_goes_on_rising():
-    # finite volumes of a reviewer's own, converged to four digits
+    # finite volumes, converged to four digits
     for t_star, relative in ((1e-5, 10.10), (3e-6, 15.7), (1e-6, 23.2), (1e-7, 52.0)):
         assert in_plugs_of_volume(loop(t_star)) == pytest.approx(relative, rel=0.03)
 

@@ -12,6 +12,7 @@ from xcol.flowpath.bed import Bed
 from xcol.flowpath.elements import Block, Bore, Cell, Electronics, Loop, Mixed, Stream
 from xcol.flowpath.kinds import KINDS, KINDS_LATER
 from xcol.flowpath.reader import parse
+from xcol.flowpath.unknowns import LogBetween
 from xcol.report.topics import TOPICS
 
 FILE = """\
@@ -279,3 +280,46 @@ def test_part_filled_in_words_counts_though_all_of_it_is_injected():
     _, made, variance = injection_of('inject = "20 uL", loop = "20 uL x 0.5 mm", filled = "part", emptied = "same way"')
     assert variance == pytest.approx(400 / 12)
     assert made.delay() == pytest.approx(10e-9 / (0.5e-6 / 60))
+
+
+def test_what_is_put_into_a_column():
+    (bed,) = part_of('{ column = "2.1 x 50 mm, 1.7 um", total_porosity = 0.6 }').elements
+    stream = Stream(0.4e-6 / 60, 1e-9)
+    worst, best = bed.plates_range(stream)
+    (quality,) = (unknown for unknown in bed.unknowns if unknown.what == "plates")
+    middle = quality.put(bed, 0.5).plates_for(stream)
+    assert middle == pytest.approx(math.sqrt(worst * best))
+    keys = 'plates = 9000, bore_tolerance = "2 %", length_tolerance = "1 %"'
+    (sized,) = part_of(f'{{ column = "2.1 x 50 mm, 1.7 um", {keys} , total_porosity = 0.6 }}').elements
+    puts = {unknown.what: unknown.put for unknown in sized.unknowns}
+    assert puts["bore"](sized, 1.1).void_volume == pytest.approx(1.21 * sized.void_volume)
+    assert puts["length"](sized, 1.1).void_volume == pytest.approx(1.1 * sized.void_volume)
+    assert puts["plates"](sized, 1.1).plates == pytest.approx(9900)
+
+
+def test_what_is_put_into_an_injection_a_fitting_and_a_cell():
+    element, _, _ = injection_of('inject = "2 uL", volume_tolerance = "10 %"')
+    puts = {unknown.what: unknown.put for unknown in element.unknowns}
+    assert puts["volume"](element, 1.1).volume == pytest.approx(2.2e-9)
+    (fitting,) = part_of('{ fitting = "0.5 uL" }').elements
+    (mixing,) = (unknown for unknown in fitting.unknowns if unknown.what == "mixing")
+    assert mixing.spread == LogBetween(1 / 12, 1.35)
+    assert mixing.put(fitting, 1.35).tanks == pytest.approx(1 / 1.35)
+
+
+def test_a_bore_near_a_stock_bore_has_its_tolerance(tmp_path):
+    (tmp_path / "mine.toml").write_text(
+        '[[tubing]]\nbore = "0.30 mm"\ntolerance = "3 %"\ntolerance_from = "our calipers"\nmaterials = ["steel"]\n'
+        'source = "notebook"\n',
+        encoding="utf-8",
+    )
+    for bore, relative in (("0.31 mm", 0.03), ("0.36 mm", 0.05)):
+        text = 'catalogs = ["mine.toml"]\n' + FILE.format(part=f'{{ tube = "20 cm x {bore}" }}')
+        (tube,) = parse(text, str(tmp_path / "f")).parts[1].elements
+        (spread,) = (unknown.spread for unknown in tube.unknowns if unknown.what == "bore")
+        assert spread.relative == pytest.approx(relative)
+
+
+def test_a_bore_of_no_length_mixes_nothing():
+    assert Bore(0.0, 0.2e-3, remixed=1.0).remixes == 0
+    assert Bore(0.01, 0.2e-3, remixed=1.0).remixes == 1

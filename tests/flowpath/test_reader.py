@@ -193,6 +193,20 @@ WRONG = {
         path(INJECT, COLUMN, DETECTOR.replace('"0.1 s"', '"0.1 s", filters = [{ rise_time = "1 s" }]')),
         "time_constant", 7,
     ),
+    "filters beside stages": (
+        path(INJECT, COLUMN, '  { detector = "UV", stages = 2, filters = [{ rise_time = "1 s" }] },\n'), "stages", 7
+    ),
+    "a port beside a volume": (
+        path(INJECT, '  { fitting = "1 uL", port = "1/16 in" },\n', COLUMN, DETECTOR), "port", 6
+    ),
+    "the file's bend as wide as a bore": (
+        path(INJECT, '  { tube = "3 cm x 1 mm" },\n', COLUMN, DETECTOR, head=HEAD + 'bend_radius = "1 mm"\n'),
+        "bend_radius", 4,
+    ),
+    "a coil as wide as the loop's bore": (
+        path('  { inject = "9 uL", loop = "9 uL x 1 mm", coil_diameter = "2 mm" },\n', COLUMN, DETECTOR),
+        "coil_diameter", 5,
+    ),
     "a filter of the list without a time": (
         path(INJECT, COLUMN, '  { detector = "UV", filters = [{ filter = "boxcar" }] },\n'), "filters[1].filter", 7
     ),

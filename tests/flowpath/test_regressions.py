@@ -314,3 +314,23 @@ def test_a_measured_total_has_no_range():
     found = answer_of([GOOD[0], COLUMN, bare, GOOD[3]], head=HEAD + 'pump_pressure = "120 bar"\n')
     total = found.pressure.total
     assert total.low == pytest.approx(total.high) == pytest.approx(120e5)
+
+
+def assumed_of(*lines, part='{ inject = "20 uL" }', before=""):
+    parts = ",\n".join(
+        [*([before] if before else []), part, '{ tube = "20 cm x 0.2 mm" }', COLUMN, '{ detector = "MS" }']
+    )
+    text = "\n".join(['flow = "1 mL/min"', 'diffusion = "1e-9 m^2/s"', *lines]) + f"\npath = [\n{parts}\n]\n"
+    return " ".join(assumption.text for assumption in parse(text, "f").assumed)
+
+
+def test_what_is_assumed_of_injection_and_tubes_is_what_their_ranges_are():
+    viscous = 'viscosity = "1 cP"'
+    assert "goes to a bend" in assumed_of(viscous)
+    assert "goes to a bend" not in assumed_of()  # no viscosity, no bends
+    assert "bent like that" in assumed_of(viscous, 'bend_radius = "4 cm"')
+    assert "bent like that" not in assumed_of('bend_radius = "4 cm"')
+    assert "goes to V²/4" in assumed_of(viscous)
+    known = '{ inject = "20 uL", loop = "50 uL", emptied = "reversed", volume_tolerance = "3 %" }'
+    assert "goes to V²/4" not in assumed_of(viscous, part=known)
+    assert "goes to V²/4" in assumed_of(viscous, before='{ tube = "9 cm x 0.2 mm", name = "from the pump" }')

@@ -9,7 +9,7 @@ import numpy as np
 
 if TYPE_CHECKING:
     from xcol.answers.spread import Values
-    from xcol.flowpath.unknowns import Spread
+    from xcol.flowpath.unknowns import Distribution
 
 _TO_UNIT = 2.0**-32
 
@@ -24,7 +24,7 @@ class Draws:
     def __init__(self, count: int, seed: int) -> None:
         self.count, self.seed = count, seed
 
-    def of(self, key: str, spread: Spread) -> Values:
+    def of(self, key: str, spread: Distribution) -> Values:
         """Return the values of the unknown of this name, shape (count,)."""
         stream = random.Random(f"{self.seed}/{key}")
 

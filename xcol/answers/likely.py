@@ -196,14 +196,15 @@ class Sampler:
 
         spread = Spread(chain, stream, (count,), elements)
         rows = list(spread.rows().values())
-        gains = [spread.gain(place) for place in spread.rows()]
-        leads = np.stack(gains).argmax(axis=0) if gains else np.zeros(0, dtype=np.int64)
+        leads = np.stack([spread.gain(place) for place in spread.rows()]).argmax(axis=0)
         beds = [(link.part, element) for link, element in zip(chain, elements, strict=True)]
         time, column = _columns(beds, stream, peak)
         if peak.plates is not None:
+            # the plates are those of all columns together, whatever each of them has
             last = links(self._instrument, self._instrument.detectors[-1])
             whole, variance = _columns([(link.part, link.element) for link in last], stream, peak)
-            column = column * whole**2 / variance / (peak.plates * factors[PLATES_UNKNOWN])
+            entered, column = _columns([(link.part, link.element) for link in chain], stream, peak)
+            column = column * (time / entered) ** 2 * whole**2 / variance / (peak.plates * factors[PLATES_UNKNOWN])
         if peak.retention is not None and at.columns:  # what was recorded holds, whatever the void volume is
             entered = at.retention - at.delay
             column, time = column * (entered / time) ** 2, entered
@@ -228,7 +229,7 @@ def _interval(values: Real) -> Interval:
 
 
 def _leaders(rows: tuple[Row, ...], shares: Values) -> tuple[tuple[Row, float], ...]:
-    return tuple(sorted(zip(rows, map(float, shares), strict=True), key=lambda pair: -pair[1])) if rows else ()
+    return tuple(sorted(zip(rows, map(float, shares), strict=True), key=lambda pair: -pair[1]))
 
 
 def _influences(drawn: list[_Drawn], answers: Values) -> tuple[Influence, ...]:

@@ -12,7 +12,7 @@ from xcol.answers.spread import LinkSpread, Spread, at_end
 from xcol.filters.curved import HIGHEST_DEAN
 from xcol.filters.washout import WashedOut
 from xcol.flowpath.elements import Bore, InBore, Loop
-from xcol.flowpath.unknowns import REMIXING
+from xcol.flowpath.unknowns import BEND, REMIXING
 from xcol.units import significant
 
 if TYPE_CHECKING:
@@ -141,11 +141,13 @@ def _end(variances: Values, *, lowest: bool) -> int:
 def _words(link: Link, end: _End | None, dean: Values | None) -> str:
     """Return in words what a link is like at an end; None: as printed."""
     element = link.element
-    if isinstance(element, InBore) and link.part.viscosity is None:
-        return "straight: without a viscosity bends are not computed"
+    unknowns = [unknown for unknown in element.unknowns if unknown.ends is not None]
     words = []
+    if isinstance(element, InBore) and link.part.viscosity is None:
+        unknowns = [unknown for unknown in unknowns if unknown.what != BEND]
+        words.append("straight: without a viscosity bends are not computed")
     if end is not None:
-        words = [u.ends.at_worst if end.worst else u.ends.at_best for u in element.unknowns if u.ends is not None]
+        words += [u.ends.at_worst if end.worst else u.ends.at_best for u in unknowns if u.ends is not None]
     highest = float(dean.max(initial=0.0)) if dean is not None else 0.0
     if highest > HIGHEST_DEAN and not (end and end.worst):
         words.append(f"De {significant(highest)} taken as {HIGHEST_DEAN:g}, an upper estimate")

@@ -44,6 +44,14 @@ class Tube:
         return math.pi * self.diffusion * self.length / self.flow
 
     @property
+    def straight_t_star(self) -> Real:
+        """The t* of the straight tube that has its variance over t̄² [-]; 1 where it has no length."""
+        t_star = np.where(np.asarray(self.t_star) > 0, self.t_star, 1.0)
+        if np.ndim(self.strength) == 0 and self.strength == 0:
+            return t_star
+        return t_star_of(bent_variance(t_star, self.strength) / np.square(t_star))
+
+    @property
     def time_unit(self) -> Real:
         """a²/D [s], the time in which a molecule diffuses across the bore."""
         return (self.bore / 2) ** 2 / self.diffusion
@@ -226,10 +234,9 @@ class TubeRun:
             return [tube.t_star for tube in self.tubes], [tube.time_unit for tube in self.tubes], 1.0
         alike = []
         for tube in _merged(self.tubes):
-            t_star = np.where(tube.t_star > 0, tube.t_star, 1.0)
-            same = t_star_of(bent_variance(t_star, tube.strength) / np.square(t_star)) / t_star
-            # a longer tube at the same delay: D greater, and the bore with it
-            alike.append(Tube(tube.length, tube.bore, tube.flow, tube.diffusion * same))
+            t_star = np.where(np.asarray(tube.t_star) > 0, tube.t_star, 1.0)
+            # a greater D at the same delay
+            alike.append(Tube(tube.length, tube.bore, tube.flow, tube.diffusion * tube.straight_t_star / t_star))
         own = self.variance() - sum(tube.axial_variance() for tube in self.tubes)
         theirs = sum(TubeRun(tuple(alike)).shares()) - sum(tube.axial_variance() for tube in alike)
         factor = np.sqrt(own / np.where(theirs > 0, theirs, 1.0))

@@ -7,9 +7,8 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
-from xcol.filters.curved import bent_variance
 from xcol.filters.interface import outer
-from xcol.filters.laminar import dimensionless_third_moment, fourth_moment, relative_variance, t_star_of
+from xcol.filters.laminar import dimensionless_third_moment, fourth_moment, relative_variance
 from xcol.filters.tube import TubeRun
 
 if TYPE_CHECKING:
@@ -48,7 +47,7 @@ class WashedOut:
     def third_moment(self) -> Real:
         """Third central moment [s³]."""
         spread, skew = self._moments()
-        t_star = self._t_star()
+        t_star = self.tube.straight_t_star
         fourth = fourth_moment(t_star) / t_star**4
         first, second = (1 + spread) / 2, (1 + 3 * spread + skew) / 3
         third = (1 + 6 * spread + 4 * skew + fourth) / 4
@@ -62,14 +61,7 @@ class WashedOut:
         result: Complex = np.where(still, 1.0 + 0.0j, h)
         return result
 
-    def _t_star(self) -> Real:
-        """Return t* of the straight tube of the same variance over t̄² (1 where there is no length)."""
-        t_star = np.where(np.asarray(self.tube.t_star) > 0, self.tube.t_star, 1.0)
-        if np.ndim(self.tube.strength) == 0 and self.tube.strength == 0:
-            return t_star
-        return t_star_of(bent_variance(t_star, self.tube.strength) / np.square(t_star))
-
     def _moments(self) -> tuple[Real, Real]:
         """Return second and third central moment of the tube over t̄² and t̄³ [-]."""
-        t_star = self._t_star()
+        t_star = self.tube.straight_t_star
         return relative_variance(t_star), dimensionless_third_moment(t_star) / t_star**3

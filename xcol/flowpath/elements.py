@@ -233,7 +233,7 @@ class Mixed(MixingVolume):
     @property
     def remixes(self) -> Real:
         """Whether it mixes the stream across the bore (and has any volume to do so)."""
-        return self.remixed * MixingVolume.remixes.fget(self)  # type: ignore[attr-defined,no-any-return]
+        return self.remixed * super().remixes
 
     def filter(self, stream: Stream, *, read_here: bool) -> Filter:
         """Return the tanks."""

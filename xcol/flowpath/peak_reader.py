@@ -8,6 +8,7 @@ from xcol.flowpath import slips
 from xcol.flowpath.chain import dead_time, delays, transit
 from xcol.flowpath.file_keys import PEAK_KEYS
 from xcol.flowpath.findings import Draft, Findings
+from xcol.flowpath.kinds.tolerances import say_of_plates
 from xcol.flowpath.locate import KeyLines
 from xcol.flowpath.model import Instrument, Peak
 from xcol.flowpath.part_reader import read_keys, refuse_unknown
@@ -155,6 +156,8 @@ def _peak(draft: Draft, instrument: Instrument, estimate: Estimate) -> Peak | No
             return None
     if k is not None and k > 100:
         draft.warn(f"k = {k:.4g} is unusual: is the unit of its retention, or the void volume, meant?")
+    if plates is not None:
+        say_of_plates(draft)
     name = draft.name or (f"k = {k:.3g}" if k is not None else f"peak {draft.position}")
     return Peak(name, k, estimate, draft.place(), plates, retention)
 

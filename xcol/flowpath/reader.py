@@ -15,7 +15,7 @@ from xcol.flowpath.conditions import Conditions, check_range, density_of, read_c
 from xcol.flowpath.elements import Bore, Cell, Injected, Loop
 from xcol.flowpath.file_keys import FILE_KEYS, curvature_of
 from xcol.flowpath.findings import Draft, Findings
-from xcol.flowpath.kinds.tolerances import bend
+from xcol.flowpath.kinds.tolerances import bend, check_bends
 from xcol.flowpath.locate import KeyLines, key_lines
 from xcol.flowpath.model import Assumption, Instrument, Part, Peak
 from xcol.flowpath.part_reader import read_keys, read_part, refuse_unknown
@@ -78,10 +78,11 @@ def parse(text: str, file: str, catalogs: Iterable[str] = ()) -> Instrument:
     findings.raise_faults()
     if conditions.phase is not None:
         slips.of_materials(parts, conditions.phase, top.catalogs, findings)
-    curvature = curvature_of(top)
-    findings.raise_faults()
-    if curvature is not None:
+    if (curvature := curvature_of(top)) is not None:
         parts = [_bent(part, curvature) for part in parts]
+        key = "bend_radius" if "bend_radius" in top.values else "coil_diameter"
+        check_bends(top, key, [element for part in parts for element in part.elements])
+    findings.raise_faults()
     instrument = _instrument(top, conditions, [conditions.applied_to(part) for part in parts])
     return _with_peaks(instrument, drafts, estimates, top)
 
@@ -237,22 +238,25 @@ def _ends_of_ranges(instrument: Instrument) -> list[Assumption]:
     elements = [element for part in instrument.parts for element in part.elements]
     tubes = [element for element in elements if isinstance(element, Bore | Loop)]
     unknowns = [unknown for tube in tubes for unknown in tube.unknowns]
-    if any(unknown.what == BEND and unknown.spread is not None for unknown in unknowns):
+    if tubes and instrument.viscosity is None:
+        found.append(Assumption("tubes straight", "tubes are straight: without a viscosity bends are not computed"))
+    elif any(unknown.what == BEND and unknown.spread is not None for unknown in unknowns):
         text = (
             "tubes without bend_radius are printed as straight, the worst case; their range goes to a bend of 3 cm all "
             "along, and the draws take any curvature between"
         )
         found.append(Assumption("tubes straight", text))
-    if any(tube.curvature for tube in tubes):
+    if instrument.viscosity is not None and any(tube.curvature for tube in tubes):
         text = (
             "tubes with bend_radius or coil_diameter are bent like that all along, as theory has it; their range goes "
             "to straight: measured coils have 20 to 40 % less (J. Chromatogr. A 1659 (2021) 462578, abstract)"
         )
         found.append(Assumption("tubes bent all along", text))
-    injected = elements[0] if elements else None
+    injected = instrument.parts[instrument.injection - 1].elements[0]
     if isinstance(injected, Injected):
         text = "the injection is printed as a plug, the best case; its range goes to V²/4"
-        found.append(Assumption("injection a plug", text if injected.unknowns else "the injection is a plug"))
+        has_range = any(unknown.ends for unknown in injected.unknowns)
+        found.append(Assumption("injection a plug", text if has_range else "the injection is a plug"))
     elif isinstance(injected, Loop) and injected.injected is None:
         found.append(Assumption("loop washed out", "the loop is full, and is washed out through its own bore"))
     elif isinstance(injected, Loop):

@@ -288,10 +288,11 @@ def _detector(draft: Draft) -> None:
     _odd_volume(draft, cell, 1e-7)
     if cell is not None and not {"time_constant", "rise_time", "response", "filters"} & set(draft.written):
         draft.warn("no filter setting (time_constant, rise_time or response): its filter is not counted")
-    for key in ("time_constant", "rise_time", "response", "dwell"):
-        seconds = draft.number(key)
-        if seconds is not None and seconds > 5:
-            draft.warn(f"{key} of {seconds:g} s is unusual: is the unit meant?")
+    for one in (draft, *draft.lists.get("filters", ())):
+        for key in ("time_constant", "rise_time", "response", "dwell"):
+            seconds = one.number(key)
+            if seconds is not None and seconds > 5:
+                one.warn(f"{key} of {seconds:g} s is unusual: is the unit meant?")
 
 
 def _odd_volume(draft: Draft, volume: float | None, most: float) -> None:

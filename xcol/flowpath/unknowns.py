@@ -23,7 +23,7 @@ REMIXING = "remixing"  # and whether a fitting mixes the stream of the tubes bes
 _NINETY = 1.6448536269514722  # 90 % of a normal distribution lie within so many σ of its middle
 
 
-class Spread(Protocol):
+class Distribution(Protocol):
     """How the values of an unknown are distributed."""
 
     def draw(self, uniform: Uniform01) -> Values:
@@ -99,11 +99,12 @@ class Unknown:
 
     ``put`` returns the element with a value, or an array of values, of this unknown. ``spread`` is None where it was
     entered, and is not drawn; ``ends`` are those of the range that stands beside the element's variance (None: a
-    tolerance, which only the draws have); ``settle`` says what would settle it, with {name} for the part's name.
+    tolerance, which only the draws have); ``settle`` says what would settle it, with {name} for the part's name and
+    {run} for a union run.
     """
 
     what: str
-    spread: Spread | None
+    spread: Distribution | None
     put: Callable[[Any, Real], Any]
     ends: Ends | None = None
     settle: str = ""

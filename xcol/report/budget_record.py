@@ -159,7 +159,8 @@ def _intervals(answer: Budget, likely: Likely | None) -> dict[str, Any]:
                 "what": one.what,
                 **_whose(one.part),
                 "share_of_scatter": one.share,
-                "settle": settle_in_words(one) or None,
+                "settle": settle_in_words(one, has_column=likely is not None and likely.plates_kept is not None)
+                or None,
             }
             for one in (likely.influences if likely else ())
         ],

@@ -104,7 +104,12 @@ def _further(answer: Budget, peak: PeakBudget, likely: Likely | None) -> list[tu
     found = []
     if likely is not None:
         what = "plates kept" if likely.plates_kept is not None else "variance added"
-        found.append((f"What the scatter of the {what} comes from", unknowns_grid(likely)))
+        found.append(
+            (
+                f"What the scatter of the {what} comes from",
+                unknowns_grid(likely, has_column=peak.plates_column is not None),
+            )
+        )
     found.append(
         ("Tubes by themselves, µL²; De, De²Sc and bent at the bend entered, or at 3 cm", tubes_grid(answer, peak))
     )
@@ -139,13 +144,14 @@ def verdict(answer: Budget, at: DetectorBudget, peak: PeakBudget, sampler: Sampl
     """Return the answer in a few sentences: plates recorded of the column's, how sure that is, what to change."""
     extra = answer.in_uL2(peak.variance_extra)
     likely = sampler.of(at, peak) if sampler is not None else None
-    added = _likely(figures(_in_uL2(answer, likely.variance_extra))) if likely else ""
+    interval = figures(_in_uL2(answer, likely.variance_extra)) if likely else ""
+    added = _likely(interval) if interval else ""
     on_parts = verdict_on_parts(likely, peak, sampler.draws.count) if likely and sampler else []
     if peak.plates_column is None:
         sigma = math.sqrt(extra)
         return [
             f"Without a column, {_the(at)} records a band of σ = {three(sigma)} µL "
-            f"({three(extra)} µL²{added.replace(' (', ', ').removesuffix(')')}) or {three(peak.sigma)} s. "
+            f"({three(extra)} µL²{f', likely {interval}' if interval else ''}) or {three(peak.sigma)} s. "
             "Compare moments: its width at half height says little.",
             *on_parts,
         ]

@@ -62,14 +62,14 @@ def tubes_grid(answer: Budget, peak: PeakBudget) -> Grid:
     )
 
 
-def unknowns_grid(likely: Likely) -> Grid:
+def unknowns_grid(likely: Likely, *, has_column: bool) -> Grid:
     """Return the unknowns that move the answer most, each with what would settle it."""
     shown = [one for one in likely.influences if one.share >= _LEAST_SHARE][:_MOST_UNKNOWNS]
     return _grid(
         [
             ("unknown", False, [unknown_in_words(one) for one in shown]),
             ("share", True, [percent(one.share) for one in shown]),
-            ("what settles it", False, [settle_in_words(one) for one in shown]),
+            ("what settles it", False, [settle_in_words(one, has_column=has_column) for one in shown]),
         ]
     )
 

@@ -51,7 +51,8 @@ def beyond(printed: float, interval: tuple[float, float], peak: PeakBudget) -> s
     if low <= printed <= high:
         return ""
     if printed > high:
-        return "printed at its best: plugs"
+        plugs = any(row.contribution in ("injection", "cell") and row.variance < row.high for row in peak.rows)
+        return "plugs printed, the best" if plugs else "printed at its best"
     straight = any(row.tube is not None and row.tube.strength == 0 and row.low < row.variance for row in peak.rows)
     return "tubes printed straight, the worst" if straight else "printed at its worst"
 
@@ -96,9 +97,8 @@ def what_settles(likely: Likely, rows: list[Row], *, has_column: bool) -> list[s
         if influence.part is None or influence.part.position not in parts or influence.share < _SETTLES:
             continue
         if influence.settle and len(found) < 2:
-            found[settle_in_words(influence)] = None
-    # without a column the path is the union run itself
-    return [text if has_column else text.replace("a union run", "this path's variance, measured") for text in found]
+            found[settle_in_words(influence, has_column=has_column)] = None
+    return list(found)
 
 
 def interval_line(likely: Likely, peak: PeakBudget, answer: Budget, draws: int, seed: int) -> str:
@@ -174,6 +174,8 @@ def unknown_in_words(influence: Influence) -> str:
     return f"{influence.what} of {name_of(part)}{cell}"
 
 
-def settle_in_words(influence: Influence) -> str:
-    """Return what would settle an unknown, with the name of its part."""
-    return influence.settle.format(name=short_name(influence.part) if influence.part is not None else "")
+def settle_in_words(influence: Influence, *, has_column: bool) -> str:
+    """Return what would settle an unknown, with its part's name; a path without a column is the union run itself."""
+    name = short_name(influence.part) if influence.part is not None else ""
+    run = "a union run" if has_column else "this path's variance, measured"
+    return influence.settle.format(name=name, run=run)

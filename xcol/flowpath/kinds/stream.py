@@ -23,6 +23,7 @@ from xcol.flowpath.kinds.table import (
 from xcol.flowpath.kinds.tolerances import (
     bend,
     bore_keeping_volume,
+    check_bends,
     check_tolerances,
     injection_form,
     mixing_of_volume,
@@ -59,19 +60,21 @@ def _inject(draft: Draft) -> Elements:
         return (Injected(volume, unknowns=(*form, *sizes)),)
     length = loop / (math.pi / 4 * bore**2)
     curvature, bends = bend(curvature_of(draft))
+    if in_part and emptied == REVERSED:  # its bore does not matter
+        return (Loop(length, bore, volume, 0.0, curvature, tolerance_of(draft, "volume", scaling("injected"))),)
     bores = tolerance_of(draft, "bore", bore_keeping_volume)
     if in_part:
         sizes = tolerance_of(draft, "volume", scaling("injected"))
         rest = f"{write(loop - volume, 'uL', VOLUME)} of the loop"
         ways = () if emptied else (way_of_emptying(rest),)
-        if emptied == REVERSED:
-            bends = bores = ()
         same_way = float(emptied == SAME_WAY)
         return (Loop(length, bore, volume, same_way, curvature, (*ways, *bends, *bores, *sizes)),)
     if emptied:
         draft.assume("full loop", "which way a full loop is emptied makes no difference")
     sizes = tolerance_of(draft, "volume", scaling("length"))
-    return (Loop(length, bore, None, 0.0, curvature, (*bends, *bores, *sizes)),)
+    full = Loop(length, bore, None, 0.0, curvature, (*bends, *bores, *sizes))
+    check_bends(draft, _bend_key(draft), (full,))
+    return (full,)
 
 
 SAME_WAY, REVERSED = "same way", "reversed"
@@ -125,10 +128,13 @@ def _tube(draft: Draft) -> Elements:
     else:
         check_tolerances(draft, "bore", "length")
         sizes = _bore_and_length(draft)
-    if curvature and 2 * bore * curvature > 1:
-        key = "bend_radius" if "bend_radius" in draft.values else "coil_diameter"
-        draft.fault(key, f"a bend much wider than the bore, {write(bore, 'mm', LENGTH)}", "check its unit")
-    return (Bore(length, bore, 0.0, curvature, (*bends, *sizes)),)
+    tube = Bore(length, bore, 0.0, curvature, (*bends, *sizes))
+    check_bends(draft, _bend_key(draft), (tube,))
+    return (tube,)
+
+
+def _bend_key(draft: Draft) -> str:
+    return "bend_radius" if "bend_radius" in draft.values else "coil_diameter"
 
 
 def _bore_and_length(draft: Draft) -> tuple[Unknown, ...]:
@@ -174,6 +180,8 @@ def _fitting(draft: Draft) -> Elements:
             "remix", "bore and length with it: a volume or a gap mixes the stream", "bore and length, or no remix"
         )
     volume = draft.number("volume")
+    if volume is not None and "port" in draft.values:
+        draft.fault("port", "gap with it: a volume needs no port", "leave port out")
     if volume is None:
         port = draft.number("port")
         if port is None:

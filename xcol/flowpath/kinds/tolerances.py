@@ -2,12 +2,12 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
+from collections.abc import Callable, Iterable
 from dataclasses import replace
 from typing import TYPE_CHECKING, Any
 
 from xcol.catalog_kinds import TUBING
-from xcol.flowpath.elements import PLUG
+from xcol.flowpath.elements import PLUG, Bore, Loop
 from xcol.flowpath.unknowns import BEND, REMIXING, Between, Ends, Factor, LogBetween, OneOf, Unknown, scaling, setting
 from xcol.units import LENGTH, write
 
@@ -40,10 +40,10 @@ def tolerance_of(draft: Draft, size: str, put: Callable[[Any, Real], Any]) -> tu
     relative = draft.number(f"{size}_tolerance")
     if relative is None and size == "bore":
         relative, whose = _of_stock(draft)
-        draft.findings.assume("tolerances", f"bores ±{100 * relative:g} % ({whose}), for the ranges only")
+        draft.findings.assume("tolerances", f"bores ±{100 * relative:g} % ({whose}), for the intervals only")
     elif relative is None and size == "length":
         relative = _LENGTH
-        draft.findings.assume("tolerances", f"lengths of tubes ±{100 * relative:g} % (assumed), for the ranges only")
+        draft.findings.assume("tolerances", f"lengths of tubes ±{100 * relative:g} % (assumed), for the intervals only")
     if not relative:
         return ()
     settle = f"{size} of {{name}}, measured"
@@ -80,6 +80,13 @@ def bend(curvature: float | None) -> tuple[float, tuple[Unknown, ...]]:
     return 0.0, (Unknown(BEND, Between(0.0, tightest), setting("curvature"), ends, settle),)
 
 
+def check_bends(draft: Draft, key: str, elements: Iterable[object]) -> None:
+    """Report a bend that is no wider than the bore of one of the tubes and loops that it serves."""
+    bores = [float(one.bore) for one in elements if isinstance(one, Bore | Loop) and 2 * one.bore * one.curvature > 1]
+    if bores:
+        draft.fault(key, f"a bend much wider than the bore, {write(max(bores), 'mm', LENGTH)}", "check its unit")
+
+
 def injection_form() -> Unknown:
     """Return how an injection enters of which the loop is not described."""
     ends = Ends(PLUG, _WORST_INJECTION, "a plug", "smeared to V²/4 (assumed)")
@@ -100,26 +107,31 @@ def mixing_of_volume() -> Unknown:
         return replace(element, tanks=1 / relative)
 
     ends = Ends(PLUG, _WORST_FITTING, "passed as a plug", "as a measured valve passage, 1.35 V²")
-    return Unknown("mixing", LogBetween(PLUG, _WORST_FITTING), put, ends, "a union run with {name}, and without it")
+    return Unknown("mixing", LogBetween(PLUG, _WORST_FITTING), put, ends, "{run} with {name}, and without it")
 
 
 def remixing() -> Unknown:
     """Return whether a fitting mixes the stream of the tubes beside it."""
     # it has no ends of its own: what it is worth shows in the tubes beside it
-    return Unknown(REMIXING, OneOf((0.0, 1.0)), setting("remixed"), settle="a union run with {name}, and without it")
+    return Unknown(REMIXING, OneOf((0.0, 1.0)), setting("remixed"), settle="{run} with {name}, and without it")
 
 
 def mixing_of_cell(length: float, assumed: bool) -> Unknown:
     """Return how a cell mixes, between a plug and a straight bore of this ``length`` [m]."""
     shown = f"a straight bore of {write(length, 'mm', LENGTH)}{' (assumed)' if assumed else ''}"
     ends = Ends(0.0, 1.0, "a plug", f"as {shown}")
-    settle = "a union run (cell's mixing)"
+    settle = "{run} (cell's mixing)"
     return Unknown("mixing", Between(0.0, 1.0), setting("likeness"), ends, settle)
+
+
+def say_of_plates(draft: Draft) -> None:
+    """List what is assumed of plates that were entered, of a column or for a peak."""
+    draft.findings.assume("tolerances", f"plates ±{100 * PLATES:g} % (assumed), for the intervals only")
 
 
 def plates_of_column(draft: Draft) -> Unknown:
     """Return how far entered plates are off."""
-    draft.findings.assume("tolerances", f"plates ±{100 * PLATES:g} % (assumed), for the ranges only")
+    say_of_plates(draft)
     return Unknown("plates", Factor(PLATES), scaling("plates"), settle="N measured with your analyte at this flow")
 
 

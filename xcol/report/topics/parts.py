@@ -155,9 +155,9 @@ PARTS = (
         "slow in the next, and their delays are correlated: a run of straight tubes spreads more than the sum "
         "of its tubes. Cutting a tube in two changes nothing. A row shows the tube's own variance and "
         "half of what it shares; N if gone is computed again without the tube, the run closing up. A "
-        "fitting, mixer, cell or column between straight tubes mixes the stream anew, which lowers the variance: taking "
-        "such a fitting out can cost plates. Behind a strong bend fast and slow have changed places: such tubes share "
-        "next to nothing, or less than nothing.",
+        "fitting, mixer, cell or column between straight tubes mixes the stream anew, which lowers the variance: "
+        "taking such a fitting out can cost plates. Behind a strong bend fast and slow have changed places: such tubes "
+        "share next to nothing, or less than nothing.",
         (
             "σ² = Σ w_i²·V(t_i) + Σ_{i<j} w_i·w_j·[V(t_i+d+t_j) − V(t_i+d) − V(d+t_j) + V(d)] [s²]",
             "V(t) = t²·Φ(t),  w = a²/D,  t the tubes' t*,  d the t* between i and j",
