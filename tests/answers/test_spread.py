@@ -88,6 +88,8 @@ def test_the_gain_is_what_goes_with_a_link(parts):
     both = spread_of(made, np.array([1e-9, 1e-9]), drawn)
     for place in both.rows():
         assert both.gain(place) == pytest.approx(both.total() - both.total(place), rel=1e-9, abs=1e-12)
+    exact = np.stack([both.gain(place) for place in both.rows()])
+    assert np.array_equal(np.stack(both.gains()).argmax(axis=0), exact.argmax(axis=0))
 
 
 def test_beside_many_tubes_the_row_stands_for_the_gain():

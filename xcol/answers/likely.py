@@ -196,7 +196,7 @@ class Sampler:
 
         spread = Spread(chain, stream, (count,), elements)
         rows = list(spread.rows().values())
-        leads = np.stack([spread.gain(place) for place in spread.rows()]).argmax(axis=0)
+        leads = np.stack(spread.gains()).argmax(axis=0)
         beds = [(link.part, element) for link, element in zip(chain, elements, strict=True)]
         time, column = _columns(beds, stream, peak)
         if peak.plates is not None:

@@ -30,6 +30,7 @@ if TYPE_CHECKING:
 
 
 _CLOSED_UP = 8
+_OFTEN = 0.01  # share of the draws
 _ALONE = Segment(())
 
 
@@ -67,6 +68,7 @@ class Spread:
         self._stream = stream
         self._filters: dict[int, Filter] = {}
         self._known: dict[Segment, list[LinkSpread]] = {}
+        self._own: dict[int, Real] = {}  # what tubes add by themselves: the same in any run
         self.zero = np.zeros(shape)
 
     def rows(self) -> dict[int, LinkSpread]:
@@ -102,6 +104,22 @@ class Spread:
         before = row.variance + sum(self.rows()[other].variance for other in tubes)
         closed = (spread for segment in self._segments(beside) for spread in self._spreads(segment) if spread.tube)
         return self.zero + before - sum(spread.variance for spread in closed)
+
+    def gains(self) -> list[Values]:
+        """Return the gain of every link, in the order of ``rows``, exact for those that are often the largest.
+
+        What mixes the stream gains no more than its own row, since tubes that close up spread more: where that row is
+        the largest in next to no draw, it stands for the gain.
+        """
+        rows = self.rows()
+        tubes = {place for place in rows if isinstance(self._elements[place], Bore)}
+        found = {place: self.gain(place) if place in tubes else row.variance for place, row in rows.items()}
+        leads = np.stack(list(found.values())).argmax(axis=0)
+        often = np.bincount(leads.ravel(), minlength=len(found)) > _OFTEN * leads.size
+        for place, is_often in zip(rows, often, strict=True):
+            if is_often and place not in tubes:
+                found[place] = self.gain(place)
+        return list(found.values())
 
     def _beside(self, place: int) -> list[int]:
         """Return the places around one, up to what is certain to mix the stream anew on either side."""
@@ -147,7 +165,9 @@ class Spread:
         if len(tubes) < len(filters) or not isinstance(self._elements[segment.places[0]], InBore):
             return [LinkSpread(self.zero + one.variance(), self.zero) for one in filters]
         run: Real = sum(tube.t_star for tube in tubes)
-        own, half = shares(tubes, segment.joined)
+        known = [self._own[place] for place in segment.places if place in self._own]
+        own, half = shares(tubes, segment.joined, known if len(known) == len(tubes) else None)
+        self._own |= dict(zip(segment.places, own, strict=True))
         return [
             LinkSpread(self.zero + one, self.zero + other, tube, self.zero + run, segment)
             for one, other, tube in zip(own, half, tubes, strict=True)

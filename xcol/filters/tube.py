@@ -92,10 +92,12 @@ class Tube:
         return TubeRun((self,)).transfer(omega)
 
 
-def shares(tubes: Sequence[Tube], joined: Sequence[Real]) -> tuple[list[Real], list[Real]]:
+def shares(
+    tubes: Sequence[Tube], joined: Sequence[Real], own: Sequence[Real] | None = None
+) -> tuple[list[Real], list[Real]]:
     """Each tube's part [s²] of the variance of a row of tubes: its own, and half of what it shares with others.
 
-    Returns the former and the latter, one entry a tube. ``joined`` has one entry between two tubes: 1 where the
+    Returns the former and the latter, one entry a tube; ``own`` is the former where it is known. ``joined`` has one entry between two tubes: 1 where the
     layers run on, 0 where the stream is mixed anew. Laminar flow keeps its layers through a change of bore, so the
     delays of joined tubes are correlated. With V(t) = t²Φ(t), w_i = a_i²/D and d the t* that lies between i and j
 
@@ -104,24 +106,25 @@ def shares(tubes: Sequence[Tube], joined: Sequence[Real]) -> tuple[list[Real], l
     so that a tube cut in two is the same as the whole one. Exact for straight tubes; where bends differ, what two
     tubes share is taken with the stronger bend of the two.
     """
-    if not tubes:
-        return [], []
+    if len(tubes) < 2:
+        return list(own or [tube.variance() for tube in tubes]), [0.0] * len(tubes)
     quantities = [(tube.t_star, tube.time_unit, tube.strength) for tube in tubes]
     shape = np.broadcast_shapes(*(np.shape(value) for row in quantities for value in row), *map(np.shape, joined))
     t_stars, units, strengths = (
         np.stack([np.broadcast_to(value, shape) for value in column]) for column in zip(*quantities, strict=True)
     )
-    own = units**2 * bent_variance(t_stars, strengths if np.any(strengths) else 0.0)
+    if own is None:
+        laminar = units**2 * bent_variance(t_stars, strengths if np.any(strengths) else 0.0)
+        own = [one + tube.axial_variance() for one, tube in zip(laminar, tubes, strict=True)]
     edges = np.concatenate([np.zeros((1, *shape)), np.cumsum(t_stars, axis=0)])
     pairs = [(i, j, weight) for i in range(len(tubes)) for j, weight in _joined_to(i, joined)]
     if not pairs:
-        half = np.zeros_like(own)
+        half = np.zeros_like(units)
     elif (strengths == strengths[0]).all() and edges.size * len(edges) <= _TOGETHER:
         half = _shared_alike(edges, units, strengths[0], pairs)
     else:
         half = _shared_by_pairs(edges, units, strengths, pairs)
-    axial = (tube.axial_variance() for tube in tubes)
-    return [one + other for one, other in zip(own, axial, strict=True)], list(half)
+    return list(own), list(half)
 
 
 _TOGETHER = 2**18  # numbers that are held at once
@@ -159,12 +162,12 @@ def _shared_by_pairs(edges: Array, units: Array, strengths: Array, pairs: list[t
         batch = pairs[start : start + size]
         first, second = (np.array(places) for places in list(zip(*batch, strict=True))[:2])
         bends = np.maximum(strengths[first], strengths[second])
-        near, far = edges[first], edges[second + 1]
-        inner = [edges[first + 1], edges[second]]
-        v = bent_variance(
-            np.maximum(np.stack([far - near, inner[1] - near, far - inner[0], inner[1] - inner[0]]), 0.0), bends
-        )
-        shared = units[first] * units[second] * (v[0] - v[1] - v[2] + v[3]) / 2  # type: ignore[index]
+        near, far, left, right = edges[first], edges[second + 1], edges[first + 1], edges[second]
+        stretches = [far - near, right - near, far - left]
+        if (second - first > 1).any():  # something lies between
+            stretches.append(right - left)
+        v = np.asarray(bent_variance(np.maximum(np.stack(stretches), 0.0), bends))
+        shared = units[first] * units[second] * (v[0] - v[1] - v[2] + v[3:].sum(axis=0)) / 2
         for row, (i, j, weight) in enumerate(batch):
             half[i] += weight * shared[row]
             half[j] += weight * shared[row]
