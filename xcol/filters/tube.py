@@ -97,9 +97,10 @@ def shares(
 ) -> tuple[list[Real], list[Real]]:
     """Each tube's part [s²] of the variance of a row of tubes: its own, and half of what it shares with others.
 
-    Returns the former and the latter, one entry a tube; ``own`` is the former where it is known. ``joined`` has one entry between two tubes: 1 where the
-    layers run on, 0 where the stream is mixed anew. Laminar flow keeps its layers through a change of bore, so the
-    delays of joined tubes are correlated. With V(t) = t²Φ(t), w_i = a_i²/D and d the t* that lies between i and j
+    Returns the former and the latter, one entry a tube; ``own`` is the former where it is known. ``joined`` has one
+    entry between two tubes: 1 where the layers run on, 0 where the stream is mixed anew. Laminar flow keeps its layers
+    through a change of bore, so the delays of joined tubes are correlated. With V(t) = t²Φ(t), w_i = a_i²/D and d the
+    t* that lies between i and j
 
         σ_t² = Σ w_i²V(t_i) + Σ_{i<j} w_i w_j [V(t_i+d+t_j) − V(t_i+d) − V(d+t_j) + V(d)]
 
