@@ -82,7 +82,9 @@ def test_observed_plates_are_positive_finite_and_at_most_the_column_s(before, af
     detector, peak = peak_of(before, after, c)
     assert 0 < peak.plates_observed <= peak.plates_column * (1 + 1e-12)
     assert math.isfinite(peak.variance_total)
-    assert all(row.variance >= 0 for row in peak.rows)
+    # behind a bend fast and slow have changed places, and what a narrow tube shares may be less than nothing
+    assert c["bend"] or all(row.variance >= 0 for row in peak.rows)
+    assert peak.variance_extra >= 0
     assert detector.delay > 0
     assert sum(row.variance for row in peak.rows) == pytest.approx(peak.variance_extra)
     assert all(row.low <= row.variance <= row.high for row in peak.rows)

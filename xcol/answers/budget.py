@@ -62,7 +62,7 @@ class PeakBudget:
         """Share of the plates that is recorded with every part at its worst, and at its best."""
         if self.plates_column is None:
             return None
-        worst, best = (sum(ends) for ends in zip(*((row.high, row.low) for row in self.rows), strict=True))
+        worst, best = (max(sum(ends), 0.0) for ends in zip(*((row.high, row.low) for row in self.rows), strict=True))
         return self.variance_column / (self.variance_column + worst), self.variance_column / (
             self.variance_column + best
         )
