@@ -193,6 +193,7 @@ def _at_detector(instrument: Instrument, detector: Part) -> DetectorBudget:
                         row[n],
                         share_extra=row[n].variance / outside if outside else 0.0,
                         share_total=row[n].variance / (column + outside) if column + outside else 0.0,
+                        extra_without=float(without[place][n]),
                         plates_kept_without=column / (column + float(without[place][n])) if bands else None,
                     )
                     for place, row in rows.items()

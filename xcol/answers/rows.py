@@ -41,6 +41,7 @@ class Row:
     high: float  # at the worst
     at_low: str  # the reason for each end in words
     at_high: str
+    extra_without: float = 0.0  # variance outside the columns without it
     tube: TubeFigures | None = None
     washed_t_star: float | None = None  # of a loop or a cell that is washed out
     form: str = ""  # of a loop: FULL, or SAME_WAY (filled in part)
@@ -151,12 +152,12 @@ def _words(link: Link, end: _End | None, dean: Values | None) -> str:
     highest = float(dean.max(initial=0.0)) if dean is not None else 0.0
     if highest > HIGHEST_DEAN and not (end and end.worst):
         words.append(f"De {significant(highest)} taken as {HIGHEST_DEAN:g}, an upper estimate")
+    if end is not None and isinstance(element, Bore) and not any(words):
+        words.append("beside straight tubes" if end.worst else "beside bent tubes")
     if end is not None and end.joined is not None and isinstance(element, Bore):
         words.append(
             "its layers running on through the fitting" if end.joined else "mixed anew in the fitting beside it"
         )
-    if end is not None and isinstance(element, Bore) and not any(words):
-        words.append("beside straight tubes" if end.worst else "beside bent tubes")
     return ", ".join(word for word in words if word) or "as entered"
 
 

@@ -125,7 +125,7 @@ def shares(
         half = _shared_alike(edges, units, strengths[0], pairs)
     else:
         half = _shared_by_pairs(edges, units, strengths, pairs)
-    return list(own), list(half)
+    return list(own), list(np.where(t_stars > 0, half, 0.0))  # where there is no length, the last digit is noise
 
 
 _TOGETHER = 2**18  # numbers that are held at once

@@ -50,7 +50,8 @@ def parts_grid(answer: Budget, at: DetectorBudget, peak: PeakBudget, most: int) 
         label = f"{len(folded)} others, {percent(max(row.share_extra for row in folded))} or less each"
         ends = span_of(answer, sum(row.low for row in folded), sum(row.high for row in folded))
         lines.append((label, three(answer.in_uL2(total)), ends, percent(share), "", "", ""))
-    headers = ("in flow order", "µL²", "best-worst", "share", "", "N if gone", "bar")
+    gone = "N if gone" if peak.plates_column is not None else "µL² if gone"
+    headers = ("in flow order", "µL²", "best-worst", "share", "", gone, "bar")
     return Grid(headers, tuple(lines), (False, True, True, True, False, True, True))
 
 
@@ -119,7 +120,9 @@ def span_of(answer: Budget, low: float, high: float) -> str:
 def shares(interval: tuple[float, float]) -> str:
     """Return an interval of shares in per cent: '16-27 %'."""
     low, high = (percent(end) for end in interval)
-    return high if low == high else f"{low.removesuffix(' %')}-{high}"
+    if low == high:
+        return high
+    return f"{low.removesuffix(' %')}-{'99 %' if high == '>99 %' else high}"
 
 
 def three(value: float) -> str:
@@ -136,8 +139,13 @@ def percent(share: float | None) -> str:
     if -0.005 < share < 0:
         return "0 %"
     if 0.995 <= share < 1:
-        return f"{100 * share:.1f} %"
+        return ">99 %"
     return f"{100 * share:.0f} %"
+
+
+def of_draws(share: float) -> str:
+    """Return a share of the draws in whole per cent, rounded down: nine of ten are nine of ten."""
+    return f"{math.floor(100 * share + 1e-9)} %"
 
 
 def plates(number: float | None) -> str:
@@ -163,9 +171,9 @@ def or_dash(value: float | None) -> str:
 
 
 def _part_line(answer: Budget, row: Row, peak: PeakBudget, inlet: PressureRange | None, most: float) -> tuple[str, ...]:
-    gone = None
+    gone = three(answer.in_uL2(row.extra_without))
     if peak.plates_column is not None and row.plates_kept_without is not None:
-        gone = peak.plates_column * row.plates_kept_without
+        gone = plates(peak.plates_column * row.plates_kept_without)
     bar = "█" * round(_BAR * row.share_extra / most) if most else ""
     return (
         contribution_label(row.part, row.contribution),
@@ -173,7 +181,7 @@ def _part_line(answer: Budget, row: Row, peak: PeakBudget, inlet: PressureRange 
         span_of(answer, row.low, row.high),
         percent(row.share_extra),
         bar,
-        plates(gone),
+        gone,
         bars(inlet) if inlet is not None else "",
     )
 
@@ -190,7 +198,7 @@ def _folded(peak: PeakBudget, room: int) -> list[Row]:
     """Return the rows that fold into one line, for the rest to fit in ``room`` lines with it."""
     if len(peak.rows) <= min(MOST_ROWS, room):
         return []
-    ordered = sorted(peak.rows, key=lambda row: row.variance)
-    small = sum(row.share_extra < SMALL_SHARE for row in ordered)
+    ordered = sorted(peak.rows, key=lambda row: row.high)  # what may be large is not hidden
+    small = sum(row.high < SMALL_SHARE * peak.variance_extra for row in ordered)
     needed = len(ordered) - min(MOST_ROWS, room - 1)
     return ordered[: max(small, needed, 2)]

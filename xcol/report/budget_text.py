@@ -151,15 +151,16 @@ def verdict(answer: Budget, at: DetectorBudget, peak: PeakBudget, sampler: Sampl
         sigma = math.sqrt(extra)
         return [
             f"Without a column, {_the(at)} records a band of σ = {three(sigma)} µL "
-            f"({three(extra)} µL²{f', likely {interval}' if interval else ''}) or {three(peak.sigma)} s. "
-            "Compare moments: its width at half height says little.",
+            f"({three(extra)} µL²{f', likely {interval}' if interval else ''}) or {three(peak.sigma)} s"
+            f"{f'; {beyond(likely, peak)}' if likely and beyond(likely, peak) else ''}. Compare moments: its width at "
+            "half height says little.",
             *on_parts,
         ]
     whose = "column's" if len(peak.columns) == 1 else "columns'"
     kept, remark, own = percent(peak.plates_kept), "", three(answer.in_uL2(peak.variance_column))
     if likely and likely.plates_kept and peak.plates_kept is not None:
         kept += _likely(shares(likely.plates_kept))
-        remark = beyond(peak.plates_kept, likely.plates_kept, peak)
+        remark = beyond(likely, peak)
     lines = [
         f"{_which(peak)}: {_the(at)} records {plates(peak.plates_observed)} of "
         f"{plates(peak.plates_column)} plates, {kept}.",

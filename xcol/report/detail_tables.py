@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING
 
-from xcol.report.budget_tables import or_dash, percent, span_of, three
+from xcol.report.budget_tables import of_draws, or_dash, percent, span_of, three
 from xcol.report.labels import contribution_label
 from xcol.report.sheet import Grid
 from xcol.report.sureness import settle_in_words, unknown_in_words
@@ -32,7 +32,7 @@ def detail_grid(answer: Budget, peak: PeakBudget, likely: Likely | None, *, wide
         ("if gone", True, [percent(row.plates_kept_without) for row in peak.rows]),
     ]
     if leads:
-        columns.append(("leads", True, [percent(leads[id(row)]) if leads[id(row)] else "" for row in peak.rows]))
+        columns.append(("leads", True, [of_draws(leads[id(row)]) if leads[id(row)] else "" for row in peak.rows]))
     if wide:
         columns[1:1] = [("side", False, [row.side for row in peak.rows])]
         columns += [

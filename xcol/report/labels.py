@@ -83,6 +83,13 @@ def short_name(part: Part) -> str:
     return name if len(name) <= 24 else f"{name[:21]}..."
 
 
+def quoted(part: Part) -> str:
+    """Return the part's name in a sentence, in quotes where it was entered; an injection without one is the loop."""
+    if part.name:
+        return f'"{short_name(part)}"'
+    return "the loop" if part.kind == "inject" else short_name(part)
+
+
 def column_label(part: Part) -> str:
     """Return a column's name and sizes: 'column 2.1 x 100 mm'."""
     return f"{part.name or part.kind} {_sizes(part)}".strip()

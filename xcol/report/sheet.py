@@ -97,7 +97,7 @@ class Sheet:
             for index in range(len(grid.headers))
         ]
         taken = indent + sum(widths) + 2 * (len(widths) - 1) - widths[flexible]
-        widths[flexible] = min(widths[flexible], max(self.width - taken, 8))
+        widths[flexible] = min(widths[flexible], max(self.width - taken, 6))
         table = Table(box=None, padding=(0, 2, 0, 0), pad_edge=False, show_edge=False)
         for header, right, width in zip(grid.headers, grid.right, widths, strict=True):
             table.add_column(
