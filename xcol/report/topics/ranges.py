@@ -65,14 +65,20 @@ RANGES = (
         "likely is the 90 % interval of a figure when all that is unknown is drawn together, each by itself, and put "
         "through the same formulas (2000 draws; --draws, --seed; the same file and seed give the same text; "
         "--no-interval leaves them out). A part is named as the surest gain only when its removal would gain most in "
-        "9 of 10 draws; otherwise those that could lead are named, and what would decide between them. --full also "
-        "lists, for each unknown, the share of the scatter that it alone explains: the first is worth settling first.",
+        "9 of 10 draws, tubes together only when one of them does; otherwise those that could lead are named, and "
+        "what would decide between them. --full also lists, for each unknown, the share of the scatter that it alone "
+        "explains: the first is worth settling first. A union run settles much: a union in place of the column, a "
+        "peak recorded, its variance by moments; beside the same path without its column in xcol budget, what is "
+        "more than tubes and injection is the cell's.",
         (
             "bore ±5 %, length ±2 %, plates ±10 % (90 %, log-normal, assumed; bore_tolerance and the like, or a "
             "catalog, take their place); D and viscosity by their own ± where they were estimated",
-            "curvature even from straight to 1/(3 cm); cell between a plug and a straight bore, each factor alike",
+            (
+                "curvature even from straight to 1/(3 cm), a bend that was entered as it is; cell between a plug and a "
+                "straight bore, each factor alike"
+            ),
             "injection V²/12 to V²/4, even; fitting V²/12 to 1.35 V², each factor alike, and even odds that it mixes "
-            "the stream; response any of its readings",
+            "the stream; response any of its readings; a total porosity that was assumed, anything usual",
         ),
         "What nobody could know of a described instrument; not a wrong entry, a void in a column, or a part that was "
         "left out. A printed figure outside of its interval is an end of it: tubes are printed straight (the worst), "
