@@ -106,7 +106,7 @@ def line_of(text: str) -> str:
 
 def words_of(line: str, catalogs: Catalogs) -> list[Word]:
     """Return the words of a mobile phase in their order; what is not known is a word of its own."""
-    names = _names(catalogs)
+    names = _names(catalogs, line.lower())
     found: list[Word] = []
     depth, at = 0, 0
     while at < len(line):
@@ -134,10 +134,14 @@ def _joined(words: list[Word], index: int) -> Word:
     return word
 
 
-def _names(catalogs: Catalogs) -> list[tuple[re.Pattern[str], Solvent]]:
-    """Return a pattern for each name of a liquid, the longest first; spaces and hyphens are alike."""
+def _names(catalogs: Catalogs, lower: str) -> list[tuple[re.Pattern[str], Solvent]]:
+    """Return a pattern for each name of a liquid of which the first word is in a text, in lower case.
+
+    The longest first; spaces and hyphens are alike.
+    """
     names = {normal(name) for row in catalogs.rows(SOLVENTS) for name in (row.name, *row.also)}
-    listed = [(name, row) for name in names if (row := catalogs.find(SOLVENTS, name))]
+    present = (name for name in names if name.partition(" ")[0] in lower)
+    listed = [(name, row) for name in present if (row := catalogs.find(SOLVENTS, name))]
     listed.sort(key=lambda pair: (-len(pair[0]), pair[0]))
     return [
         (re.compile(r"[\s\-]*".join(map(re.escape, name.split())) + r"(?!\w|[\s\-]*sulfon)", re.I), row)
