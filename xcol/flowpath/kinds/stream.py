@@ -60,6 +60,7 @@ def _inject(draft: Draft) -> Elements:
         return (Injected(volume, unknowns=(*form, *sizes)),)
     length = loop / (math.pi / 4 * bore**2)
     curvature, bends = bend(curvature_of(draft))
+    check_bends(draft, _bend_key(draft), (Loop(length, bore, curvature=curvature),))
     if in_part and emptied == REVERSED:  # its bore does not matter
         return (Loop(length, bore, volume, 0.0, curvature, tolerance_of(draft, "volume", scaling("injected"))),)
     bores = tolerance_of(draft, "bore", bore_keeping_volume)
@@ -72,9 +73,7 @@ def _inject(draft: Draft) -> Elements:
     if emptied:
         draft.assume("full loop", "which way a full loop is emptied makes no difference")
     sizes = tolerance_of(draft, "volume", scaling("length"))
-    full = Loop(length, bore, None, 0.0, curvature, (*bends, *bores, *sizes))
-    check_bends(draft, _bend_key(draft), (full,))
-    return (full,)
+    return (Loop(length, bore, None, 0.0, curvature, (*bends, *bores, *sizes)),)
 
 
 SAME_WAY, REVERSED = "same way", "reversed"
