@@ -233,22 +233,21 @@ def _leaders(rows: tuple[Row, ...], shares: Values) -> tuple[tuple[Row, float], 
 
 
 def _influences(drawn: list[_Drawn], answers: Values) -> tuple[Influence, ...]:
-    found = [Influence(one.what, one.part, _share(one.order, answers), one.settle) for one in drawn]
+    shares = _shares(drawn, answers[:_RANKED])
+    found = [Influence(one.what, one.part, share, one.settle) for one, share in zip(drawn, shares, strict=True)]
     return tuple(sorted(found, key=lambda influence: -influence.share))
 
 
-def _share(order: npt.NDArray[np.int64], answers: Values) -> float:
-    """Return the share of the variance of ``answers`` that one unknown alone explains, var(E[answer|value])/var.
+def _shares(drawn: list[_Drawn], answers: Values) -> list[float]:
+    """Return the share of the variance of ``answers`` that each unknown alone explains, var(E[answer|value])/var.
 
     By the means of bins of equal size in the order of the unknown; what they scatter by chance is taken off.
     Source: first-order index of Sobol', Math. Comput. Simul. 55 (2001) 271, from memory.
     """
-    answers = answers[:_RANKED]
     total = float(np.var(answers))
-    if not total or not order.size:
-        return 0.0
-    binned = answers[order]
-    means = binned.mean(axis=1)
-    between = float(np.var(means))
-    within = max(total - between, 0.0) / order.shape[1]
-    return float(min(max((between - within) / total, 0.0), 1.0))
+    if not total or len(answers) < _BINS or not drawn:
+        return [0.0] * len(drawn)
+    orders = np.stack([one.order for one in drawn])
+    between = answers[orders].mean(axis=2).var(axis=1)
+    within = np.maximum(total - between, 0.0) / orders.shape[2]
+    return [float(share) for share in np.clip((between - within) / total, 0.0, 1.0)]
