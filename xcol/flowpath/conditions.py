@@ -5,7 +5,6 @@ from __future__ import annotations
 from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
 
-from xcol.flowpath.composition import Composition, read_composition
 from xcol.flowpath.file_keys import VISCOSITIES
 from xcol.liquids.estimate import Estimate, as_entered
 from xcol.liquids.mobile_phase import FAR, MobilePhase
@@ -16,6 +15,7 @@ if TYPE_CHECKING:
     from collections.abc import Iterable
 
     from xcol.errors import Place
+    from xcol.flowpath.composition import Composition
     from xcol.flowpath.findings import Draft, Findings
     from xcol.flowpath.model import Part
 
@@ -112,6 +112,8 @@ def composition_of(draft: Draft) -> Composition | None:
     text = draft.text("mobile_phase")
     if text is None:
         return None
+    from xcol.flowpath.composition import read_composition  # a fiftieth of the program's time
+
     try:
         return read_composition(text, draft.catalogs)
     except UnitError as error:

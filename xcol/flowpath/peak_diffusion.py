@@ -5,7 +5,6 @@ from __future__ import annotations
 from typing import TYPE_CHECKING
 
 from xcol.catalog_kinds import SOLUTES
-from xcol.flowpath.composition import water_of
 from xcol.flowpath.conditions import Conditions, check_range, composition_of, degrees, say_what_was_left_out
 from xcol.liquids.diffusion import (
     CATALOG_VALUE,
@@ -106,6 +105,8 @@ def _of_catalog_value(draft: Draft, value: float, at: float, conditions: Conditi
     here = _viscosity(draft, "solute", conditions)
     if here is None:
         return None
+    from xcol.flowpath.composition import water_of  # quick where it is not needed
+
     there = water_of(draft.catalogs).viscosity(at)
     phase = conditions.phase
     same = phase is not None and phase.is_water and conditions.entered is None
