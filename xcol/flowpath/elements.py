@@ -138,6 +138,11 @@ class InBore:
     bore: Real
     curvature: Real
 
+    @property
+    def volume(self) -> Real:
+        """Volume that it holds [m³]."""
+        return math.pi / 4 * self.bore**2 * self.length
+
     def tube(self, stream: Stream) -> Tube:
         """Return it as a tube."""
         strength = stream.bend(self.bore, self.curvature)
@@ -170,7 +175,7 @@ class Loop(InBore):
     @property
     def volume(self) -> Real:
         """Injected volume [m³]."""
-        return math.pi / 4 * self.bore**2 * self.length if self.injected is None else self.injected
+        return super().volume if self.injected is None else self.injected
 
     @property
     def remixes(self) -> Real:
@@ -203,11 +208,6 @@ class Bore(InBore):
     unknowns: tuple[Unknown, ...] = field(default=(), compare=False, repr=False)
     contribution: str = "tube"
     of_signal: bool = False
-
-    @property
-    def volume(self) -> Real:
-        """Volume [m³]."""
-        return math.pi / 4 * self.bore**2 * self.length
 
     @property
     def remixes(self) -> Real:
