@@ -53,6 +53,16 @@ def test_injection_cell_filter_and_rate_are_named_by_what_to_do():
         assert words in words_of(*parts)
 
 
+def test_a_name_with_a_per_cent_sign_is_printed_as_it_was_typed(examples):
+    text = (examples / "small-column.toml").read_text().replace("needle seat", "seat, 5 % carbon")
+    answer = budget(parse(text, "f"))
+    peak = answer.detectors[0].peaks[0]
+    likely = Sampler(answer).of(answer.detectors[0], peak)
+    (line,) = (line for line in verdict_on_parts(likely, peak, 2000) if "seat" in line and "% of draws" in line)
+    assert '"seat, 5 % carbon"' in line
+    assert line.count("of draws") == 1
+
+
 def test_what_is_open_names_two_or_three_and_what_decides(examples):
     answer = budget(read(str(examples / "brewery-conventional.toml")))
     peak = answer.detectors[0].peaks[1]

@@ -101,8 +101,9 @@ def verdict_on_parts(likely: Likely, peak: PeakBudget, draws: int) -> list[str]:
         named = list(likely.leaders[:2])
     if not named:
         return []
-    listed = ", ".join(f"{_named(row)} {of_draws(share)}" for row, share in named).replace(" %", " % of draws", 1)
-    lines = [f"Could lead: {listed}."]
+    pieces = [f"{_named(row)} {of_draws(share)}" for row, share in named]
+    pieces[0] += " of draws"
+    lines = [f"Could lead: {', '.join(pieces)}."]
     rows = [row for row, _ in named]
     sentences = []
     if settles := what_settles(likely, rows, has_column=peak.plates_column is not None):
