@@ -39,13 +39,13 @@ def test_many_at_once_are_each_by_itself(chain):
     for n, one in enumerate(diffusion):
         alone = spread_of(chain, np.array([one]))
         assert together.total()[n] == pytest.approx(alone.total()[0], rel=1e-12)
-        for place, row in together.rows().items():
-            assert row.variance[n] == pytest.approx(alone.rows()[place].variance[0], rel=1e-12)
+        for place, row in together.rows.items():
+            assert row.variance[n] == pytest.approx(alone.rows[place].variance[0], rel=1e-12)
 
 
 def test_rows_add_up_and_a_fitting_that_does_not_remix_is_part_of_the_run(chain):
     spread = spread_of(chain, np.array([1e-9]))
-    rows = spread.rows()
+    rows = spread.rows
     assert sum(row.variance for row in rows.values()) == pytest.approx(spread.total())
     assert {row.segment.places for row in rows.values() if row.tube} == {(1, 2, 3, 4)}
     assert all(row.half > 0 for row in rows.values() if row.tube)
@@ -77,7 +77,7 @@ UNION = '{ fitting = "u", bore = "0.2 mm", length = "3 mm"'
 def test_the_gain_is_what_goes_with_a_link(parts):
     made = path(*parts)
     spread = spread_of(made, np.array([1e-9, 3e-10]))
-    for place in spread.rows():
+    for place in spread.rows:
         assert spread.gain(place) == pytest.approx(spread.total() - spread.total(place), rel=1e-9, abs=1e-12)
     # drawn: fittings that mix in some draws and in others do not
     mixed = np.array([0.0, 1.0])
@@ -86,9 +86,9 @@ def test_the_gain_is_what_goes_with_a_link(parts):
         for link in made[1]
     ]
     both = spread_of(made, np.array([1e-9, 1e-9]), drawn)
-    for place in both.rows():
+    for place in both.rows:
         assert both.gain(place) == pytest.approx(both.total() - both.total(place), rel=1e-9, abs=1e-12)
-    exact = np.stack([both.gain(place) for place in both.rows()])
+    exact = np.stack([both.gain(place) for place in both.rows])
     assert np.array_equal(np.stack(both.gains()).argmax(axis=0), exact.argmax(axis=0))
 
 
@@ -97,7 +97,7 @@ def test_beside_many_tubes_the_row_stands_for_the_gain():
     spread = spread_of(made, np.array([1e-9]))
     for place in (1, 6, 12):
         gain, exact = spread.gain(place)[0], (spread.total() - spread.total(place))[0]
-        assert gain == spread.rows()[place].variance[0]
+        assert gain == spread.rows[place].variance[0]
         assert 0.5 * exact < gain < 1.01 * exact
 
 
@@ -109,7 +109,7 @@ def test_a_straight_cell_that_is_passed_through_is_a_part_of_its_own():
     )
     instrument = parse(text, "f")
     spread = spread_of((instrument, links(instrument, instrument.detectors[1])), np.array([1e-9]))
-    assert [row.segment.places for row in spread.rows().values() if row.tube] == [(1,), (3,)]
+    assert [row.segment.places for row in spread.rows.values() if row.tube] == [(1,), (3,)]
 
 
 def test_all_at_its_best_is_less_than_all_at_its_worst(chain):

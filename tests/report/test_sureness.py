@@ -5,7 +5,8 @@ import pytest
 from xcol.answers.budget import budget
 from xcol.answers.likely import SURE, Sampler
 from xcol.flowpath.reader import parse, read
-from xcol.report.sureness import beyond, ends_line, figures, verdict_on_parts, what_settles
+from xcol.report.budget_tables import figures
+from xcol.report.sureness import beyond, ends_line, verdict_on_parts, what_settles
 
 HEAD = 'flow = "0.3 mL/min"\nviscosity = "0.9 mPa s"\n'
 COLUMN = '{ column = "2.1 x 100 mm, 3 um", plates = 12000, total_porosity = 0.6 }'

@@ -195,7 +195,7 @@ class Sampler:
             return replace(here, viscosity=here.viscosity * factors[VISCOSITY])
 
         spread = Spread(chain, stream, (count,), elements)
-        rows = list(spread.rows().values())
+        rows = list(spread.rows.values())
         leads = np.stack(spread.gains()).argmax(axis=0)
         beds = [(link.part, element) for link, element in zip(chain, elements, strict=True)]
         time, column = _columns(beds, stream, peak)

@@ -80,10 +80,10 @@ def rows_of(instrument: Instrument, chain: tuple[Link, ...], printed: Spread) ->
     ends = _ends(instrument, chain)
     bent = next(end for end in ends if not end.worst).spread
     found = {}
-    for place, spread in printed.rows().items():
+    for place, spread in printed.rows.items():
         link, made = chain[place], printed.filter(place)
-        variances = np.stack([spread.variance, *(end.spread.rows()[place].variance for end in ends)])
-        figures = _figures(spread, bent.rows()[place], bent.dean(place), printed.zero)
+        variances = np.stack([spread.variance, *(end.spread.rows[place].variance for end in ends)])
+        figures = _figures(spread, bent.rows[place], bent.dean(place), printed.zero)
         words = [_words(link, None, bent.dean(place)), *(_words(link, end, bent.dean(place)) for end in ends)]
         found[place] = [
             Row(

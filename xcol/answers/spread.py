@@ -29,8 +29,8 @@ if TYPE_CHECKING:
     Values = npt.NDArray[np.float64]
 
 
-_CLOSED_UP = 8
-_OFTEN = 0.01  # share of the draws
+_CLOSED_UP = 8  # tubes beside a link up to which its gain is computed with them closed up
+_OFTEN = 0.01  # share of the draws from which a link's own row may be the largest and not stand for its gain
 _ALONE = Segment(())
 
 
@@ -71,12 +71,9 @@ class Spread:
         self._own: dict[int, Real] = {}  # what tubes add by themselves: the same in any run
         self.zero = np.zeros(shape)
 
-    def rows(self) -> dict[int, LinkSpread]:
-        """Return what each link but the columns contributes, by its place in the chain."""
-        return self._rows
-
     @cached_property
-    def _rows(self) -> dict[int, LinkSpread]:
+    def rows(self) -> dict[int, LinkSpread]:
+        """What each link but the columns contributes, by its place in the chain."""
         found = {
             place: spread
             for segment in self._segments(range(len(self._chain)))
@@ -96,12 +93,12 @@ class Spread:
         Beside more than ``_CLOSED_UP`` tubes its row stands for it, which is a little less: the others have n² shared
         terms each.
         """
-        row = self.rows()[place]
+        row = self.rows[place]
         beside = self._beside(place)
         tubes = [other for other in beside if isinstance(self._elements[other], Bore)]
         if not tubes or len(tubes) > _CLOSED_UP:
             return row.variance
-        before = row.variance + sum(self.rows()[other].variance for other in tubes)
+        before = row.variance + sum(self.rows[other].variance for other in tubes)
         closed = (spread for segment in self._segments(beside) for spread in self._spreads(segment) if spread.tube)
         return self.zero + before - sum(spread.variance for spread in closed)
 
@@ -111,12 +108,11 @@ class Spread:
         What mixes the stream gains no more than its own row, since tubes that close up spread more: where that row is
         the largest in next to no draw, it stands for the gain.
         """
-        rows = self.rows()
-        tubes = {place for place in rows if isinstance(self._elements[place], Bore)}
-        found = {place: self.gain(place) if place in tubes else row.variance for place, row in rows.items()}
+        tubes = {place for place in self.rows if isinstance(self._elements[place], Bore)}
+        found = {place: self.gain(place) if place in tubes else row.variance for place, row in self.rows.items()}
         leads = np.stack(list(found.values())).argmax(axis=0)
         often = np.bincount(leads.ravel(), minlength=len(found)) > _OFTEN * leads.size
-        for place, is_often in zip(rows, often, strict=True):
+        for place, is_often in zip(self.rows, often, strict=True):
             if is_often and place not in tubes:
                 found[place] = self.gain(place)
         return list(found.values())

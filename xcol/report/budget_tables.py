@@ -113,8 +113,13 @@ def span_of(answer: Budget, low: float, high: float) -> str:
     """Return the ends of a variance [s²] in µL², "" where it has none."""
     if math.isclose(low, high, rel_tol=5e-3):
         return ""
-    ends = (three(answer.in_uL2(low)), three(answer.in_uL2(high)))
-    return "-".join(ends)
+    return figures((answer.in_uL2(low), answer.in_uL2(high)))
+
+
+def figures(interval: tuple[float, float]) -> str:
+    """Return an interval of figures with three digits: '103-208'."""
+    low, high = (three(end) for end in interval)
+    return high if low == high else f"{low}-{high}"
 
 
 def shares(interval: tuple[float, float]) -> str:
@@ -162,7 +167,7 @@ def span(drop: PressureRange | None) -> str:
     """Return the range of a pressure in bar, '' where it has none."""
     if drop is None or math.isclose(drop.low, drop.high, rel_tol=0.01):
         return ""
-    return f"{three(drop.low / 1e5)}-{three(drop.high / 1e5)}"
+    return figures((drop.low / 1e5, drop.high / 1e5))
 
 
 def or_dash(value: float | None) -> str:

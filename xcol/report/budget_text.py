@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING
 from xcol.answers.doubt import over_diffusion
 from xcol.report.budget_tables import (
     bars,
+    figures,
     peaks_grid,
     percent,
     plates,
@@ -22,7 +23,6 @@ from xcol.report.sheet import Grid, Sheet, fitted, markdown
 from xcol.report.sureness import (
     beyond,
     ends_line,
-    figures,
     interval_line,
     verdict_on_parts,
 )

@@ -6,7 +6,7 @@ from typing import TYPE_CHECKING
 
 from xcol.answers.likely import SURE
 from xcol.answers.rows import FULL, SAME_WAY
-from xcol.report.budget_tables import of_draws, shares, three
+from xcol.report.budget_tables import figures, of_draws, shares
 from xcol.report.labels import contribution_name, name_of, quoted, short_name
 
 if TYPE_CHECKING:
@@ -33,12 +33,6 @@ _ABOUT_INJECTION = {
     SAME_WAY: "emptying the loop the other way, or a smaller or narrower one",
 }
 _FILTER = "a faster filter of {name}"
-
-
-def figures(interval: tuple[float, float]) -> str:
-    """Return an interval of figures with three digits: '103-208'."""
-    low, high = (three(end) for end in interval)
-    return high if low == high else f"{low}-{high}"
 
 
 def beyond(likely: Likely, peak: PeakBudget) -> str:
